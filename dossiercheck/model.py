@@ -1,0 +1,359 @@
+"""The data that travels down the line. Imports nothing of ours.
+
+Everything here is frozen: a stage receives values and yields new ones. The last type,
+`Review`, is what every report format is made from.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from enum import StrEnum
+
+
+class Kind(StrEnum):
+    """What sort of thing a place says about a substance."""
+
+    DRAWING = "drawing"
+    NAME = "name"
+    NOTATION = "notation"
+    COORDINATES = "coordinates"
+    STATEMENT = "statement"
+    PROPERTY = "property"
+
+
+class Role(StrEnum):
+    """The form in which it is said; decides how the text is interpreted."""
+
+    MOLFILE = "molfile"
+    NAME = "systematic name"
+    SMILES = "SMILES"
+    INCHI = "InChI"
+    INCHIKEY = "InChIKey"
+    FORMULA = "molecular formula"
+    MASS = "relative molecular mass"
+    REGISTRY = "registry number"
+    STEREO = "stereochemistry statement"
+
+    @property
+    def kind(self) -> Kind:
+        """The kind of evidence a text in this role is, before it is looked into."""
+        return _KINDS[self]
+
+
+_KINDS = {
+    Role.MOLFILE: Kind.DRAWING,
+    Role.NAME: Kind.NAME,
+    Role.SMILES: Kind.NOTATION,
+    Role.INCHI: Kind.NOTATION,
+    Role.INCHIKEY: Kind.NOTATION,
+    Role.FORMULA: Kind.PROPERTY,
+    Role.MASS: Kind.PROPERTY,
+    Role.REGISTRY: Kind.PROPERTY,
+    Role.STEREO: Kind.STATEMENT,
+}
+
+
+class Grade(StrEnum):
+    """The trade's deficiency grades (common practice), gravest first."""
+
+    CRITICAL = "critical"
+    MAJOR = "major"
+    MINOR = "minor"
+    REMARK = "remark"
+
+    @property
+    def gravity(self) -> int:
+        """0 for the gravest; sort key."""
+        return _GRAVITY[self]
+
+
+_GRAVITY = {grade: number for number, grade in enumerate(Grade)}
+
+
+class State(StrEnum):
+    """What one evidence says of one stereogenic unit, held against the reference."""
+
+    AGREES = "agrees"
+    DIFFERS = "differs"
+    SILENT = "silent"
+    UNDETERMINED = "undetermined"
+
+
+@dataclass(frozen=True, slots=True)
+class Source:
+    """One file of the dossier. `path` is relative to what was given, with forward slashes."""
+
+    path: str
+    sha256: str
+    size: int
+    format: str
+
+
+@dataclass(frozen=True, slots=True)
+class Place:
+    """Where in a source. Numbers are 1-based as a person counts; `span` is 0-based characters
+    of the paragraph, line, cell or field value, end excluded."""
+
+    source: str
+    section: str | None = None
+    sheet: str | None = None
+    table: int | None = None
+    row: int | None = None
+    column: str | None = None
+    paragraph: int | None = None
+    line: int | None = None
+    record: int | None = None
+    field: str | None = None
+    span: tuple[int, int] | None = None
+
+    def __str__(self) -> str:
+        """The place as one phrase, without the source's path."""
+        parts = [
+            f"section {self.section}" if self.section else "",
+            f"sheet {self.sheet}" if self.sheet else "",
+            f"table {self.table}" if self.table else "",
+            f"record {self.record}" if self.record else "",
+            f"field {self.field}" if self.field else "",
+            f"row {self.row}" if self.row else "",
+            f"column {self.column}" if self.column else "",
+            f"paragraph {self.paragraph}" if self.paragraph else "",
+            f"line {self.line}" if self.line else "",
+            f"characters {self.span[0] + 1}–{self.span[1]}" if self.span else "",
+        ]
+        return ", ".join(part for part in parts if part) or "whole file"
+
+
+@dataclass(frozen=True, slots=True)
+class Unread:
+    """A source or place that gave no evidence. `reason` is a short slug, `detail` a sentence."""
+
+    place: Place
+    reason: str
+    detail: str
+    text: str = ""
+
+
+# --- what a reader yields: the source's own shape, not yet its meaning ---------------------
+
+
+@dataclass(frozen=True, slots=True)
+class Field:
+    """A named value of a record."""
+
+    name: str
+    value: str
+    place: Place
+
+
+@dataclass(frozen=True, slots=True)
+class Record:
+    """One entry of a structure file: a connection table and its data fields."""
+
+    title: str
+    molblock: str
+    fields: tuple[Field, ...]
+    place: Place
+
+
+@dataclass(frozen=True, slots=True)
+class Cell:
+    """One table cell. A merged cell is repeated where it reaches, with the same place."""
+
+    text: str
+    place: Place
+
+
+@dataclass(frozen=True, slots=True)
+class Table:
+    """Rows of cells as laid out; whether the first row is a heading is not yet decided."""
+
+    rows: tuple[tuple[Cell, ...], ...]
+    place: Place
+    headings: tuple[str, ...] = ()
+    caption: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Passage:
+    """One paragraph or line of running text under its headings (outermost first)."""
+
+    text: str
+    place: Place
+    headings: tuple[str, ...] = ()
+
+
+Item = Record | Table | Passage | Unread
+
+
+# --- evidence -----------------------------------------------------------------------------
+
+
+@dataclass(frozen=True, slots=True)
+class Evidence:
+    """One thing that one place says about one substance.
+
+    `text` is verbatim. `group` is the same for evidence that stands together (a record, a row,
+    a block of labelled fields), "" for a name that stands alone in running text. `label` is what
+    the place calls the substance, "" where it gives none.
+    """
+
+    id: str
+    role: Role
+    text: str
+    place: Place
+    group: str = ""
+    label: str = ""
+
+    @property
+    def kind(self) -> Kind:
+        """Kind of evidence by role; a molfile with 3D coordinates is told apart later."""
+        return self.role.kind
+
+
+# --- drawings as data ---------------------------------------------------------------------
+
+
+@dataclass(frozen=True, slots=True)
+class DrawnAtom:
+    """`x`, `y` as in the source's connection table, y upwards; `hydrogens` attached but not
+    drawn; `mark` is a short text set beside a highlighted atom ("3R → 3S"), "" for none."""
+
+    x: float
+    y: float
+    element: str
+    charge: int = 0
+    hydrogens: int = 0
+    isotope: int = 0
+    highlight: bool = False
+    mark: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class DrawnBond:
+    """`begin`, `end` are 0-based into the atoms; a wedge's narrow end is at `begin`.
+    `style`: plain, wedge, hash, wavy, crossed, aromatic (order 4 in the source)."""
+
+    begin: int
+    end: int
+    order: int
+    style: str = "plain"
+    highlight: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Drawing:
+    """A structure to be shown. `laid_out` is true when the program, not the source, placed the
+    atoms (a name or a line notation has no coordinates of its own)."""
+
+    atoms: tuple[DrawnAtom, ...]
+    bonds: tuple[DrawnBond, ...]
+    laid_out: bool = False
+
+
+# --- concordance --------------------------------------------------------------------------
+
+
+@dataclass(frozen=True, slots=True)
+class UnitCell:
+    """What one evidence says of one unit. `shows` is its descriptor ("R", "E", "R or S", "—");
+    `note` says why where the state alone does not."""
+
+    evidence: str
+    state: State
+    shows: str
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class UnitRow:
+    """One stereogenic unit of the substance. `atoms` are 1-based positions in the reference
+    evidence; `locant` is the name's own locant for it where a name says one."""
+
+    unit: str
+    kind: str
+    atoms: tuple[int, ...]
+    locant: str
+    cells: tuple[UnitCell, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Concordance:
+    """Units × evidence for one substance, `reference` being the evidence the others are held
+    against. `constitution` says for each structural evidence how its constitution compares."""
+
+    reference: str
+    rows: tuple[UnitRow, ...]
+    constitution: Mapping[str, str] = field(default_factory=dict)
+
+
+# --- findings -----------------------------------------------------------------------------
+
+
+@dataclass(frozen=True, slots=True)
+class Exhibit:
+    """One side of a finding: an evidence verbatim, with the characters of it that matter
+    (`marks`, 0-based spans into `text`) and a drawing where there is one to show."""
+
+    evidence: str
+    title: str
+    text: str
+    place: Place
+    marks: tuple[tuple[int, int], ...] = ()
+    drawing: Drawing | None = None
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Finding:
+    """What a rule says of a substance."""
+
+    id: str
+    rule: str
+    grade: Grade
+    substance: str
+    message: str
+    remedy: str
+    exhibits: tuple[Exhibit, ...]
+    unit: str = ""
+    locant: str = ""
+    derivation: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class SubstanceEntry:
+    """A substance as the report lists it; `attribution` gives for each evidence why it is held
+    to speak of this substance."""
+
+    id: str
+    label: str
+    evidence: tuple[Evidence, ...]
+    attribution: Mapping[str, str]
+    concordance: Concordance | None
+    drawing: Drawing | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class RuleEntry:
+    """A rule as the report prints it; `off` holds the justification of a rule switched off."""
+
+    id: str
+    title: str
+    grade: Grade
+    why: str
+    basis: str
+    remedy: str
+    off: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Review:
+    """The whole result: every output format is made from this and nothing else."""
+
+    sources: tuple[Source, ...]
+    unread: tuple[Unread, ...]
+    substances: tuple[SubstanceEntry, ...]
+    findings: tuple[Finding, ...]
+    rules: tuple[RuleEntry, ...]
+    method: Mapping[str, str]
+    caution: str
