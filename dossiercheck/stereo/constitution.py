@@ -1,0 +1,118 @@
+"""How the constitutions of two structures compare, before any stereo is looked at."""
+
+from __future__ import annotations
+
+from collections import Counter
+from dataclasses import dataclass
+
+from rdkit import Chem
+from rdkit.Chem import rdMolHash
+from rdkit.Chem.MolStandardize import rdMolStandardize
+
+from dossiercheck.stereo.formula import difference, molecular_formula
+from dossiercheck.stereo.perception import quiet
+from dossiercheck.stereo.structure import Structure
+
+SAME = "same"
+CHARGE = "charge form"
+MOBILE = "mobile hydrogen"
+TAUTOMER = "tautomer"
+SALT = "salt form"
+DIFFERENT = "different"
+
+
+@dataclass(frozen=True, slots=True)
+class Constitution:
+    """`verdict` is one of the constants above; `detail` says what differs, for a reader."""
+
+    verdict: str
+    detail: str = ""
+
+
+def compare_constitution(one: Structure, two: Structure) -> Constitution:
+    """Compare two constitutions, the narrowest likeness first.
+
+    Charge form: equal once proton transfers are undone (an amine hydrochloride drawn as ions).
+    Mobile hydrogen: equal in the formula, connection and hydrogen layers of the standard InChI.
+    Tautomer: hydrogen and double bonds exchanged further than InChI's mobile hydrogen reaches.
+    Salt form: the largest component is the same, the others differ.
+    """
+    if one.flat == two.flat:
+        return Constitution(SAME)
+    with quiet():
+        parts = [Counter(_neutral(s.flat).split(".")) for s in (one, two)]
+        if parts[0] == parts[1]:
+            return Constitution(CHARGE, "drawn with other charges")
+        largest = [max(part, key=_weight) for part in parts]
+        if (len(parts[0]) > 1 or len(parts[1]) > 1) and (
+            largest[0] == largest[1] or _mobile(*largest)
+        ):
+            return Constitution(SALT, _components(*parts))
+        if _mobile(one.flat, two.flat):
+            return Constitution(MOBILE, "the same with a mobile hydrogen elsewhere")
+        formulas = molecular_formula(one), molecular_formula(two)
+        if formulas[0] == formulas[1] and _tautomer(one.flat, two.flat):
+            return Constitution(TAUTOMER, "another tautomer")
+    if formulas[0] == formulas[1]:
+        return Constitution(DIFFERENT, f"both are {formulas[0]}, connected differently")
+    return Constitution(DIFFERENT, difference(*formulas))
+
+
+def _neutral(smiles: str) -> str:
+    mol = Chem.MolFromSmiles(smiles)
+    if mol is None:
+        return smiles
+    try:
+        neutral = rdMolStandardize.Uncharger().uncharge(mol)
+    except (RuntimeError, ValueError):
+        return smiles
+    return str(Chem.MolToSmiles(neutral, isomericSmiles=False))
+
+
+def _weight(smiles: str) -> tuple[int, int, str]:
+    mol = Chem.MolFromSmiles(smiles)
+    if mol is None:
+        return (0, 0, smiles)
+    carbons = sum(atom.GetAtomicNum() == 6 for atom in mol.GetAtoms())
+    return (carbons, mol.GetNumHeavyAtoms(), smiles)
+
+
+def _mobile(one: str, two: str) -> bool:
+    """Equal formula, /c and /h layers of the standard InChI."""
+    layers = []
+    for smiles in (one, two):
+        mol = Chem.MolFromSmiles(smiles)
+        inchi = Chem.MolToInchi(mol) if mol is not None else ""
+        if not inchi:
+            return False
+        parts = inchi.split("/")
+        layers.append(parts[1:2] + [part for part in parts[2:] if part[0] in "chqp"])
+    return layers[0] == layers[1]
+
+
+def _tautomer(one: str, two: str) -> bool:
+    hashes = set()
+    for smiles in (one, two):
+        mol = Chem.MolFromSmiles(smiles)
+        if mol is None:
+            return False
+        hashes.add(rdMolHash.MolHash(mol, rdMolHash.HashFunction.HetAtomTautomerv2))
+    return len(hashes) == 1
+
+
+def _components(one: Counter[str], two: Counter[str]) -> str:
+    """Which components only one side has, as formulas; `one` is the reference."""
+    texts = []
+    for title, extra in (("only in the reference", one - two), ("only here", two - one)):
+        if extra:
+            listed = " + ".join(
+                f"{count} × {_formula(smiles)}" if count > 1 else _formula(smiles)
+                for smiles, count in sorted(extra.items(), key=lambda item: _weight(item[0]))
+            )
+            texts.append(f"{title}: {listed}")
+    return "; ".join(texts)
+
+
+def _formula(smiles: str) -> str:
+    mol = Chem.MolFromSmiles(smiles)
+    return smiles if mol is None else str(molecular_formula(Structure(mol, smiles)))

@@ -1,0 +1,230 @@
+"""Text to structure: molfile, SMILES, InChI, and a name's SMILES, without loss of stereo marks."""
+
+from __future__ import annotations
+
+import logging
+from collections.abc import Iterable, Iterator, Sequence
+from contextlib import contextmanager
+
+from rdkit import Chem, rdBase
+
+from dossiercheck.stereo.structure import (
+    Mark,
+    StereoGroup,
+    Structure,
+    Unreadable,
+    set_geometry,
+)
+
+_SMILES = Chem.SmilesParserParams()
+_SMILES.sanitize = False
+_SMILES.removeHs = False
+_SMILES.parseName = False
+
+_GROUPS = {
+    Chem.StereoGroupType.STEREO_AND: "and",
+    Chem.StereoGroupType.STEREO_OR: "or",
+}
+_V2000_STYLES = {1: "wedge", 6: "hash", 4: "wavy", 3: "crossed"}
+_V3000_STYLES = {"1": "wedge", "3": "hash", "2": "wavy"}
+
+# Below this sine of the angle between substituent and double bond, the drawing does not say on
+# which side the substituent stands (about 6 degrees).
+_LEAST_SINE = 0.1
+
+
+class _Collector(logging.Handler):
+    def __init__(self) -> None:
+        super().__init__()
+        self.lines: list[str] = []
+
+    def emit(self, record: logging.LogRecord) -> None:
+        self.lines.append(record.getMessage())
+
+
+rdBase.LogToPythonLogger()
+_LOGGER = logging.getLogger("rdkit")
+_LOGGER.propagate = False
+_COLLECTOR = _Collector()
+_LOGGER.handlers = [_COLLECTOR]
+
+
+@contextmanager
+def _complaints() -> Iterator[list[str]]:
+    """What the library says while it reads; it says it to a log and not in an exception."""
+    _COLLECTOR.lines.clear()
+    yield _COLLECTOR.lines
+    _COLLECTOR.lines.clear()
+
+
+def from_molblock(text: str) -> Structure:
+    """A structure from one molfile (V2000 or V3000), drawn or with 3D coordinates.
+
+    Raises `Unreadable` where the connection table is damaged, a valence is impossible, or the
+    table stands for more than one molecule (query atoms, R groups, polymers).
+    """
+    _refuse_generic(text)
+    with _complaints() as said:
+        try:
+            mol = Chem.MolFromMolBlock(text, sanitize=False, removeHs=False, strictParsing=True)
+        except RuntimeError as error:
+            raise Unreadable(_sentence([str(error)])) from error
+        if mol is None:
+            raise Unreadable(_sentence(said))
+    if mol.GetNumAtoms() == 0:
+        raise Unreadable("the connection table has no atoms")
+    conformer = mol.GetConformer()
+    flat = not conformer.Is3D()
+    _sanitize(mol)
+    if flat:
+        Chem.AssignChiralTypesFromBondDirs(mol)
+    else:
+        Chem.AssignAtomChiralTagsFromStructure(mol)
+    marks = tuple(_marks(text))
+    structure = Structure(
+        mol,
+        text,
+        dimension=2 if flat else 3,
+        groups=tuple(_groups(mol)),
+        marks=marks,
+    )
+    vague = {frozenset((m.begin, m.end)) for m in marks if m.style == "crossed"}
+    wavy = {m.begin for m in marks if m.style == "wavy"}
+    for kind, atoms, near in structure.possible:
+        if kind == "double bond" and frozenset(atoms) not in vague and not wavy & set(atoms):
+            sign = _side(conformer, atoms, near)
+            if sign:
+                set_geometry(mol, atoms, near, sign)
+    return structure
+
+
+def from_smiles(
+    text: str, groups: Iterable[StereoGroup] = (), locants: Sequence[str] = ()
+) -> Structure:
+    """A structure from SMILES (OpenSMILES, with the extension block for enhanced stereo).
+
+    `groups` and `locants` come from a name's parse. Raises `Unreadable`.
+    """
+    with _complaints() as said:
+        try:
+            mol = Chem.MolFromSmiles(text, _SMILES)
+        except RuntimeError as error:
+            raise Unreadable(_sentence([str(error)])) from error
+        if mol is None or mol.GetNumAtoms() == 0:
+            raise Unreadable(_sentence(said))
+    if "*" in text.split("|")[0]:
+        raise Unreadable("the notation stands for more than one molecule")
+    _sanitize(mol)
+    Chem.SetBondStereoFromDirections(mol)
+    return Structure(
+        mol, text, groups=(*_groups(mol), *groups), locants=tuple(locants)
+    )
+
+
+def from_inchi(text: str) -> Structure:
+    """A structure from an InChI. Raises `Unreadable`.
+
+    Serves the alignment only: whether two InChI agree is decided on the strings themselves.
+    """
+    with _complaints() as said:
+        mol = Chem.MolFromInchi(text)
+        if mol is None or mol.GetNumAtoms() == 0:
+            raise Unreadable(_sentence(said))
+    return from_smiles(Chem.MolToSmiles(mol))
+
+
+@contextmanager
+def quiet() -> Iterator[None]:
+    """Keep the library's remarks off the screen while it computes."""
+    with _complaints():
+        yield
+
+
+def _sanitize(mol: Chem.Mol) -> None:
+    with _complaints():
+        try:
+            Chem.SanitizeMol(mol)
+        except (ValueError, RuntimeError) as error:
+            raise Unreadable(_sentence([str(error)])) from error
+
+
+def _sentence(said: list[str]) -> str:
+    """The library's complaint as one short line, without its time stamps."""
+    for line in said:
+        plain = line.strip().split("] ", 1)[-1].strip()
+        if plain:
+            return plain.splitlines()[0].rstrip(".") if plain else plain
+    return "the structure could not be parsed"
+
+
+def _refuse_generic(text: str) -> None:
+    if "M  RGP" in text or " R# " in text or "M  V30 " in text and " RGROUPS=" in text:
+        raise Unreadable("an R group: the drawing stands for more than one molecule")
+    if "M  STY" in text and any(kind in text for kind in (" SRU", " MON", " COP", " ANY")):
+        raise Unreadable("a polymer bracket: the drawing stands for more than one molecule")
+    for query in (" A  ", " Q  ", " * ", " L  ", " LP "):
+        if query in text[: text.find("M  END")] and _has_query_atom(text):
+            raise Unreadable("a query atom: the drawing stands for more than one molecule")
+
+
+def _has_query_atom(text: str) -> bool:
+    lines = text.split("\n")
+    if len(lines) > 4 and "V2000" in lines[3]:
+        count = int(lines[3][:3] or 0)
+        return any(
+            line[31:34].strip() in {"A", "Q", "*", "L", "LP"} for line in lines[4 : 4 + count]
+        )
+    return any(
+        len(part := line.split()) > 4
+        and part[:2] == ["M", "V30"]
+        and part[3] in {"A", "Q", "*", "L", "LP"}
+        for line in lines
+    )
+
+
+def _groups(mol: Chem.Mol) -> Iterator[StereoGroup]:
+    for group in mol.GetStereoGroups():
+        kind = _GROUPS.get(group.GetGroupType())
+        if kind:
+            yield StereoGroup(kind, frozenset(atom.GetIdx() for atom in group.GetAtoms()))
+
+
+def _marks(text: str) -> Iterator[Mark]:
+    """Wedges and vague bonds as the connection table writes them (CTFile formats, bond block)."""
+    lines = text.split("\n")
+    if len(lines) > 3 and "V3000" in lines[3]:
+        inside = False
+        for line in lines:
+            if line.startswith("M  V30 BEGIN BOND"):
+                inside = True
+            elif line.startswith("M  V30 END BOND"):
+                return
+            elif inside and " CFG=" in line:
+                part = line.split()
+                value = next(p[4:] for p in part if p.startswith("CFG="))
+                style = "crossed" if part[3] == "2" else _V3000_STYLES.get(value, "")
+                if style:
+                    yield Mark(int(part[4]) - 1, int(part[5]) - 1, style)
+        return
+    atoms, bonds = int(lines[3][0:3]), int(lines[3][3:6])
+    for line in lines[4 + atoms : 4 + atoms + bonds]:
+        value = line[9:12].strip()
+        if value and value != "0":
+            style = _V2000_STYLES.get(int(value), "")
+            if style:
+                yield Mark(int(line[0:3]) - 1, int(line[3:6]) - 1, style)
+
+
+def _side(conformer: Chem.Conformer, atoms: tuple[int, ...], near: tuple[int, int]) -> int:
+    """+1 where the two neighbours stand on one side of the bond, -1 on opposite sides, 0 vague."""
+    begin, end = (conformer.GetAtomPosition(atom) for atom in atoms)
+    axis = end - begin
+    first = conformer.GetAtomPosition(near[0]) - begin
+    second = conformer.GetAtomPosition(near[1]) - end
+    one, two = axis.CrossProduct(first), axis.CrossProduct(second)
+    length = axis.Length()
+    if one.Length() <= _LEAST_SINE * length * first.Length():
+        return 0
+    if two.Length() <= _LEAST_SINE * length * second.Length():
+        return 0
+    return 1 if one.DotProduct(two) > 0 else -1

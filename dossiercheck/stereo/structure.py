@@ -1,0 +1,237 @@
+"""A molecule as the program holds it: the library's atoms and bonds, with every stereo mark kept.
+
+The library's own clean-up of stereo marks is never run: it deletes centres whose existence
+depends on other centres (Sequence Rules 3 to 6, IUPAC 2013 P-92.2) and then labels others wrongly.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from functools import cached_property
+
+from rdkit import Chem
+from rdkit.Chem import rdCIPLabeler, rdqueries
+
+# Bounds the labeller: a polycyclic cage ran past 90 s without a limit.
+LABELLER_ITERATIONS = 200_000
+
+_NOTHING = 4294967295  # the library's "no atom here" among controlling atoms
+_MARKED = rdqueries.HasChiralTagQueryAtom()
+_SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
+
+
+class Unreadable(Exception):
+    """A structure that could not be read or is not one molecule; the message says why."""
+
+
+@dataclass(frozen=True, slots=True)
+class Unit:
+    """One stereogenic unit. `atoms` are 0-based: one for a centre, two for a double bond.
+
+    `descriptor` is "" where the configuration is not specified; `kind` is "centre" or
+    "double bond".
+    """
+
+    kind: str
+    atoms: tuple[int, ...]
+    descriptor: str
+
+
+@dataclass(frozen=True, slots=True)
+class StereoGroup:
+    """Centres that are known only relative to each other: `kind` "and" (a racemate or a mixture
+    of epimers) or "or" (one of them, unknown which), as in enhanced stereo and rac-/rel-."""
+
+    kind: str
+    atoms: frozenset[int]
+
+
+@dataclass(frozen=True, slots=True)
+class Mark:
+    """A stereo mark as drawn, atoms 0-based, narrow end first.
+
+    `style`: wedge, hash, wavy, crossed.
+    """
+
+    begin: int
+    end: int
+    style: str
+
+
+@dataclass(eq=False)
+class Structure:
+    """A molecule with its marks. Atom numbers everywhere are the source's own, 0-based.
+
+    `dimension` is 0 (no coordinates), 2 or 3; `locants` is a label for each atom where a name
+    gave them; `doubt` says why descriptors cannot be trusted, "" where they can.
+    """
+
+    mol: Chem.Mol
+    text: str
+    dimension: int = 0
+    groups: tuple[StereoGroup, ...] = ()
+    marks: tuple[Mark, ...] = ()
+    locants: tuple[str, ...] = ()
+    doubt: str = field(default="", init=False)
+
+    @cached_property
+    def possible(self) -> tuple[tuple[str, tuple[int, ...], tuple[int, int]], ...]:
+        """Units the library holds possible: kind, atoms, and for a double bond one neighbour at
+        each end. Some are stereogenic only if others are; `units` and `undefined` decide."""
+        found = []
+        for info in Chem.FindPotentialStereo(self.mol, cleanIt=False, flagPossible=True):
+            if info.type == Chem.StereoType.Atom_Tetrahedral:
+                found.append(("centre", (info.centeredOn,), (-1, -1)))
+            elif info.type == Chem.StereoType.Bond_Double:
+                bond = self.mol.GetBondWithIdx(info.centeredOn)
+                near = list(info.controllingAtoms)
+                begin = next((a for a in near[:2] if a != _NOTHING), -1)
+                end = next((a for a in near[2:] if a != _NOTHING), -1)
+                ends = (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx())
+                if min(begin, end) < 0:
+                    continue
+                if self.mol.GetBondBetweenAtoms(ends[0], begin) is None:
+                    begin, end = end, begin
+                found.append(("double bond", ends, (begin, end)))
+        return tuple(found)
+
+    @cached_property
+    def units(self) -> tuple[Unit, ...]:
+        """The units whose configuration is specified, with their descriptors."""
+        labelled = _label(self.mol)
+        if labelled:
+            self.doubt = labelled
+            return ()
+        found = [
+            Unit("centre", (atom.GetIdx(),), atom.GetProp("_CIPCode"))
+            for atom in self.mol.GetAtomsMatchingQuery(_MARKED)
+            if atom.HasProp("_CIPCode")
+        ]
+        for kind, atoms, _ in self.possible:
+            if kind == "double bond":
+                bond = self.mol.GetBondBetweenAtoms(*atoms)
+                if bond.GetStereo() in _SHOWN and bond.HasProp("_CIPCode"):
+                    found.append(Unit(kind, atoms, bond.GetProp("_CIPCode")))
+        return tuple(found)
+
+    @cached_property
+    def undefined(self) -> tuple[Unit, ...]:
+        """The units that are stereogenic but carry no configuration.
+
+        A possible unit counts when giving it (and the other bare ones) a configuration earns it
+        a descriptor in some combination tried: all alike, then each one inverted.
+        """
+        specified = {unit.atoms for unit in self.units}
+        bare = [
+            (kind, atoms, near)
+            for kind, atoms, near in self.possible
+            if atoms not in specified and not self._is_marked(kind, atoms)
+        ]
+        if not bare:
+            return ()
+        earned: set[tuple[int, ...]] = set()
+        for inverted in range(-1, min(len(bare), 24)):
+            trial = Chem.Mol(self.mol)
+            for number, (kind, atoms, near) in enumerate(bare):
+                _set(trial, kind, atoms, near, 1 if number == inverted else -1)
+            if _label(trial):
+                break
+            earned.update(atoms for kind, atoms, _ in bare if _has_label(trial, kind, atoms))
+            if len(earned) == len(bare):
+                break
+        return tuple(Unit(kind, atoms, "") for kind, atoms, _ in bare if atoms in earned)
+
+    @cached_property
+    def smiles(self) -> str:
+        """Canonical isomeric SMILES; leaves the output order on the molecule for `order`."""
+        return str(Chem.MolToSmiles(self.mol))
+
+    @cached_property
+    def order(self) -> tuple[int, ...]:
+        """Atoms in the order in which `smiles` writes them."""
+        if not self.smiles:
+            return ()
+        return tuple(self.mol.GetPropsAsDict(True, True)["_smilesAtomOutputOrder"])
+
+    @cached_property
+    def flat(self) -> str:
+        """Canonical SMILES without stereo: equal where the constitution is the same."""
+        bare = Chem.RemoveHs(Chem.Mol(self.mol), sanitize=False)
+        return str(Chem.MolToSmiles(bare, isomericSmiles=False))
+
+    @property
+    def kind(self) -> str:
+        """"achiral", "absolute", "relative" or "racemic": what the marks say of the whole.
+
+        A molecule is only as absolute as its groups let it be; no specified centre is "silent"
+        where there are undefined ones.
+        """
+        centres = {unit.atoms[0] for unit in self.units if unit.kind == "centre"}
+        grouped: set[int] = set()
+        kinds = set()
+        for group in self.groups:
+            if centres & group.atoms:
+                kinds.add(group.kind)
+                grouped |= group.atoms
+        if not centres:
+            return "silent" if any(u.kind == "centre" for u in self.undefined) else "achiral"
+        if centres - grouped:
+            return "absolute" if not kinds else "partly " + _GROUP_KIND[min(kinds)]
+        return _GROUP_KIND["and" if "and" in kinds else "or"]
+
+    def _is_marked(self, kind: str, atoms: tuple[int, ...]) -> bool:
+        if kind == "centre":
+            tag = self.mol.GetAtomWithIdx(atoms[0]).GetChiralTag()
+            return bool(tag != Chem.ChiralType.CHI_UNSPECIFIED)
+        return self.mol.GetBondBetweenAtoms(*atoms).GetStereo() in _SHOWN
+
+
+_GROUP_KIND = {"and": "racemic", "or": "relative"}
+
+
+def geometry(mol: Chem.Mol, atoms: tuple[int, ...]) -> tuple[int, int, int] | None:
+    """Neighbour at the first atom, neighbour at the second, +1 cis or -1 trans; None if bare."""
+    bond = mol.GetBondBetweenAtoms(*atoms)
+    sign = _SHOWN.get(bond.GetStereo())
+    if sign is None:
+        return None
+    near = list(bond.GetStereoAtoms())
+    if mol.GetBondBetweenAtoms(atoms[0], near[0]) is None:
+        near.reverse()
+    return near[0], near[1], sign
+
+
+def set_geometry(
+    mol: Chem.Mol, atoms: tuple[int, ...], near: tuple[int, int], sign: int
+) -> None:
+    """Give a double bond its configuration: +1 cis, -1 trans, of the two neighbours named."""
+    bond = mol.GetBondBetweenAtoms(*atoms)
+    if bond.GetBeginAtomIdx() != atoms[0]:
+        near = (near[1], near[0])
+    bond.SetStereoAtoms(*near)
+    bond.SetStereo(Chem.BondStereo.STEREOCIS if sign > 0 else Chem.BondStereo.STEREOTRANS)
+
+
+def _set(
+    mol: Chem.Mol, kind: str, atoms: tuple[int, ...], near: tuple[int, int], sign: int
+) -> None:
+    if kind == "double bond":
+        set_geometry(mol, atoms, near, sign)
+        return
+    tag = Chem.ChiralType.CHI_TETRAHEDRAL_CCW if sign > 0 else Chem.ChiralType.CHI_TETRAHEDRAL_CW
+    mol.GetAtomWithIdx(atoms[0]).SetChiralTag(tag)
+
+
+def _has_label(mol: Chem.Mol, kind: str, atoms: tuple[int, ...]) -> bool:
+    if kind == "centre":
+        return bool(mol.GetAtomWithIdx(atoms[0]).HasProp("_CIPCode"))
+    return bool(mol.GetBondBetweenAtoms(*atoms).HasProp("_CIPCode"))
+
+
+def _label(mol: Chem.Mol) -> str:
+    """Label in place; the reason where the labeller gave up, "" where it did not."""
+    try:
+        rdCIPLabeler.AssignCIPLabels(mol, maxRecursiveIterations=LABELLER_ITERATIONS)
+    except (RuntimeError, ValueError) as error:
+        return f"the ranking was given up: {error}".splitlines()[0]
+    return ""
