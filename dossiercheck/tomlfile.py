@@ -159,7 +159,8 @@ def _key_lines(text: str) -> dict[tuple[Step, ...], int]:
                 counts[table] = counts.get(table, -1) + 1
                 lines.setdefault(table, number)
                 table = (*table, counts[table])
-            lines.setdefault(table, number)
+            for length in range(1, len(table) + 1):
+                lines.setdefault(table[:length], number)
         elif assigned := _ASSIGNED.match(line):
             steps: tuple[Step, ...] = table
             for part in _parts(assigned[1]):

@@ -1,0 +1,122 @@
+"""The rules in force, and what they say of a case.
+
+The catalogue, the user's own folders of rules and the settings' overrides come together here.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, replace
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from dossiercheck import assets, rulefile, tomlfile
+from dossiercheck.checks import registry
+from dossiercheck.model import Finding, Place, RuleEntry, Unread
+from dossiercheck.rulefile import Rule
+from dossiercheck.settings import RuleOverride, Settings, SettingsError
+
+if TYPE_CHECKING:
+    from dossiercheck.concordance import Case
+
+
+@dataclass(frozen=True, slots=True)
+class Outcome:
+    """What the rules say of one case. `unread` has an entry for each check that broke down, so
+    that a rule which could not be applied never looks like a rule that found nothing."""
+
+    findings: tuple[Finding, ...]
+    unread: tuple[Unread, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Rulebook:
+    """The rules in force, in the order of their ids."""
+
+    rules: tuple[Rule, ...]
+
+    def entries(self) -> tuple[RuleEntry, ...]:
+        """The rules as the report prints them."""
+        return tuple(
+            RuleEntry(rule.id, rule.title, rule.grade, rule.why, rule.basis, rule.remedy, rule.off)
+            for rule in self.rules
+        )
+
+    def judge(self, case: Case, case_needs: frozenset[str] | None = None) -> Outcome:
+        """Apply every rule in force to a case.
+
+        `case_needs` are the kinds of evidence that the case has; a rule that needs others is not
+        asked. Findings carry no number yet. Whatever a check raises becomes an unread entry.
+        """
+        findings: list[Finding] = []
+        unread: list[Unread] = []
+        for rule in self.rules:
+            if not rule.applies(case_needs):
+                continue
+            try:
+                findings.extend(_findings(rule, case))
+            except Exception as trouble:
+                unread.append(_breakdown(rule, case, trouble))
+        return Outcome(tuple(findings), tuple(unread))
+
+
+def load(settings: Settings, folders: Sequence[Path] = ()) -> Rulebook:
+    """The catalogue, then the user's folders, then the overrides of the settings.
+
+    A rule in a user's folder replaces the whole rule of the same id. Raises RuleError or, for a
+    bad override, SettingsError.
+    """
+    rules: dict[str, Rule] = {}
+    for folder in (assets.rules(), *folders):
+        rules |= {rule.id: rule for rule in rulefile.read_folder(folder)}
+    for name, override in settings.rules.items():
+        where = settings.path or Path("settings")
+        if name not in rules:
+            hint = tomlfile.suggestion(name, rules)
+            raise SettingsError(where, override.line, f"no rule is called '{name}'{hint}")
+        rules[name] = _overridden(rules[name], override, where)
+    return Rulebook(tuple(rules[name] for name in sorted(rules)))
+
+
+def _overridden(rule: Rule, override: RuleOverride, where: Path) -> Rule:
+    check = registry.CHECKS[rule.check]
+    try:
+        params = {
+            name: rulefile.typed(check, name, given) for name, given in override.params.items()
+        }
+    except ValueError as trouble:
+        raise SettingsError(where, override.line, f"'{rule.id}': {trouble}") from trouble
+    return replace(
+        rule,
+        grade=override.grade or rule.grade,
+        params={**rule.params, **params},
+        off=override.off,
+    )
+
+
+def _findings(rule: Rule, case: Case) -> Iterator[Finding]:
+    for seen in registry.CHECKS[rule.check].function(case, rule.params):
+        yield Finding(
+            id="",
+            rule=rule.id,
+            grade=rule.grade,
+            substance=case.substance.id,
+            message=rule.message.format(**seen.values),
+            remedy=rule.remedy,
+            exhibits=seen.exhibits,
+            unit=seen.unit,
+            locant=seen.locant,
+            derivation=seen.derivation,
+        )
+
+
+def _breakdown(rule: Rule, case: Case, trouble: Exception) -> Unread:
+    evidence = case.substance.evidence
+    return Unread(
+        place=evidence[0].place if evidence else Place(source=""),
+        reason="check-failed",
+        detail=(
+            f"The rule {rule.id} could not be applied to the substance {case.substance.id}: its"
+            f" check '{rule.check}' stopped with {type(trouble).__name__}: {trouble}"
+        ),
+    )
