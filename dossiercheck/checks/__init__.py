@@ -1,0 +1,10 @@
+"""The checks: pure functions from a case to observations. Importing this registers them all."""
+
+from dossiercheck.checks import (  # noqa: F401
+    configuration,
+    constitution,
+    drawings,
+    identity,
+    names,
+    statements,
+)

@@ -39,6 +39,27 @@ def inchi_of(structure: Structure) -> str:
         return str(Chem.MolToInchi(structure.mol))
 
 
+def possible_inchis(structure: Structure) -> list[str]:
+    """The standard InChI that may rightly stand for a structure, the likeliest first.
+
+    The drawing as the InChI library perceives it, and the structure as we perceive it. For a
+    racemate or a relative configuration also the mirror image and the one without stereo, since
+    the standard InChI cannot say more.
+    """
+    found = [inchi_of(structure)]
+    with quiet():
+        found.append(str(Chem.MolToInchi(structure.mol)))
+        if structure.groups:
+            bare = Chem.Mol(structure.mol)
+            Chem.RemoveStereochemistry(bare)
+            mirrored = Chem.Mol(structure.mol)
+            for unit in structure.units:
+                if unit.kind == "centre":
+                    mirrored.GetAtomWithIdx(unit.atoms[0]).InvertChirality()
+            found += [str(Chem.MolToInchi(mol)) for mol in (mirrored, bare)]
+    return list(dict.fromkeys(text for text in found if text))
+
+
 def key_of(inchi: str) -> str:
     """The InChIKey of an InChI, "" for none."""
     return str(Chem.InchiToInchiKey(inchi)) if inchi else ""

@@ -159,6 +159,10 @@ class Structure:
         bare = Chem.RemoveHs(Chem.Mol(self.mol), sanitize=False)
         return str(Chem.MolToSmiles(bare, isomericSmiles=False))
 
+    def components(self) -> list[tuple[int, ...]]:
+        """The atoms of each connected part."""
+        return [tuple(part) for part in Chem.GetMolFrags(self.mol)]
+
     @property
     def kind(self) -> str:
         """"achiral", "absolute", "relative" or "racemic": what the marks say of the whole.

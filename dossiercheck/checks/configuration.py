@@ -1,0 +1,271 @@
+"""Configuration: what two structural evidences say of the same stereogenic units."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+
+from dossiercheck.checks.exhibits import exhibit, of_units
+from dossiercheck.checks.registry import Observation, Params, check
+from dossiercheck.concordance import Case, Pair, UnitView
+from dossiercheck.model import Kind, Role, State
+from dossiercheck.stereo import constitution as con
+
+# A fault of the name that leaves a unit without its descriptor explains the silence there; the
+# silence is then part of that finding and not one of its own.
+OFFENCES = (
+    "no-such-locant",
+    "locant-not-stereogenic",
+    "duplicate-descriptor",
+    "contradictory-descriptors",
+    "lost-space",
+)
+_LAID = (con.SAME, con.CHARGE, con.MOBILE, con.TAUTOMER, con.SALT)
+
+
+def of_kind(case: Case, *kinds: Kind) -> Iterator[Pair]:
+    """The pairs whose evidence is of one of these kinds."""
+    return (pair for pair in case.pairs if pair.reading.kind in kinds)
+
+
+def unit_of(case: Case, views: Sequence[UnitView]) -> str:
+    """The table's names of some units, comma-separated."""
+    return ", ".join(case.unit_ids[frozenset(view.atoms)] for view in views)
+
+
+def cite(views: Sequence[UnitView]) -> str:
+    """Units as a reader finds them: the name's locant where there is one, else the atoms."""
+    return ", ".join(
+        view.locant or f"atom {'–'.join(str(a + 1) for a in view.atoms)}" for view in views
+    )
+
+
+def different(pair: Pair) -> list[UnitView]:
+    """Units with opposite configuration."""
+    return pair.having(State.DIFFERS)
+
+
+@check(needs=("name",), fields=("locant", "unit", "printed", "recomputed", "reference"))
+def configuration_differs(case: Case, params: Params) -> Iterator[Observation]:
+    """A name gives one unit, or several but not all, the configuration opposite to that of the
+    reference structure."""
+    for pair in of_kind(case, Kind.NAME):
+        views = different(pair)
+        if _whole_mirror(pair):
+            continue
+        for view in views:
+            assert case.reference is not None
+            yield Observation(
+                {
+                    "locant": cite([view]),
+                    "unit": view.kind,
+                    "printed": view.shows or "the opposite",
+                    "recomputed": view.descriptor or "the opposite",
+                    "reference": _called(case),
+                },
+                (
+                    of_units(pair.reading, [view], reference=False),
+                    of_units(case.reference, [view], reference=True),
+                ),
+                unit_of(case, [view]),
+                view.locant,
+            )
+
+
+@check(needs=("name",), fields=("count", "reference"))
+def mirror_image(case: Case, params: Params) -> Iterator[Observation]:
+    """A name with two or more centres that are all opposite: it names the enantiomer."""
+    for pair in of_kind(case, Kind.NAME):
+        if _whole_mirror(pair):
+            views = different(pair)
+            assert case.reference is not None
+            yield Observation(
+                {"count": str(len(views)), "reference": _called(case)},
+                (
+                    of_units(pair.reading, views, reference=False),
+                    of_units(case.reference, views, reference=True),
+                ),
+                unit_of(case, views),
+            )
+
+
+@check(needs=("name",), fields=("locants", "units", "count", "recomputed"))
+def name_silent(case: Case, params: Params) -> Iterator[Observation]:
+    """The reference specifies units of which the name says nothing."""
+    for pair in of_kind(case, Kind.NAME):
+        views = silent_names(case, pair)
+        if not views or len(views) <= _offences(pair):
+            continue
+        assert case.reference is not None
+        yield Observation(
+            {
+                "locants": cite(views),
+                "units": "unit" if len(views) == 1 else "units",
+                "count": str(len(views)),
+                "recomputed": ", ".join(view.descriptor for view in views),
+            },
+            (
+                exhibit(pair.reading, atoms={a: "?" for view in views for a in view.other[:1]}),
+                of_units(case.reference, views, reference=True),
+            ),
+            unit_of(case, views),
+            ", ".join(view.locant for view in views if view.locant),
+        )
+
+
+@check(needs=("name",), fields=("locants", "count", "printed"))
+def drawing_silent(case: Case, params: Params) -> Iterator[Observation]:
+    """A name or a notation specifies units that the reference structure leaves open."""
+    said: set[frozenset[int]] = set()
+    for pair in case.pairs:
+        views = [
+            view
+            for view in pair.having(State.SILENT, "reference")
+            if not _open_racemate(pair.reading.structure, view, len(pair.views))
+            and frozenset(view.atoms) not in said
+        ]
+        if not views:
+            continue
+        said.update(frozenset(view.atoms) for view in views)
+        assert case.reference is not None
+        yield Observation(
+            {
+                "locants": cite(views),
+                "count": str(len(views)),
+                "printed": ", ".join(view.shows for view in views),
+            },
+            (
+                of_units(pair.reading, views, reference=False),
+                exhibit(case.reference, atoms={a: "?" for v in views for a in v.atoms[:1]}),
+            ),
+            unit_of(case, views),
+            ", ".join(view.locant for view in views if view.locant),
+        )
+
+
+@check(needs=("name",), fields=("locant", "printed", "recomputed", "doubt"))
+def descriptor_undetermined(case: Case, params: Params) -> Iterator[Observation]:
+    """Two computations differ on a descriptor, or it could not be tied to one unit."""
+    for pair in case.pairs:
+        for view in pair.having(State.UNDETERMINED):
+            assert case.reference is not None
+            yield Observation(
+                {
+                    "locant": cite([view]),
+                    "printed": view.shows or "nothing",
+                    "recomputed": view.descriptor or "nothing",
+                    "doubt": view.note or "the two computations differ",
+                },
+                (
+                    of_units(pair.reading, [view], reference=False),
+                    of_units(case.reference, [view], reference=True),
+                ),
+                unit_of(case, [view]),
+                view.locant,
+            )
+
+
+@check(needs=("name",), fields=("name_kind", "reference_kind"))
+def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
+    """One side speaks of a single enantiomer, the other of a racemate or of relative
+    configuration only."""
+    for pair in of_kind(case, Kind.NAME):
+        mine, theirs = case.structure, pair.reading.structure
+        if not (mine and theirs) or pair.alignment.constitution.verdict not in _LAID:
+            continue
+        kinds = mine.kind, theirs.kind
+        if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds):
+            continue
+        assert case.reference is not None
+        yield Observation(
+            {"name_kind": kinds[1], "reference_kind": kinds[0]},
+            (exhibit(pair.reading, spans=_kind_spans(pair)), exhibit(case.reference)),
+        )
+
+
+@check(needs=("drawing",), fields=("difference", "reference"))
+def structures_differ(case: Case, params: Params) -> Iterator[Observation]:
+    """A second drawing or set of coordinates of one substance is not the same stereoisomer."""
+    for pair in of_kind(case, Kind.DRAWING, Kind.COORDINATES):
+        difference, views = describe(case, pair)
+        if not difference:
+            continue
+        assert case.reference is not None
+        yield Observation(
+            {"difference": difference, "reference": _called(case)},
+            (
+                of_units(pair.reading, views, reference=False),
+                of_units(case.reference, views, reference=True),
+            ),
+            unit_of(case, views),
+        )
+
+
+def describe(case: Case, pair: Pair) -> tuple[str, list[UnitView]]:
+    """How a structure departs from the reference, in words; "" where it does not."""
+    found = pair.alignment.constitution
+    if found.verdict == con.DIFFERENT:
+        return f"the constitution differs ({found.detail})", []
+    if found.verdict == con.SALT:
+        return f"the components differ ({found.detail})", []
+    mine, theirs = case.structure, pair.reading.structure
+    if mine and theirs and not {"silent", "achiral"} & {mine.kind, theirs.kind}:
+        if mine.kind != theirs.kind:
+            return f"the one is {mine.kind}, the other {theirs.kind}", []
+    views = different(pair)
+    if views:
+        if pair.alignment.mirrored and len(views) > 1:
+            return "the whole structure is the mirror image", views
+        return f"the configuration differs at {cite(views)}", views
+    silent = pair.having(State.SILENT, "other")
+    if silent:
+        return f"the configuration is left open at {cite(silent)}", silent
+    return "", []
+
+
+def silent_names(case: Case, pair: Pair) -> list[UnitView]:
+    """The units on which a name is silent and should not be."""
+    return [
+        view
+        for view in pair.having(State.SILENT, "other")
+        if not _open_racemate(case.structure, view, len(pair.views))
+        and not _imine_hydrogen(case, view)
+    ]
+
+
+def _whole_mirror(pair: Pair) -> bool:
+    return pair.alignment.mirrored and len(different(pair)) > 1
+
+
+def _offences(pair: Pair) -> int:
+    name = pair.reading.name
+    return sum(fault.slug in OFFENCES for fault in name.faults) if name else 0
+
+
+def _open_racemate(structure: object, view: UnitView, total: int) -> bool:
+    """A racemate with one centre may be written without any descriptor (common practice)."""
+    return getattr(structure, "kind", "") == "racemic" and view.kind == "centre" and total == 1
+
+
+def _imine_hydrogen(case: Case, view: UnitView) -> bool:
+    """The side on which an =N–H hydrogen is drawn says nothing (common practice)."""
+    if view.kind != "double bond" or case.structure is None:
+        return False
+    atoms = (case.structure.mol.GetAtomWithIdx(atom) for atom in view.atoms)
+    return any(atom.GetSymbol() == "N" and atom.GetTotalNumHs(True) > 0 for atom in atoms)
+
+
+def _kind_spans(pair: Pair) -> list[tuple[int, int]]:
+    name = pair.reading.name
+    if name is None:
+        return []
+    return [d.span for d in name.descriptors]
+
+
+def _called(case: Case) -> str:
+    """The reference in a sentence."""
+    if case.reference is None:
+        return "reference"
+    role = case.reference.evidence.role
+    if role is Role.MOLFILE:
+        return "drawing" if case.reference.kind is Kind.DRAWING else "coordinates"
+    return str(role)

@@ -1,0 +1,280 @@
+"""A substance's evidence held against one reference, unit by unit."""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Sequence
+from dataclasses import dataclass, field, replace
+
+from dossiercheck.interpretation import Reading
+from dossiercheck.model import Concordance, Kind, Role, State, UnitCell, UnitRow
+from dossiercheck.names.parser import NameParser
+from dossiercheck.names.reading import NameReading
+from dossiercheck.names.tying import tie
+from dossiercheck.stereo import alignment as al
+from dossiercheck.stereo import constitution as con
+from dossiercheck.stereo.structure import Structure
+from dossiercheck.substances import Substance
+
+_ABSOLUTE = {"R", "S", "r", "s", "E", "Z"}
+_RANK = {Kind.DRAWING: 0, Kind.COORDINATES: 1, Kind.NOTATION: 2, Kind.NAME: 3}
+
+
+@dataclass(frozen=True, slots=True)
+class UnitView:
+    """One unit as one evidence has it.
+
+    `atoms` number the reference, `other` the evidence's own structure, 0-based. `state` is that
+    of the concordance; `silent_side` is "reference" or "other" where one of them is silent.
+    `descriptor` is the reference's, `shows` the evidence's; for a name `shows` is the printed
+    descriptor where it could be tied to the unit, and `span` its characters.
+    """
+
+    kind: str
+    atoms: tuple[int, ...]
+    other: tuple[int, ...]
+    state: State
+    descriptor: str
+    shows: str
+    silent_side: str = ""
+    locant: str = ""
+    span: tuple[int, int] | None = None
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Pair:
+    """One structural evidence laid on the reference."""
+
+    reading: Reading
+    alignment: al.Alignment
+    views: tuple[UnitView, ...]
+
+    def having(self, state: State, silent_side: str = "") -> list[UnitView]:
+        """The units in a state, in the reference's order."""
+        return [
+            view
+            for view in self.views
+            if view.state is state and (not silent_side or view.silent_side == silent_side)
+        ]
+
+
+@dataclass(eq=False, slots=True)
+class Case:
+    """What a check is given: a substance, its reference, and every other structural evidence
+    laid on it. `unit_ids` names the units of the table ("u1") by the reference's atoms."""
+
+    substance: Substance
+    reference: Reading | None
+    pairs: tuple[Pair, ...]
+    unit_ids: dict[frozenset[int], str] = field(default_factory=dict)
+
+    def of_role(self, role: Role) -> list[Reading]:
+        """The substance's readings in a role that were understood."""
+        return [r for r in self.substance.readings if r.evidence.role is role and not r.refusal]
+
+    @property
+    def structure(self) -> Structure | None:
+        """The reference's structure."""
+        return self.reference.structure if self.reference else None
+
+    @property
+    def kinds(self) -> frozenset[str]:
+        """The kinds of evidence there are."""
+        return frozenset(str(reading.kind) for reading in self.substance.readings)
+
+
+def build_case(substance: Substance, parser: NameParser) -> Case:
+    """Choose the reference and lay everything else on it."""
+    structural = [r for r in substance.readings if r.structure is not None]
+    if not structural:
+        return Case(substance, None, ())
+    reference = min(structural, key=_preference)
+    pairs = tuple(_pair(reference, r, parser) for r in structural if r is not reference)
+    case = Case(substance, reference, pairs)
+    atoms: dict[frozenset[int], None] = {}
+    assert reference.structure is not None
+    for unit in reference.structure.units:
+        atoms.setdefault(frozenset(unit.atoms))
+    for pair in pairs:
+        for view in pair.views:
+            atoms.setdefault(frozenset(view.atoms))
+    for unit in reference.structure.undefined:
+        atoms.setdefault(frozenset(unit.atoms))
+    ordered = sorted(atoms, key=lambda unit: (len(unit), sorted(unit)))
+    case.unit_ids = {unit: f"u{number}" for number, unit in enumerate(ordered, 1)}
+    return case
+
+
+def table(case: Case) -> Concordance | None:
+    """The concordance as data, None where there is no structure to hold anything against."""
+    if case.reference is None or case.structure is None:
+        return None
+    own = {frozenset(u.atoms): u for u in (*case.structure.units, *case.structure.undefined)}
+    by_pair = [{frozenset(view.atoms): view for view in pair.views} for pair in case.pairs]
+    rows = []
+    for unit, name in case.unit_ids.items():
+        mine = own.get(unit)
+        shown = mine.descriptor if mine and mine.descriptor else ""
+        state = State.AGREES if shown else State.SILENT
+        cells = [UnitCell(case.reference.evidence.id, state, shown or "—", "reference")]
+        locant = ""
+        for pair, views in zip(case.pairs, by_pair, strict=True):
+            view = views.get(unit)
+            cells.append(_cell(pair, view))
+            if view and not locant:
+                locant = view.locant
+        kind = "double bond" if len(unit) == 2 else "centre"
+        rows.append(UnitRow(name, kind, tuple(a + 1 for a in sorted(unit)), locant, tuple(cells)))
+    constitution = {
+        pair.reading.evidence.id: _constitution(pair.alignment.constitution) for pair in case.pairs
+    }
+    return Concordance(case.reference.evidence.id, tuple(rows), constitution)
+
+
+def _preference(reading: Reading) -> tuple[int, int]:
+    """Drawings first, among them the one that specifies most."""
+    assert reading.structure is not None
+    return _RANK[reading.kind], -len(reading.structure.units)
+
+
+def _cell(pair: Pair, view: UnitView | None) -> UnitCell:
+    said = pair.reading.evidence.id
+    if view is None:
+        return UnitCell(said, State.SILENT, "—", "")
+    return UnitCell(said, view.state, view.shows or "—", view.note)
+
+
+def _constitution(found: con.Constitution) -> str:
+    return f"{found.verdict}: {found.detail}" if found.detail else found.verdict
+
+
+def _pair(reference: Reading, reading: Reading, parser: NameParser) -> Pair:
+    assert reference.structure is not None
+    assert reading.structure is not None
+    found = al.align(reference.structure, reading.structure)
+    views = tuple(_view(verdict, reading.structure) for verdict in found.verdicts)
+    if found.doubt:
+        views = tuple(
+            replace(v, state=State.UNDETERMINED, note=found.doubt)
+            if v.state is not State.AGREES
+            else v
+            for v in views
+        )
+    if reading.name is not None and _needs_tying(found, views, reading):
+        views = _tied(views, reading, reading.name, reference.structure, parser)
+    return Pair(reading, found, views)
+
+
+def _view(verdict: al.Verdict, other: Structure) -> UnitView:
+    locants = [other.locants[a] for a in verdict.other] if other.locants else []
+    state, silent = {
+        al.SAME: (State.AGREES, ""),
+        al.OPPOSITE: (State.DIFFERS, ""),
+        al.OTHER_SILENT: (State.SILENT, "other"),
+        al.REFERENCE_SILENT: (State.SILENT, "reference"),
+    }[verdict.state]
+    return UnitView(
+        verdict.kind,
+        verdict.atoms,
+        verdict.other,
+        state,
+        verdict.descriptor,
+        verdict.other_descriptor,
+        silent,
+        _locant(locants),
+    )
+
+
+def _locant(locants: Sequence[str]) -> str:
+    """A double bond is cited by its lower locant (IUPAC 2013, P-31.1.4.2.4)."""
+    kept = [locant for locant in locants if locant]
+    return min(kept, key=lambda text: (len(text), text)) if kept else ""
+
+
+def _needs_tying(found: al.Alignment, views: Sequence[UnitView], reading: Reading) -> bool:
+    """Whether the printed letters must be tied to their units, which costs a parse each."""
+    assert reading.name is not None
+    assert reading.structure is not None
+    if any(view.state is not State.AGREES for view in views):
+        return True
+    if found.constitution.verdict == con.DIFFERENT:
+        return False
+    if any(fault.slug == "descriptor-stripped" for fault in reading.name.faults):
+        return True
+    if reading.structure.groups:
+        return False
+    printed = Counter(
+        d.text.upper() for d in reading.name.descriptors if d.text in _ABSOLUTE
+    )
+    computed = Counter(unit.descriptor.upper() for unit in reading.structure.units)
+    return bool(printed - computed)
+
+
+def _tied(
+    views: tuple[UnitView, ...],
+    reading: Reading,
+    name: NameReading,
+    reference: Structure,
+    parser: NameParser,
+) -> tuple[UnitView, ...]:
+    """Put the printed descriptor on each unit, and doubt where two computations differ.
+
+    The name parser placed the atoms by its own ranking; the printed letter held against the
+    letter recomputed on the reference is a second way to the same question. Where the structure
+    says "opposite" and the letters say "equal", or the reverse, nobody is right for certain.
+    """
+    assert reading.structure is not None
+    by_atoms = {frozenset(t.atoms): t.descriptor for t in tie(name, parser) if t.atoms}
+    faults = {f.descriptor: f for f in name.faults if f.descriptor is not None}
+    relative = bool(reference.groups or reading.structure.groups)
+    result = []
+    for view in views:
+        index = by_atoms.get(frozenset(view.other))
+        if index is None:
+            result.append(_by_locant(view, name))
+            continue
+        printed = name.descriptors[index]
+        shown = replace(
+            view, shows=printed.text, locant=printed.locant or view.locant, span=printed.span
+        )
+        letters = printed.text in _ABSOLUTE and bool(view.descriptor) and not relative
+        fault = faults.get(index)
+        if letters and not (fault and fault.slug == "overrides-implied"):
+            equal = printed.text.upper() == view.descriptor.upper()
+            if equal != (view.state is State.AGREES) and view.state in (
+                State.AGREES,
+                State.DIFFERS,
+            ):
+                shown = replace(
+                    shown,
+                    state=State.UNDETERMINED,
+                    note=f"printed {printed.text}; recomputed {view.descriptor} on the reference; "
+                    f"the name parser's own ranking gives {view.shows or 'nothing'}",
+                )
+        result.append(shown)
+    return tuple(result)
+
+
+def _by_locant(view: UnitView, name: NameReading) -> UnitView:
+    """A descriptor that the parser could not take, judged by its locant and its letter."""
+    if view.silent_side != "other":
+        return view
+    for fault in name.faults:
+        if fault.slug != "descriptor-stripped" or fault.descriptor is None:
+            continue
+        if not set(view.other) & set(fault.atoms):
+            continue
+        printed = name.descriptors[fault.descriptor]
+        shown = replace(view, shows=printed.text, locant=printed.locant, span=printed.span)
+        if len(fault.atoms) > len(view.other) or printed.text not in _ABSOLUTE:
+            note = "the descriptor could not be tied to one unit"
+            return replace(shown, state=State.UNDETERMINED, silent_side="", note=note)
+        agrees = printed.text.upper() == view.descriptor.upper()
+        return replace(
+            shown,
+            state=State.AGREES if agrees else State.DIFFERS,
+            silent_side="",
+            note="held against the reference by its letter alone",
+        )
+    return view

@@ -1,0 +1,66 @@
+"""What a stereochemistry field claims: the kind of stereo, and how many centres.
+
+Only plain claims are read. A negation or a hedge makes the whole text unread: "not a racemate"
+must never count as "racemate".
+"""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass
+
+_NUMBERS = {
+    word: number
+    for number, word in enumerate(
+        ("no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten")
+    )
+}
+_COUNT = re.compile(
+    r"\b(\d+|" + "|".join(_NUMBERS) + r")\s+(?:defined\s+|specified\s+|tetrahedral\s+)?"
+    r"(?:stereo(?:genic\s+|chemical\s+)?|chiral(?:ity)?\s+|asymmetric\s+)"
+    r"(?:cent(?:er|re)s?|carbons?(?:\s+atoms?)?)\b",
+    re.IGNORECASE,
+)
+_DOUBT = re.compile(
+    r"\b(?:not|non|without|neither|nor|cannot|may|might|possibly|probably|presumed|unless"
+    r"|unknown|undetermined|except|if)\b|n['’]t\b",
+    re.IGNORECASE,
+)
+_KINDS = (
+    ("racemic", re.compile(r"\brac(?:emic|emate)\b|\(±\)|\brac-", re.IGNORECASE)),
+    ("relative", re.compile(r"\brelative\b", re.IGNORECASE)),
+    (
+        "absolute",
+        re.compile(
+            r"\bsingle\s+(?:enantiomer|stereoisomer|isomer)\b|\babsolute\b|\bhomochiral\b"
+            r"|\benantio(?:pure|merically\s+pure)\b",
+            re.IGNORECASE,
+        ),
+    ),
+    ("achiral", re.compile(r"\bachiral\b|\bmeso\b", re.IGNORECASE)),
+)
+
+
+@dataclass(frozen=True, slots=True)
+class Statement:
+    """`kind` is racemic, relative, absolute, achiral or "" where none is claimed; `centres` is
+    the number claimed, None where none is."""
+
+    kind: str = ""
+    centres: int | None = None
+
+
+def read_statement(text: str) -> Statement | None:
+    """The claim of a stereochemistry field, None where it is not understood for certain."""
+    counts = {_number(found) for found in _COUNT.findall(text)}
+    rest = _COUNT.sub(" ", text)
+    if _DOUBT.search(rest) or len(counts) > 1:
+        return None
+    kinds = [kind for kind, pattern in _KINDS if pattern.search(rest)]
+    if len(kinds) > 1 or not (kinds or counts):
+        return None
+    return Statement(kinds[0] if kinds else "", counts.pop() if counts else None)
+
+
+def _number(word: str) -> int:
+    return int(word) if word.isdigit() else _NUMBERS[word.lower()]
