@@ -1,0 +1,1 @@
+"""Builds the demonstration dossiers in `samples/`: `python -m tests.demonstration.build`."""
