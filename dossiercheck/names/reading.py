@@ -1,0 +1,199 @@
+"""Systematic names to structures, with what is wrong or unread in their descriptors.
+
+A name that the parser reads costs one question. More are asked only where the parser refused,
+or where the name carries both a printed descriptor and a word that implies a configuration.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Sequence
+from dataclasses import replace
+
+from dossiercheck.names import implied, spacing
+from dossiercheck.names.descriptors import PrintedDescriptor, printed
+from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
+from dossiercheck.names.notation import NotationError, read_extended
+from dossiercheck.names.parser import NameParser, Parse
+from dossiercheck.names.refused import (
+    Rest,
+    faults_of,
+    is_stereo_refusal,
+    least_left_out,
+    never_placed,
+)
+from dossiercheck.names.rewriting import rewritten
+from dossiercheck.names.typography import Cleaned, clean, foreign
+
+__all__ = [
+    "Fault",
+    "NameReading",
+    "NamedStructure",
+    "PrintedDescriptor",
+    "Refusal",
+    "StereoGroup",
+    "read_names",
+]
+
+_NOT_PARSED = re.compile(
+    r"is unparsable due to the following being uninterpretable: (?P<word>.*?)"
+    r" The following was not parseable: (?P<rest>.*)$"
+)
+_RACEMIC = frozenset(("rac", "racemic", "+/-", "+-", "-/+", "+,-", "RS", "DL", "dl", "D,L", "d,l"))
+
+
+def read_names(texts: Sequence[str], parser: NameParser) -> list[NameReading]:
+    """A reading for each printed name, in order. Raises parser.ParserMissing only."""
+    readings = [_prepared(text, parser.longest) for text in texts]
+    open_ = [i for i, reading in enumerate(readings) if reading.refusal is None]
+    drops = [never_placed(readings[i].descriptors) for i in open_]
+    sent = [
+        rewritten(readings[i].cleaned.text, readings[i].descriptors, drop=drop)
+        if drop
+        else readings[i].cleaned.text
+        for i, drop in zip(open_, drops, strict=True)
+    ]
+    for i, drop, parse in zip(open_, drops, parser.parse(sent), strict=True):
+        readings[i] = _read(readings[i], Rest(parse, drop), parser)
+    return readings
+
+
+def _prepared(text: str, longest: int) -> NameReading:
+    """Cleaned and searched for descriptors, or refused before the parser is asked."""
+    if len(text) > longest:
+        detail = f"the name has {len(text)} characters; more than {longest} are not read"
+        return NameReading(text, Cleaned("", (), text), refusal=Refusal("too-long", detail))
+    cleaned = clean(text)
+    if not cleaned.text:
+        return NameReading(text, cleaned, refusal=Refusal("empty", "there is no text"))
+    stranger = foreign(cleaned)
+    if stranger:
+        character, place = stranger
+        return NameReading(text, cleaned, refusal=_stranger(character, place))
+    return NameReading(text, cleaned, descriptors=printed(cleaned))
+
+
+def _stranger(character: str, place: int) -> Refusal:
+    span = (place, place + 1)
+    if character in "\r\n\v\f\x85\u2028\u2029":
+        detail = "a line break inside the name: whether a space belongs there is not known"
+        return Refusal("line-break", detail, span)
+    code = f"U+{ord(character):04X}"
+    if not character.isprintable():
+        return Refusal("control-character", f"the control character {code} in the name", span)
+    return Refusal("foreign-character", f"{character!r} ({code}) stands in no name", span)
+
+
+def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
+    """The reading with its structure and faults, or with the refusal."""
+    text, descriptors = reading.cleaned.text, reading.descriptors
+    spaces = spacing.lost(text, rest.parse, parser)
+    if spaces and not rest.parse.smiles and not is_stereo_refusal(rest.parse):
+        name = rewritten(text, descriptors, drop=rest.dropped, spaces=spaces)
+        again = parser.parse([name])[0]
+        if again.smiles or is_stereo_refusal(again):
+            rest = Rest(again, rest.dropped)
+            reading = replace(reading, respaced=spaces)
+    first = rest
+    if is_stereo_refusal(rest.parse):
+        rest = least_left_out(text, descriptors, rest, parser, reading.respaced)
+    messages = tuple(dict.fromkeys((*first.parse.messages, *rest.parse.messages)))
+    reading = replace(reading, messages=messages)
+    structure = _structure(rest.parse)
+    if structure is None:
+        return replace(reading, refusal=_refusal(reading.cleaned, rest.parse))
+    skeleton = None
+    if rest.dropped:
+        everything = range(len(descriptors))
+        bare = rewritten(text, descriptors, drop=everything, spaces=reading.respaced)
+        skeleton = _structure(parser.parse([bare])[0])
+    gave_up = "Failed to assign CIP" in " ".join(first.parse.messages)
+    reading = replace(
+        reading,
+        structure=structure,
+        skeleton=skeleton,
+        dropped=rest.dropped,
+        stereo_kind=_stereo_kind(structure, descriptors),
+    )
+    twice = _by_text(descriptors)
+    unplaced = rest.dropped - {fault.descriptor for fault in twice}
+    faults = [
+        *twice,
+        *faults_of(descriptors, unplaced, skeleton, structure, rest.dropped if gave_up else ()),
+        *_ignored(descriptors, messages),
+        *spacing.faults(reading.cleaned, spaces),
+    ]
+    reading = replace(reading, faults=tuple(faults))
+    return replace(reading, faults=(*faults, *implied.faults(reading, parser)))
+
+
+def _structure(parse: Parse) -> NamedStructure | None:
+    if parse.smiles is None:
+        return None
+    try:
+        return read_extended(parse.smiles)
+    except NotationError:
+        return None
+
+
+def _refusal(cleaned: Cleaned, parse: Parse) -> Refusal:
+    """Why there is no structure, with the place where the parser stopped if it tells."""
+    if parse.stopped:
+        return Refusal(parse.stopped, parse.messages[1])
+    if parse.smiles is not None:
+        return Refusal("not-buildable", "the name parser's answer could not be read")
+    said = " ".join(parse.messages)
+    match = _NOT_PARSED.search(said)
+    if match:
+        part = match["rest"] or match["word"]
+        start = cleaned.text.rfind(part)
+        if start < 0:
+            start = cleaned.text.casefold().rfind(part.casefold())
+        span = cleaned.span(start, start + len(part)) if start >= 0 and part else None
+        return Refusal("not-interpretable", f"not interpretable from “{part}” on", span)
+    reason = "stereo-not-buildable" if is_stereo_refusal(parse) else "not-buildable"
+    return Refusal(reason, f"the name parser says: {said}" if said else "no reason given")
+
+
+def _stereo_kind(structure: NamedStructure, descriptors: Sequence[PrintedDescriptor]) -> str:
+    kinds = {group.kind for group in structure.groups}
+    if kinds & {"rac", "and"} or any(d.text in _RACEMIC for d in descriptors):
+        return "racemic"
+    if "or" in kinds or any(d.text == "rel" for d in descriptors):
+        return "relative"
+    return "absolute" if any(c in structure.smiles for c in "@/\\") else "silent"
+
+
+def _by_text(descriptors: Sequence[PrintedDescriptor]) -> list[Fault]:
+    """Two descriptors for one locant in one bracket."""
+    found = []
+    for index, descriptor in enumerate(descriptors):
+        for other in range(index):
+            earlier = descriptors[other]
+            if (
+                descriptor.locant
+                and earlier.bracket == descriptor.bracket >= 0
+                and (earlier.locant, earlier.family) == (descriptor.locant, descriptor.family)
+            ):
+                same = earlier.text == descriptor.text
+                slug = "duplicate-descriptor" if same else "contradictory-descriptors"
+                detail = (
+                    f"locant {descriptor.locant} has {earlier.text} and {descriptor.text}"
+                    " in the same bracket"
+                )
+                found.append(Fault(slug, index, other, detail))
+                break
+    return found
+
+
+def _ignored(descriptors: Sequence[PrintedDescriptor], messages: Sequence[str]) -> list[Fault]:
+    """What the parser says it passed over (signs of rotation, mostly)."""
+    found = []
+    for message in messages:
+        if message.startswith("STEREOCHEMISTRY_IGNORED"):
+            token = message.rpartition(":")[2].strip().removesuffix("-").strip("()")
+            if token in _RACEMIC:
+                continue  # the parser reads the sign for a racemate all the same
+            index = next((i for i, d in enumerate(descriptors) if d.text == token), None)
+            found.append(Fault("stereo-ignored", index, None, message.partition(":")[2].strip()))
+    return found
