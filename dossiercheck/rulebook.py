@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING
 
 from dossiercheck import assets, rulefile, tomlfile
 from dossiercheck.checks import registry
-from dossiercheck.model import Finding, Place, RuleEntry, Unread
+from dossiercheck.model import Finding, RuleEntry, Unread
 from dossiercheck.rulefile import Rule
 from dossiercheck.settings import RuleOverride, Settings, SettingsError
 
@@ -111,9 +111,8 @@ def _findings(rule: Rule, case: Case) -> Iterator[Finding]:
 
 
 def _breakdown(rule: Rule, case: Case, trouble: Exception) -> Unread:
-    evidence = case.substance.evidence
     return Unread(
-        place=evidence[0].place if evidence else Place(source=""),
+        place=case.substance.readings[0].evidence.place,
         reason="check-failed",
         detail=(
             f"The rule {rule.id} could not be applied to the substance {case.substance.id}: its"
