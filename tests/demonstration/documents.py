@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import csv
 import io
+import re
 from collections.abc import Callable, Iterable, Sequence
 
 from tests.demonstration import office
@@ -78,7 +79,7 @@ def _nomenclature(say: Say) -> bytes:
         ("SMILES", value(drug, "smiles", drug.line)),
         ("InChI", value(drug, "inchi", drug.inchi)),
         ("InChIKey", value(drug, "inchikey", drug.inchikey)),
-        ("Stereochemistry", value(drug, "stereo", drug.stereo)),
+        ("Stereochemistry", value(drug, "stereo", f"{drug.stereo}, {drug.counted}")),
     ]
     cells = [
         (
@@ -272,18 +273,19 @@ def _stereochemistry(say: Say) -> str:
     parts = [
         "# 3.2.S.3.1 Elucidation of structure and other characteristics\n",
         "## Absolute configuration\n",
-        f"Dorvaquelan, {base.name}, was correlated with its salt by crystallography.\n",
+        f"Dorvaquelan, {_emphasised(base.name)}, was correlated with its salt by crystallography.\n",
         f"Impurity A, {mirror.name}, is its enantiomer.\n",
         "## Stereochemistry of the impurities\n",
     ]
     for one in s.IMPURITIES:
-        count = say(STEREOCHEMISTRY, one, "centres", str(one.centres))
-        parts.append(
-            f"Substance: {one.label}\n"
-            f"Stereochemistry: {say(STEREOCHEMISTRY, one, 'stereo', one.stereo)}\n"
-            f"Number of stereocentres: {count}\n"
-        )
+        stated = say(STEREOCHEMISTRY, one, "stereo", f"{one.stereo}, {one.counted}")
+        parts.append(f"Substance: {one.label}\nStereochemistry: {stated}\n")
     return "\n".join(parts)
+
+
+def _emphasised(name: str) -> str:
+    """A name with its descriptors in Markdown's italics."""
+    return re.sub(r"(?<=\d)([RS])(?=[,)])", r"*\1*", name)
 
 
 def _specification(say: Say) -> str:

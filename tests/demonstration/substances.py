@@ -50,6 +50,12 @@ class Substance:
         return "|" in self.smiles
 
     @property
+    def counted(self) -> str:
+        """How many stereocentres there are, in words."""
+        number = ("no", "one", "two", "three", "four", "five", "six", "seven")[self.centres]
+        return f"{number} stereocentre{'' if self.centres == 1 else 's'}"
+
+    @property
     def line(self) -> str:
         """Canonical SMILES; without stereo marks for a racemic or relative structure, as
         registries print them (common practice)."""
@@ -190,7 +196,7 @@ PYRROLIDINE = Substance(
     "Intermediate 3",
     "CC[C@H](C)Oc1cc(ccc1F)[C@@H]1[C@H](CN(C1)C)C(=O)OCC |a:2,&1:12,13|",
     f"ethyl (3RS,4SR)-4-{_ARYL}-1-methylpyrrolidine-3-carboxylate",
-    "mixture of diastereomers",
+    "racemic at the pyrrolidine",
     other_name=f"ethyl rac-(3R,4S)-4-{_ARYL}-1-methylpyrrolidine-3-carboxylate",
     centres=3,
 )
