@@ -16,6 +16,10 @@ from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.structure import Structure
 from dossiercheck.substances import Substance
 
+# Descriptors the name parser could not take. One at a locant that it holds not stereogenic may
+# be right all the same: it looks at the constitution alone, and a centre may exist only through
+# other centres (Sequence Rules 4 and 5).
+LEFT_OUT = ("descriptor-stripped", "locant-not-stereogenic")
 _ABSOLUTE = {"R", "S", "r", "s", "E", "Z"}
 _RANK = {Kind.DRAWING: 0, Kind.COORDINATES: 1, Kind.NOTATION: 2, Kind.NAME: 3}
 
@@ -200,13 +204,11 @@ def _needs_tying(found: al.Alignment, views: Sequence[UnitView], reading: Readin
         return True
     if found.constitution.verdict == con.DIFFERENT:
         return False
-    if any(fault.slug == "descriptor-stripped" for fault in reading.name.faults):
+    if any(fault.slug in LEFT_OUT for fault in reading.name.faults):
         return True
     if reading.structure.groups:
         return False
-    printed = Counter(
-        d.text.upper() for d in reading.name.descriptors if d.text in _ABSOLUTE
-    )
+    printed = Counter(d.text.upper() for d in reading.name.descriptors if d.text in _ABSOLUTE)
     computed = Counter(unit.descriptor.upper() for unit in reading.structure.units)
     return bool(printed - computed)
 
@@ -257,17 +259,22 @@ def _tied(
 
 
 def _by_locant(view: UnitView, name: NameReading) -> UnitView:
-    """A descriptor that the parser could not take, judged by its locant and its letter."""
+    """A descriptor that the parser could not take, judged by its locant and its letter.
+
+    One without a locant, whose letter the silent unit has, cannot be tied to anything: that is
+    doubt, and neither agreement nor silence.
+    """
     if view.silent_side != "other":
         return view
     for fault in name.faults:
-        if fault.slug != "descriptor-stripped" or fault.descriptor is None:
-            continue
-        if not set(view.other) & set(fault.atoms):
+        if fault.slug not in LEFT_OUT or fault.descriptor is None:
             continue
         printed = name.descriptors[fault.descriptor]
+        loose = not printed.locant and not fault.atoms and printed.text == view.descriptor
+        if not loose and not set(view.other) & set(fault.atoms):
+            continue
         shown = replace(view, shows=printed.text, locant=printed.locant, span=printed.span)
-        if len(fault.atoms) > len(view.other) or printed.text not in _ABSOLUTE:
+        if loose or len(fault.atoms) > len(view.other) or printed.text not in _ABSOLUTE:
             note = "the descriptor could not be tied to one unit"
             return replace(shown, state=State.UNDETERMINED, silent_side="", note=note)
         agrees = printed.text.upper() == view.descriptor.upper()

@@ -23,8 +23,8 @@ class Reading:
     """One evidence with what was understood of it.
 
     `structure` is what a drawing, notation or name says; `name` the details of a name;
-    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim. `refusal` says why
-    nothing was understood, "" where something was; `reason` is its slug.
+    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim.
+    `refusal` says why nothing was understood, "" where something was; `reason` is its slug.
     """
 
     evidence: Evidence

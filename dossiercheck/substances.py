@@ -14,7 +14,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.interpretation import Reading
-from dossiercheck.model import Unread
+from dossiercheck.model import Evidence, Unread
 from dossiercheck.settings import RegisterEntry
 from dossiercheck.stereo.alignment import SAME, align
 from dossiercheck.stereo.structure import Structure
@@ -35,6 +35,11 @@ class Substance:
         """Attribute one reading."""
         self.readings.append(reading)
         self.attribution[reading.evidence.id] = reason
+
+    @property
+    def evidence(self) -> tuple[Evidence, ...]:
+        """The evidence attributed, in the order of the dossier."""
+        return tuple(reading.evidence for reading in self.readings)
 
     def structures(self) -> Iterable[Structure]:
         """The structures already attributed, names included."""

@@ -60,7 +60,7 @@ def configuration_differs(case: Case, params: Params) -> Iterator[Observation]:
                     "unit": view.kind,
                     "printed": view.shows or "the opposite",
                     "recomputed": view.descriptor or "the opposite",
-                    "reference": _called(case),
+                    "reference": called(case),
                 },
                 (
                     of_units(pair.reading, [view], reference=False),
@@ -79,7 +79,7 @@ def mirror_image(case: Case, params: Params) -> Iterator[Observation]:
             views = different(pair)
             assert case.reference is not None
             yield Observation(
-                {"count": str(len(views)), "reference": _called(case)},
+                {"count": str(len(views)), "reference": called(case)},
                 (
                     of_units(pair.reading, views, reference=False),
                     of_units(case.reference, views, reference=True),
@@ -191,7 +191,7 @@ def structures_differ(case: Case, params: Params) -> Iterator[Observation]:
             continue
         assert case.reference is not None
         yield Observation(
-            {"difference": difference, "reference": _called(case)},
+            {"difference": difference, "reference": called(case)},
             (
                 of_units(pair.reading, views, reference=False),
                 of_units(case.reference, views, reference=True),
@@ -208,9 +208,9 @@ def describe(case: Case, pair: Pair) -> tuple[str, list[UnitView]]:
     if found.verdict == con.SALT:
         return f"the components differ ({found.detail})", []
     mine, theirs = case.structure, pair.reading.structure
-    if mine and theirs and not {"silent", "achiral"} & {mine.kind, theirs.kind}:
-        if mine.kind != theirs.kind:
-            return f"the one is {mine.kind}, the other {theirs.kind}", []
+    kinds = {mine.kind, theirs.kind} if mine and theirs else set()
+    if mine and theirs and len(kinds) > 1 and not {"silent", "achiral"} & kinds:
+        return f"the one is {mine.kind}, the other {theirs.kind}", []
     views = different(pair)
     if views:
         if pair.alignment.mirrored and len(views) > 1:
@@ -261,7 +261,7 @@ def _kind_spans(pair: Pair) -> list[tuple[int, int]]:
     return [d.span for d in name.descriptors]
 
 
-def _called(case: Case) -> str:
+def called(case: Case) -> str:
     """The reference in a sentence."""
     if case.reference is None:
         return "reference"

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from dossiercheck.checks.configuration import of_kind
+from dossiercheck.checks.configuration import called, of_kind
 from dossiercheck.checks.exhibits import exhibit
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case, Pair
@@ -28,7 +28,7 @@ def _plain(case: Case, verdict: str) -> Iterator[Observation]:
         )
 
 
-@check(needs=("name",), fields=("difference", "name_formula", "reference_formula"))
+@check(needs=("name",), fields=("difference", "reference", "name_formula", "reference_formula"))
 def constitution_differs(case: Case, params: Params) -> Iterator[Observation]:
     """The name stands for another compound."""
     for pair in _named(case, con.DIFFERENT):
@@ -38,6 +38,7 @@ def constitution_differs(case: Case, params: Params) -> Iterator[Observation]:
         yield Observation(
             {
                 "difference": pair.alignment.constitution.detail,
+                "reference": called(case),
                 "name_formula": str(molecular_formula(pair.reading.structure)),
                 "reference_formula": str(molecular_formula(case.structure)),
             },

@@ -87,8 +87,8 @@ def _on_axis(structure: Structure, atom: int) -> bool:
     if here.GetIsAromatic():
         return True
     return any(
-        bond.GetBondTypeAsDouble() == 2.0  # noqa: PLR2004
-        and sum(b.GetBondTypeAsDouble() == 2.0 for b in bond.GetOtherAtom(here).GetBonds()) > 1  # noqa: PLR2004
+        bond.GetBondTypeAsDouble() == 2.0
+        and sum(b.GetBondTypeAsDouble() == 2.0 for b in bond.GetOtherAtom(here).GetBonds()) > 1
         for bond in here.GetBonds()
     )
 

@@ -128,9 +128,7 @@ def mass_differs(case: Case, params: Params) -> Iterator[Observation]:
             continue
         stated, decimals = reading.mass
         half = 0.5 * 10.0**-decimals
-        if any(
-            abs(stated - relative_mass(f)) <= half + mass_spread(f) + 1e-9 for f in formulas
-        ):
+        if any(abs(stated - relative_mass(f)) <= half + mass_spread(f) + 1e-9 for f in formulas):
             continue
         computed = f"{relative_mass(formulas[0]):.{max(decimals, 2)}f}"
         yield Observation(

@@ -21,9 +21,7 @@ def _faults(case: Case, slug: str) -> Iterator[tuple[Reading, Fault]]:
                     yield reading, fault
 
 
-def _observe(
-    case: Case, reading: Reading, fault: Fault, values: dict[str, str]
-) -> Observation:
+def _observe(case: Case, reading: Reading, fault: Fault, values: dict[str, str]) -> Observation:
     """One fault, with the unit it leaves without a descriptor where that can be told."""
     assert reading.name is not None
     descriptors = reading.name.descriptors
@@ -51,6 +49,19 @@ def _bereft(case: Case, pair: Pair, fault: Fault) -> list:  # type: ignore[type-
     return at_locant
 
 
+def _is_unit(case: Case, reading: Reading, fault: Fault) -> bool:
+    """Whether the reference has a unit where the name parser sees none, or may have it: then the
+    descriptor was judged by its letter, and the concordance says how."""
+    assert reading.name is not None
+    span = reading.name.descriptors[fault.descriptor].span if fault.descriptor is not None else None
+    return any(
+        view.descriptor and (set(view.other) & set(fault.atoms) or (span and view.span == span))
+        for pair in case.pairs
+        if pair.reading is reading
+        for view in pair.views
+    )
+
+
 def _printed(reading: Reading, index: int | None) -> tuple[str, str]:
     assert reading.name is not None
     if index is None:
@@ -63,6 +74,8 @@ def _printed(reading: Reading, index: int | None) -> tuple[str, str]:
 def locant_not_stereogenic(case: Case, params: Params) -> Iterator[Observation]:
     """A descriptor stands at a locant that carries no stereogenic unit."""
     for reading, fault in _faults(case, "locant-not-stereogenic"):
+        if _is_unit(case, reading, fault):
+            continue
         text, locant = _printed(reading, fault.descriptor)
         yield _observe(
             case, reading, fault, {"printed": text, "locant": locant, "detail": fault.detail}
@@ -93,9 +106,7 @@ def contradictory_descriptors(case: Case, params: Params) -> Iterator[Observatio
     for reading, fault in _faults(case, "contradictory-descriptors"):
         first, locant = _printed(reading, fault.descriptor)
         second, _ = _printed(reading, fault.other)
-        yield _observe(
-            case, reading, fault, {"first": first, "second": second, "locant": locant}
-        )
+        yield _observe(case, reading, fault, {"first": first, "second": second, "locant": locant})
 
 
 @check(needs=("name",), fields=("printed", "implied", "detail"))

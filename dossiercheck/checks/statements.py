@@ -54,9 +54,13 @@ def _kind(structure: Structure) -> str:
     return structure.kind
 
 
+def _size(part: tuple[int, ...]) -> int:
+    return len(part)
+
+
 def _per_component(structure: Structure, atoms: set[int]) -> set[int]:
     """Centres of the largest component: of a salt, the number for the parent is right too."""
     parts = structure.components()
-    if len(parts) < 2:  # noqa: PLR2004
+    if len(parts) < 2:
         return set()
-    return {len(atoms & set(max(parts, key=len)))}
+    return {len(atoms & set(max(parts, key=_size)))}

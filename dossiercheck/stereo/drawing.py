@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from rdkit import Chem
 from rdkit.Chem import rdDepictor
 
-from dossiercheck.model import DrawnAtom, DrawnBond, Drawing
+from dossiercheck.model import Drawing, DrawnAtom, DrawnBond
 from dossiercheck.stereo.structure import Structure
 
 _WEDGES = {Chem.BondDir.BEGINWEDGE: "wedge", Chem.BondDir.BEGINDASH: "hash"}

@@ -68,7 +68,7 @@ def parse_formula(text: str) -> Formula | None:
         digits, sign, bare, lead, after = found.groups()
         charge = int(digits or after or 1) * (1 if (sign or bare or lead) == "+" else -1)
         # "C2H3O2-" prints a charge of one; the digit belongs to the element before it.
-        if digits and not plain[found.start()] == "^":
+        if digits and plain[found.start()] != "^":
             charge = 1 if charge > 0 else -1
             plain = plain[: found.start()] + digits
         else:

@@ -105,9 +105,7 @@ def graph_of(structure: Structure) -> Graph:
         if shown:
             one, two = (HYDROGEN if atom in folded else atom for atom in shown[:2])
             bonds[frozenset((begin, end))] = Geometry((begin, end), (one, two), shown[2])
-    return Graph(
-        tuple(element), element, isotope, charge, hydrogens, near, centres, bonds
-    )
+    return Graph(tuple(element), element, isotope, charge, hydrogens, near, centres, bonds)
 
 
 def same_centre(one: Centre, two: Centre, mapping: dict[int, int]) -> bool | None:
@@ -117,9 +115,7 @@ def same_centre(one: Centre, two: Centre, mapping: dict[int, int]) -> bool | Non
     if set(carried) != set(two.order):
         return None
     places = [two.order.index(atom) for atom in carried]
-    odd = sum(
-        places[i] > places[j] for i in range(len(places)) for j in range(i + 1, len(places))
-    )
+    odd = sum(places[i] > places[j] for i in range(len(places)) for j in range(i + 1, len(places)))
     return (one.sign == two.sign) == (odd % 2 == 0)
 
 

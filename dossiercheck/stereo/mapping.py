@@ -10,6 +10,7 @@ from __future__ import annotations
 import sys
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
+from typing import Any
 
 from dossiercheck.stereo.graph import Graph, same_centre, same_geometry
 
@@ -61,9 +62,9 @@ def _refine(
     """Colours that tell apart what no mapping can exchange (Weisfeiler and Leman, 1968)."""
     graphs = (one, two)
     allowed = (set(atoms[0]), set(atoms[1]))
-    keys: list[dict[int, object]] = []
+    keys: list[dict[int, Any]] = []
     for graph, mine in zip(graphs, atoms, strict=True):
-        first: dict[int, object] = {}
+        first: dict[int, Any] = {}
         for a in mine:
             base = (graph.element[a], graph.isotope[a], len(graph.near[a]))
             first[a] = (*base, graph.charge[a], graph.hydrogens[a]) if exact else base
@@ -164,7 +165,7 @@ class _Search:
         if placed:
             around = self.two.near[self.mapping[placed[0][0]]]
             pool = [b for b in pool if b in around]
-        taken: set[tuple[int, int]] = set()
+        taken: set[tuple[int, int, int, int, float]] = set()
         for other in pool:
             if other in self.used:
                 continue
@@ -180,7 +181,7 @@ class _Search:
                 key = (*twin, *alike)
                 if key in taken:
                     continue
-                taken.add(key)  # type: ignore[arg-type]
+                taken.add(key)
             yield other
 
     def _extend(self, step: int, cost: Cost) -> None:

@@ -116,9 +116,7 @@ def from_smiles(
         raise Unreadable("the notation stands for more than one molecule")
     _sanitize(mol)
     Chem.SetBondStereoFromDirections(mol)
-    return Structure(
-        mol, text, groups=(*_groups(mol), *groups), locants=tuple(locants)
-    )
+    return Structure(mol, text, groups=(*_groups(mol), *groups), locants=tuple(locants))
 
 
 def from_inchi(text: str) -> Structure:
@@ -158,7 +156,7 @@ def _sentence(said: list[str]) -> str:
 
 
 def _refuse_generic(text: str) -> None:
-    if "M  RGP" in text or " R# " in text or "M  V30 " in text and " RGROUPS=" in text:
+    if "M  RGP" in text or " R# " in text or ("M  V30 " in text and " RGROUPS=" in text):
         raise Unreadable("an R group: the drawing stands for more than one molecule")
     if "M  STY" in text and any(kind in text for kind in (" SRU", " MON", " COP", " ANY")):
         raise Unreadable("a polymer bracket: the drawing stands for more than one molecule")

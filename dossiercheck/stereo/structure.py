@@ -16,6 +16,9 @@ from rdkit.Chem import rdCIPLabeler, rdqueries
 LABELLER_ITERATIONS = 200_000
 
 _NOTHING = 4294967295  # the library's "no atom here" among controlling atoms
+# Labels and marks must survive the way between processes.
+Chem.SetDefaultPickleProperties(Chem.PropertyPickleOptions.AllProps)
+
 _MARKED = rdqueries.HasChiralTagQueryAtom()
 _SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
 
@@ -78,7 +81,7 @@ class Structure:
     def possible(self) -> tuple[tuple[str, tuple[int, ...], tuple[int, int]], ...]:
         """Units the library holds possible: kind, atoms, and for a double bond one neighbour at
         each end. Some are stereogenic only if others are; `units` and `undefined` decide."""
-        found = []
+        found: list[tuple[str, tuple[int, ...], tuple[int, int]]] = []
         for info in Chem.FindPotentialStereo(self.mol, cleanIt=False, flagPossible=True):
             if info.type == Chem.StereoType.Atom_Tetrahedral:
                 found.append(("centre", (info.centeredOn,), (-1, -1)))
@@ -142,16 +145,19 @@ class Structure:
         return tuple(Unit(kind, atoms, "") for kind, atoms, _ in bare if atoms in earned)
 
     @cached_property
-    def smiles(self) -> str:
-        """Canonical isomeric SMILES; leaves the output order on the molecule for `order`."""
-        return str(Chem.MolToSmiles(self.mol))
+    def _canonical(self) -> tuple[str, tuple[int, ...]]:
+        smiles = str(Chem.MolToSmiles(self.mol))
+        return smiles, tuple(self.mol.GetPropsAsDict(True, True)["_smilesAtomOutputOrder"])
 
-    @cached_property
+    @property
+    def smiles(self) -> str:
+        """Canonical isomeric SMILES; marks that mean nothing are not in it."""
+        return self._canonical[0]
+
+    @property
     def order(self) -> tuple[int, ...]:
         """Atoms in the order in which `smiles` writes them."""
-        if not self.smiles:
-            return ()
-        return tuple(self.mol.GetPropsAsDict(True, True)["_smilesAtomOutputOrder"])
+        return self._canonical[1]
 
     @cached_property
     def flat(self) -> str:
@@ -165,7 +171,7 @@ class Structure:
 
     @property
     def kind(self) -> str:
-        """"achiral", "absolute", "relative" or "racemic": what the marks say of the whole.
+        """What the marks say of the whole: achiral, silent, absolute, relative, racemic.
 
         A molecule is only as absolute as its groups let it be; no specified centre is "silent"
         where there are undefined ones.
@@ -205,9 +211,7 @@ def geometry(mol: Chem.Mol, atoms: tuple[int, ...]) -> tuple[int, int, int] | No
     return near[0], near[1], sign
 
 
-def set_geometry(
-    mol: Chem.Mol, atoms: tuple[int, ...], near: tuple[int, int], sign: int
-) -> None:
+def set_geometry(mol: Chem.Mol, atoms: tuple[int, ...], near: tuple[int, int], sign: int) -> None:
     """Give a double bond its configuration: +1 cis, -1 trans, of the two neighbours named."""
     bond = mol.GetBondBetweenAtoms(*atoms)
     if bond.GetBeginAtomIdx() != atoms[0]:

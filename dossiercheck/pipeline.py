@@ -1,0 +1,117 @@
+"""The line itself: find, read, interpret, attribute, align, judge."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Iterator, Sequence
+from dataclasses import replace
+from pathlib import Path
+
+from dossiercheck import find
+from dossiercheck.language import gather
+from dossiercheck.limits import DEFAULT
+from dossiercheck.method import CAUTION, method
+from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, Unread
+from dossiercheck.readers import reader_for
+from dossiercheck.rulebook import Rulebook
+from dossiercheck.settings import Settings
+from dossiercheck.substances import attribute
+from dossiercheck.work import Judged, Workers
+
+Progress = Callable[[str, int, int], None]
+
+
+def review(
+    paths: Sequence[Path],
+    settings: Settings,
+    rulebook: Rulebook,
+    progress: Progress | None = None,
+) -> Review:
+    """Check the files and folders given. `progress` is told (stage, done, of)."""
+    found = list(find.find(paths))
+    sources = tuple(entry.source for entry in found if isinstance(entry, find.Found))
+    return _review(_read(found, progress), sources, settings, rulebook, progress)
+
+
+def review_items(items: Iterable[Item], settings: Settings, rulebook: Rulebook) -> Review:
+    """Check what was read already; for rule examples and tests."""
+    return _review(items, (), settings, rulebook, None)
+
+
+def _review(
+    items: Iterable[Item],
+    sources: tuple[Source, ...],
+    settings: Settings,
+    rulebook: Rulebook,
+    progress: Progress | None,
+) -> Review:
+    evidence, unread = _gather(items, settings)
+    with Workers(settings.jobs, rulebook, progress) as workers:
+        readings = workers.interpret(evidence)
+        unread += [reading.unread for reading in readings if reading.unread]
+        substances, unattributed = attribute(readings, settings.register)
+        unread += unattributed
+        judged = workers.judge(substances)
+    return Review(
+        sources=sources,
+        unread=(*unread, *(entry for one in judged for entry in one.unread)),
+        substances=tuple(one.entry for one in judged),
+        findings=tuple(_numbered(judged)),
+        rules=rulebook.entries(),
+        method=method(settings),
+        caution=CAUTION,
+    )
+
+
+def _read(found: Iterable[find.Found | Unread], progress: Progress | None) -> Iterator[Item]:
+    entries = list(found)
+    for number, entry in enumerate(entries, 1):
+        if progress:
+            progress("reading", number, len(entries))
+        if isinstance(entry, Unread):
+            yield entry
+            continue
+        yield from _read_one(entry.source, entry.path)
+
+
+def _read_one(source: Source, path: Path) -> Iterator[Item]:
+    place = Place(source.path)
+    if source.size > DEFAULT.source_bytes:
+        yield Unread(place, "too-large", f"{source.size} bytes, more than the budget")
+        return
+    try:
+        data = path.read_bytes()
+        reader = reader_for(source.path, data[:512])
+        if reader is None:
+            yield Unread(place, "no-reader", f"no reader for files of the kind “{source.format}”")
+            return
+        count = 0
+        for item in reader(source, data):
+            count += 1
+            yield item
+        if not count:
+            yield Unread(place, "empty", "nothing was found in the file")
+    except OSError as error:
+        yield Unread(place, "cannot-open", error.strerror or str(error))
+    except Exception as error:
+        detail = f"the reader stopped: {type(error).__name__}: {error}"
+        yield Unread(place, "reader-failed", detail.splitlines()[0])
+
+
+def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], list[Unread]]:
+    evidence: list[Evidence] = []
+    unread: list[Unread] = []
+    for entry in gather(items, settings.columns):
+        if isinstance(entry, Unread):
+            unread.append(entry)
+        else:
+            evidence.append(replace(entry, id=f"e{len(evidence) + 1}"))
+    return evidence, unread
+
+
+def _numbered(judged: Iterable[Judged]) -> Iterator[Finding]:
+    """Number the findings, per substance gravest first."""
+    number = 0
+    for one in judged:
+        for finding in sorted(one.findings, key=lambda f: (f.grade.gravity, f.rule)):
+            number += 1
+            yield replace(finding, id=f"f{number}")
