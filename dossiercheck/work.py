@@ -71,7 +71,7 @@ class Workers:
     ) -> None:
         if self._pool:
             if error is None:
-                self._pool.close()
+                self._pool.close()  # type: ignore[no-untyped-call]
             else:
                 self._pool.stop()  # type: ignore[no-untyped-call]
             self._pool.join()

@@ -54,13 +54,9 @@ def _kind(structure: Structure) -> str:
     return structure.kind
 
 
-def _size(part: tuple[int, ...]) -> int:
-    return len(part)
-
-
 def _per_component(structure: Structure, atoms: set[int]) -> set[int]:
     """Centres of the largest component: of a salt, the number for the parent is right too."""
-    parts = structure.components()
-    if len(parts) < 2:
+    parts = [set(part) for part in structure.components()]
+    if len(parts) == 1:
         return set()
-    return {len(atoms & set(max(parts, key=_size)))}
+    return {len(atoms & max(parts, key=len))}

@@ -21,6 +21,10 @@ SALT = "salt form"
 DIFFERENT = "different"
 
 
+# As chemists write them, where Hill order reads oddly.
+_USUAL = {"ClH": "HCl", "BrH": "HBr", "H3O4P": "H3PO4", "H2O4S": "H2SO4"}
+
+
 @dataclass(frozen=True, slots=True)
 class Constitution:
     """`verdict` is one of the constants above; `detail` says what differs, for a reader."""
@@ -115,4 +119,5 @@ def _components(one: Counter[str], two: Counter[str]) -> str:
 
 def _formula(smiles: str) -> str:
     mol = Chem.MolFromSmiles(smiles)
-    return smiles if mol is None else str(molecular_formula(Structure(mol, smiles)))
+    text = smiles if mol is None else str(molecular_formula(Structure(mol, smiles)))
+    return _USUAL.get(text, text)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections import Counter
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from fractions import Fraction
 
 from rdkit import Chem
@@ -14,16 +14,22 @@ from dossiercheck.stereo.structure import Structure
 from dossiercheck.stereo.weights import WEIGHTS
 
 _ELEMENT = re.compile(r"([A-Z][a-z]?)(\d*)")
-_SUBSCRIPTS = str.maketrans("₀₁₂₃₄₅₆₇₈₉₊₋·•∙⋅*−–", "0123456789+-.....--")
+_ATOMS = re.compile(r"(?:\[(\d+)([A-Z][a-z]?)\]|([A-Z][a-z]?))(\d*)")
+_SUBSCRIPTS = str.maketrans("₀₁₂₃₄₅₆₇₈₉₊₋·•∙⋅*,−–", "0123456789+-......--")
 _CHARGE = re.compile(r"(?:\^?\{?(\d*)([+-])\}?|\(([+-])\)|([+-])(\d+))$")
 
 
 @dataclass(frozen=True, slots=True)
 class Formula:
-    """Element counts and net charge. Isotopes are counted by mass number where given ("[2]H")."""
+    """Element counts and net charge.
+
+    Deuterium and tritium are counted as D and T; other isotopes as their element, `shift` being
+    the mass they add.
+    """
 
     counts: Mapping[str, int]
     charge: int = 0
+    shift: float = field(default=0.0, compare=False)
 
     def __str__(self) -> str:
         """Hill order (E. A. Hill, J. Am. Chem. Soc. 1900, 22, 478): C, H, then alphabetical."""
@@ -41,18 +47,20 @@ class Formula:
 
 def molecular_formula(structure: Structure) -> Formula:
     """The formula of all components together, hydrogens included; deuterium is D."""
+    body, charge = structure.hill, 0
+    found = re.search(r"([+-])(\d*)$", body)
+    if found:
+        charge = int(found.group(1) + (found.group(2) or "1"))
+        body = body[: found.start()]
     counts: Counter[str] = Counter()
-    charge = 0
-    for atom in structure.mol.GetAtoms():
-        symbol = atom.GetSymbol()
-        if symbol == "H" and atom.GetIsotope() in (2, 3):
-            symbol = "D" if atom.GetIsotope() == 2 else "T"
-        counts[symbol] += 1
-        hydrogens = atom.GetTotalNumHs()
-        if hydrogens:
-            counts["H"] += hydrogens
-        charge += atom.GetFormalCharge()
-    return Formula(dict(counts), charge)
+    shift = 0.0
+    for nucleons, labelled, plain, number in _ATOMS.findall(body):
+        element, amount = labelled or plain, int(number or 1)
+        counts[element] += amount
+        if nucleons:
+            one = Chem.GetPeriodicTable().GetMassForIsotope(element, int(nucleons))
+            shift += amount * (one - WEIGHTS[element][0])
+    return Formula(dict(counts), charge, shift)
 
 
 def parse_formula(text: str) -> Formula | None:
@@ -128,7 +136,8 @@ def _count(part: str) -> tuple[Fraction, Counter[str]] | None:
 
 def relative_mass(formula: Formula) -> float:
     """Relative molecular mass from the abridged standard atomic weights in `weights`."""
-    return sum(WEIGHTS[element][0] * number for element, number in formula.counts.items())
+    weights = (WEIGHTS[element][0] * number for element, number in formula.counts.items())
+    return sum(weights) + formula.shift
 
 
 def mass_spread(formula: Formula) -> float:

@@ -10,7 +10,7 @@ from dataclasses import dataclass, field
 from functools import cached_property
 
 from rdkit import Chem
-from rdkit.Chem import rdCIPLabeler, rdqueries
+from rdkit.Chem import rdCIPLabeler, rdMolDescriptors, rdqueries
 
 # Bounds the labeller: a polycyclic cage ran past 90 s without a limit.
 LABELLER_ITERATIONS = 200_000
@@ -164,6 +164,11 @@ class Structure:
         """Canonical SMILES without stereo: equal where the constitution is the same."""
         bare = Chem.RemoveHs(Chem.Mol(self.mol), sanitize=False)
         return str(Chem.MolToSmiles(bare, isomericSmiles=False))
+
+    @cached_property
+    def hill(self) -> str:
+        """The molecular formula as text, isotopes apart, the charge last."""
+        return str(rdMolDescriptors.CalcMolFormula(self.mol, True, True))
 
     def components(self) -> list[tuple[int, ...]]:
         """The atoms of each connected part."""
