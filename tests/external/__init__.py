@@ -1,0 +1,1 @@
+"""The program against published values, public records and general-purpose libraries."""
