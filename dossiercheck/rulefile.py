@@ -106,10 +106,10 @@ def read_folder(folder: Path) -> Iterator[Rule]:
     Raises RuleError, also for a folder without any rule.
     """
     if not folder.is_dir():
-        raise RuleError(folder, 1, "is not a folder of rules")
+        raise RuleError(folder, 0, "is not a folder of rules")
     files = sorted(folder.rglob("*.toml"))
     if not files:
-        raise RuleError(folder, 1, "holds no rule; a rule is a file <family>/<slug>.toml")
+        raise RuleError(folder, 0, "holds no rule; a rule is a file <family>/<slug>.toml")
     for path in files:
         yield read(path, folder)
 

@@ -19,10 +19,11 @@ _PARSER_LINE = re.compile(r"\s*\(at line (\d+), column \d+\)")
 
 
 class TomlError(Exception):
-    """A mistake in a TOML file, printed as `file:line: what is wrong`."""
+    """A mistake in a TOML file, printed as `file:line: what is wrong`; line 0 is no line, for a
+    file that cannot be opened or a folder."""
 
     def __init__(self, path: Path, line: int, problem: str) -> None:
-        super().__init__(f"{path}:{line}: {problem}")
+        super().__init__(f"{path}:{line}: {problem}" if line else f"{path}: {problem}")
         self.path = path
         self.line = line
         self.problem = problem
@@ -117,7 +118,7 @@ def load(path: Path, error: type[TomlError] = TomlError) -> TomlFile:
     try:
         text = path.read_text(encoding="utf-8-sig")
     except OSError as trouble:
-        raise error(path, 1, f"cannot be read: {trouble.strerror or trouble}") from trouble
+        raise error(path, 0, f"cannot be read: {trouble.strerror or trouble}") from trouble
     except UnicodeDecodeError as trouble:
         line = trouble.object[: trouble.start].count(b"\n") + 1
         raise error(path, line, "is not UTF-8 text") from trouble

@@ -1,0 +1,5 @@
+"""`python -m dossiercheck`."""
+
+from dossiercheck.cli import main
+
+main()
