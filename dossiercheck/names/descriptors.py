@@ -39,22 +39,28 @@ class PrintedDescriptor:
     item: tuple[int, int]
 
 
-_LOCANT = r"\d+[a-z]?'*[a-z]?'*|(?:alpha|beta|gamma|delta|epsilon|omega)'*|"
+_LOCANT = (
+    r"(?:\d+(?:[a-z]|[ABCD](?=[RSZ']))?'*|(?:alpha|beta|gamma|delta|epsilon|omega)'*)(?:[a-z]'*)?|"
+)
 _LETTERS = (
     r"RS|SR|R/S|S/R|R\*|S\*|Ra|Sa|Rp|Sp|Rm|Sm|aR|aS|pR|pS|R|S|E/Z|Z/E|EZ|ZE|E|Z|M|P|"
-    r"xi|Xi|r|s|e|z|alpha|beta|a|b|-?(?:cis|trans|exo|endo|syn|anti)"
+    r"xi|Xi|r|s|e|z|alpha|beta|-?(?:cis|trans|exo|endo|syn|anti)"
 )
-_ITEM = re.compile(rf"(?P<locant>{_LOCANT})(?P<letters>{_LETTERS})")
+_ITEM = re.compile(rf"(?P<locant>{_LOCANT})(?P<letters>{_LETTERS})(?=,|$)")
 _BRACKET = re.compile(r"[(\[{]([^()\[\]{}]{1,400})[)\]}]")
-_STEREO_WORD = re.compile(
-    r"\(?(?<![A-Za-z])(?P<word>cis|trans|rac|racemic|rel|meso|endo|exo|syn|anti|threo|erythro|"
-    r"all-trans|all-cis|DL|D,L|D/L|dl|d,l|D|L|d|l|R|E|Z|xi|ent|epi)\)?(?=-|\(|,(?:cis|trans)-)"
+_WORD = re.compile(
+    r"(?<![A-Za-z])(?P<word>all-trans|all-cis|cis|trans|racemic|rac|rel|meso|endo|exo|syn|anti|"
+    r"threo|erythro|ent|epi)(?=\)?-|\)?\(|,(?:cis|trans)-|\) | (?=[\d(]))",
+    re.IGNORECASE,
 )
-_SIGN = re.compile(r"\((?P<sign>\+/-|\+-|-/\+|\+|-|\+,-|RS)\)(?=-|[A-Za-z]|$)|^(?P<bare>\+/-)(?=[ -])")
+_LETTER = re.compile(r"(?<![A-Za-z])(?P<word>DL|D,L|D/L|dl|d,l|D|L|d|l|R|E|Z)(?=\)?-|\(|\) )")
+_SIGN = re.compile(r"\((?P<sign>\+/-|\+-|-/\+|\+|-|\+,-)\)(?=-|[A-Za-z]|$)|^(?P<bare>\+/-)(?=[ -])")
 _LOCANTED_WORD = re.compile(
-    r"(?<![A-Za-z0-9])(?P<locant>\d+[a-z]?'*)-?(?P<word>alpha|beta|xi|exo|endo|syn|anti|cis|trans)(?=[-,])"
+    r"(?<![A-Za-z0-9])(?P<locant>\d+[a-z]?'*)-?"
+    r"(?P<word>alpha|beta|xi|exo|endo|syn|anti|cis|trans)(?=[-,])",
+    re.IGNORECASE,
 )
-_ANOMER = re.compile(r"(?<![A-Za-z])(?P<word>alpha|beta)(?=-(?:D|L|DL)-)")
+_ANOMER = re.compile(r"(?<![A-Za-z])(?P<word>alpha|beta)(?=-(?:DL|D|L)-)", re.IGNORECASE)
 _RADIOISOTOPES = {"32": "P", "33": "P", "35": "S", "33S": "S", "34": "S", "36": "S"}
 _FAMILY = {
     **dict.fromkeys(("R", "S", "r", "s", "RS", "SR", "R/S", "S/R", "R*", "S*"), "centre"),
@@ -62,8 +68,22 @@ _FAMILY = {
     **dict.fromkeys(("E", "Z", "e", "z", "EZ", "ZE", "E/Z", "Z/E"), "double bond"),
     **dict.fromkeys(("M", "P", "Ra", "Sa", "Rp", "Sp", "Rm", "Sm", "aR", "aS", "pR", "pS"), "axis"),
     **dict.fromkeys(
-        "cis trans exo endo syn anti threo erythro meso all-trans all-cis a b".split(), "relative"
+        [
+            "cis",
+            "trans",
+            "exo",
+            "endo",
+            "syn",
+            "anti",
+            "threo",
+            "erythro",
+            "meso",
+            "all-trans",
+            "all-cis",
+        ],
+        "relative",
     ),
+    **dict.fromkeys(("+", "-"), "rotation"),
 }
 
 
@@ -89,7 +109,7 @@ def printed(cleaned: Cleaned) -> tuple[PrintedDescriptor, ...]:
             locant=locant,
             span=cleaned.span(at, end),
             bracket=bracket,
-            family=_FAMILY.get(letters, "rotation" if letters in ("+", "-") else "prefix"),
+            family=_FAMILY.get(letters, "prefix"),
             at=(at, end),
             item=(start, end),
         )
@@ -100,28 +120,19 @@ def printed(cleaned: Cleaned) -> tuple[PrintedDescriptor, ...]:
 def _items(cleaned: Cleaned, bracket: re.Match[str]) -> list[tuple[int, int, int, str, str]]:
     """The bracket's descriptors (item start, letters start, end, letters, locant), if that is
     all it holds and it stands where a descriptor can stand; otherwise none."""
-    text, found = cleaned.text, []
-    place, end = bracket.span(1)
-    while place < end:
-        item = _ITEM.match(text, place, end)
-        # "4aR" is locant 4a and R, "1Ra" is locant 1 and Ra: the longest letters win only
-        # where a comma or the bracket's end follows.
-        while item and item.end() < end and text[item.end()] not in ",":
-            item = _shorter(text, item, end)
+    found = []
+    place = bracket.start(1)
+    for part in bracket[1].split(","):
+        # Greedy from the left: "4aR" is locant 4a with R, "1Ra" cannot be but 1 with Ra.
+        item = _ITEM.fullmatch(part)
         if not item:
             return []
         letters = item["letters"].removeprefix("-")
-        at = item.end() - len(letters)
-        found.append((item.start(), at, item.end(), letters, item["locant"]))
-        place = item.end() + 1
-    return found if found and _can_stand(cleaned, bracket, found) else []
-
-
-def _shorter(text: str, item: re.Match[str], end: int) -> re.Match[str] | None:
-    """Another division of the same characters into locant and letters that reaches a comma."""
-    stop = text.find(",", item.start(), end)
-    whole = re.compile(rf"(?P<locant>{_LOCANT})(?P<letters>{_LETTERS})(?=,|$)")
-    return whole.match(text, item.start(), stop if stop >= 0 else end)
+        end = place + len(part)
+        locant = re.sub("[A-D]", lambda m: m[0].lower(), item["locant"])
+        found.append((place, end - len(letters), end, letters, locant))
+        place = end + 1
+    return found if _can_stand(cleaned, bracket, found) else []
 
 
 def _can_stand(
@@ -131,15 +142,10 @@ def _can_stand(
     before, after = text[: bracket.start()][-1:], text[bracket.end() :][:1]
     letters = [item[3] for item in items]
     locants = [item[4] for item in items]
-    if any(a in ("a", "b") and not x for a, x in zip(letters, locants, strict=True)):
-        return False
-    if text[bracket.start()] != "(" and not all(
-        a[0] in "RSEZ" and (x or a in "RSEZ") for a, x in zip(letters, locants, strict=True)
-    ):
-        return False  # [e] and [2,1-b] are fusion locants
+    if text[bracket.start()] != "(" and not all(locants):
+        return False  # [e] and [E] are fusion letters
     if len(items) == 1 and _RADIOISOTOPES.get(locants[0]) == letters[0]:
-        if cleaned.raised(items[0][0]) or after != "-":
-            return False
+        return after == "-" and not cleaned.raised(items[0][0]) and text[bracket.start()] == "("
     if not any(locants) and set(letters) <= {"S", "P", "R", "M", "s"}:
         # Sulfur and phosphorus in brackets follow a letter and end a word; a descriptor
         # starts one.
@@ -154,15 +160,22 @@ def _outside(text: str) -> Iterator[tuple[int, int, int, str, str]]:
         at = match.start("sign") if match["sign"] else match.start()
         yield match.start(), at, at + len(sign), sign, ""
     for match in _LOCANTED_WORD.finditer(text):
-        yield match.start(), match.start("word"), match.end(), match["word"], match["locant"]
+        word = match["word"].lower()
+        yield match.start(), match.start("word"), match.end(), word, match["locant"]
     for match in _ANOMER.finditer(text):
-        yield match.start(), match.start(), match.end(), match["word"], ""
-    for match in _STEREO_WORD.finditer(text):
-        word, start = match["word"], match.start("word")
+        yield match.start(), match.start(), match.end(), match["word"].lower(), ""
+    for match in _WORD.finditer(text):
+        word, start = match["word"].lower(), match.start()
+        before = text[:start]
+        if before and before[-1] not in "-([{ ,":
+            continue
+        if word in ("threo", "erythro") and re.search(r"(?:^|[^A-Za-z])(?:D|L|DL)-$", before):
+            continue  # D-erythro- is the configuration of a sugar
+        yield start, start, match.end(), word, ""
+    for match in _LETTER.finditer(text):
+        word, start = match["word"], match.start()
         if word in ("R", "E", "Z") and (start or text[match.end() : match.end() + 1] != "-"):
             continue
         if word in ("d", "l", "dl", "d,l") and start:
             continue  # a small d or l inside a name is a fusion letter
-        if word in ("ent", "epi") and start and text[start - 1] not in "-([{ ":
-            continue
-        yield start, start, match.end("word"), word, ""
+        yield start, start, match.end(), word, ""

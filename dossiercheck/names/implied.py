@@ -55,9 +55,7 @@ def faults(reading: NameReading, parser: NameParser) -> list[Fault]:
             before = [i for i in implying if descriptors[i].at > descriptor.at] or implying
             other = before[0] if before else None
             word = descriptors[other].text if other is not None else "allo"
-            detail = (
-                f"{descriptor.locant}{descriptor.text} is the opposite of what {word} implies"
-            )
+            detail = f"{descriptor.locant}{descriptor.text} is the opposite of what {word} implies"
             found.append(
                 Fault("overrides-implied", tied.descriptor, other, detail, tuple(tied.atoms))
             )

@@ -1,7 +1,7 @@
-"""The parser's extended SMILES, read as text: atoms, locants, marks of configuration.
+r"""The parser's extended SMILES, read as text: atoms, locants, marks of configuration.
 
 Only what is needed to compare two answers for almost the same name; no chemistry is perceived.
-OpenSMILES (2016), sections 3.8 and 3.9, for the meaning of `@`, `/` and `\\`.
+OpenSMILES (2016), sections 3.8 and 3.9, for the meaning of `@`, `/` and `\`.
 """
 
 from __future__ import annotations
@@ -17,7 +17,7 @@ _TOKEN = re.compile(
     r"|(?P<open>\()|(?P<close>\))|(?P<dot>\.)"
 )
 _CENTRE = re.compile(r"\[(\d*)([A-Z][a-z]?|[a-z])(@@?)(H\d?)?([+-]\d*)?\]")
-_ORGANIC = frozenset("B C N O P S F Cl Br I".split())
+_ORGANIC = frozenset(["B", "C", "N", "O", "P", "S", "F", "Cl", "Br", "I"])
 
 
 class NotationError(ValueError):
@@ -157,8 +157,8 @@ def read_extended(answer: str) -> NamedStructure:
             labels += ("",) * (count - len(labels))  # empty ones at the end are not written
             if len(labels) != count:
                 raise NotationError(f"{len(labels)} locants for {count} atoms in {answer}")
-        for part in re.findall(r"r|[&oa]\d*:\d+(?:,\d+)*", extension):
-            groups.append(_group(part, smiles))
+        parts = re.findall(r"r|[&oa]\d*:\d+(?:,\d+)*", extension)
+        groups.extend(_group(part, smiles) for part in parts)
     return NamedStructure(smiles, labels, tuple(groups))
 
 

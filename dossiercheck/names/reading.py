@@ -10,14 +10,13 @@ import re
 from collections.abc import Sequence
 from dataclasses import replace
 
-from dossiercheck.names import implied, spacing
+from dossiercheck.names import implied, leftout, misplaced, spacing
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
 from dossiercheck.names.notation import NotationError, read_extended
 from dossiercheck.names.parser import NameParser, Parse
 from dossiercheck.names.refused import (
     Rest,
-    faults_of,
     is_stereo_refusal,
     least_left_out,
     never_placed,
@@ -88,15 +87,14 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
     """The reading with its structure and faults, or with the refusal."""
     text, descriptors = reading.cleaned.text, reading.descriptors
     spaces = spacing.lost(text, rest.parse, parser)
-    if spaces and not rest.parse.smiles and not is_stereo_refusal(rest.parse):
+    if spaces and rest.parse.smiles is None:
         name = rewritten(text, descriptors, drop=rest.dropped, spaces=spaces)
-        again = parser.parse([name])[0]
-        if again.smiles or is_stereo_refusal(again):
-            rest = Rest(again, rest.dropped)
-            reading = replace(reading, respaced=spaces)
+        rest = Rest(parser.parse([name])[0], rest.dropped)
+        reading = replace(reading, respaced=spaces)
     first = rest
     if is_stereo_refusal(rest.parse):
         rest = least_left_out(text, descriptors, rest, parser, reading.respaced)
+    rest = misplaced.left_out(reading, rest, parser)
     messages = tuple(dict.fromkeys((*first.parse.messages, *rest.parse.messages)))
     reading = replace(reading, messages=messages)
     structure = _structure(rest.parse)
@@ -107,7 +105,6 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         everything = range(len(descriptors))
         bare = rewritten(text, descriptors, drop=everything, spaces=reading.respaced)
         skeleton = _structure(parser.parse([bare])[0])
-    gave_up = "Failed to assign CIP" in " ".join(first.parse.messages)
     reading = replace(
         reading,
         structure=structure,
@@ -115,16 +112,22 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         dropped=rest.dropped,
         stereo_kind=_stereo_kind(structure, descriptors),
     )
-    twice = _by_text(descriptors)
-    unplaced = rest.dropped - {fault.descriptor for fault in twice}
-    faults = [
+    gave_up = any("Failed to assign CIP" in message for message in first.parse.messages)
+    twice = _twice(descriptors)
+    known = {fault.descriptor for fault in twice}
+    found = [
         *twice,
-        *faults_of(descriptors, unplaced, skeleton, structure, rest.dropped if gave_up else ()),
+        *(
+            fault
+            for fault in leftout.faults(reading, rest.dropped if gave_up else (), parser)
+            if fault.descriptor not in known
+        ),
+        *_lower_case(reading),
         *_ignored(descriptors, messages),
         *spacing.faults(reading.cleaned, spaces),
+        *implied.faults(reading, parser),
     ]
-    reading = replace(reading, faults=tuple(faults))
-    return replace(reading, faults=(*faults, *implied.faults(reading, parser)))
+    return replace(reading, faults=tuple(found))
 
 
 def _structure(parse: Parse) -> NamedStructure | None:
@@ -146,13 +149,25 @@ def _refusal(cleaned: Cleaned, parse: Parse) -> Refusal:
     match = _NOT_PARSED.search(said)
     if match:
         part = match["rest"] or match["word"]
-        start = cleaned.text.rfind(part)
-        if start < 0:
-            start = cleaned.text.casefold().rfind(part.casefold())
-        span = cleaned.span(start, start + len(part)) if start >= 0 and part else None
-        return Refusal("not-interpretable", f"not interpretable from “{part}” on", span)
+        span = _find(cleaned, part)
+        shown = cleaned.original[slice(*span)] if span else part
+        return Refusal("not-interpretable", f"not interpretable from “{shown}” on", span)
     reason = "stereo-not-buildable" if is_stereo_refusal(parse) else "not-buildable"
     return Refusal(reason, f"the name parser says: {said}" if said else "no reason given")
+
+
+def _find(cleaned: Cleaned, part: str) -> tuple[int, int] | None:
+    """The place of a part that the parser quotes; it quotes without spaces, and without the
+    descriptors that it was not sent, so its beginning has to do."""
+    kept = [i for i, c in enumerate(cleaned.text) if c != " "]
+    squeezed = "".join(cleaned.text[i] for i in kept).casefold()
+    wanted = part.replace(" ", "").casefold()
+    for length in (len(wanted), 16, 8):
+        start = squeezed.rfind(wanted[:length]) if wanted else -1
+        if start >= 0:
+            end = start + len(wanted) if length == len(wanted) else len(squeezed)
+            return cleaned.span(kept[start], kept[end - 1] + 1)
+    return None
 
 
 def _stereo_kind(structure: NamedStructure, descriptors: Sequence[PrintedDescriptor]) -> str:
@@ -164,7 +179,7 @@ def _stereo_kind(structure: NamedStructure, descriptors: Sequence[PrintedDescrip
     return "absolute" if any(c in structure.smiles for c in "@/\\") else "silent"
 
 
-def _by_text(descriptors: Sequence[PrintedDescriptor]) -> list[Fault]:
+def _twice(descriptors: Sequence[PrintedDescriptor]) -> list[Fault]:
     """Two descriptors for one locant in one bracket."""
     found = []
     for index, descriptor in enumerate(descriptors):
@@ -184,6 +199,20 @@ def _by_text(descriptors: Sequence[PrintedDescriptor]) -> list[Fault]:
                 found.append(Fault(slug, index, other, detail))
                 break
     return found
+
+
+def _lower_case(reading: NameReading) -> list[Fault]:
+    """Small letters that the parser read as capitals, the unit being one that takes those."""
+    return [
+        Fault(
+            "lower-case-descriptor",
+            index,
+            None,
+            f"{d.locant}{d.text} was read as {d.locant}{d.text.upper()}",
+        )
+        for index, d in enumerate(reading.descriptors)
+        if d.text in ("r", "s", "e", "z") and index not in reading.dropped
+    ]
 
 
 def _ignored(descriptors: Sequence[PrintedDescriptor], messages: Sequence[str]) -> list[Fault]:

@@ -2,26 +2,45 @@
 
 The parser refuses the whole name when it cannot place one descriptor. Here descriptors are
 left out, as few as will do, until the rest is read; what was left out becomes a fault, with
-the atoms that carry its locant, so that others can judge it on the structure.
+the atoms that carry its locant (`leftout`), so that others can judge it on the structure.
 """
 
 from __future__ import annotations
 
 import re
-from collections.abc import Collection, Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 from dossiercheck.names.descriptors import PrintedDescriptor
-from dossiercheck.names.named import Fault, NamedStructure
-from dossiercheck.names.notation import read_notation
 from dossiercheck.names.parser import NameParser, Parse
 from dossiercheck.names.rewriting import rewritten
 
-_BLAMED = re.compile(r'<stereoChemistry[^>]*>(?P<item>[^<]*)</stereoChemistry>')
+_BLAMED = re.compile(r"<stereoChemistry[^>]*>(?P<item>[^<]*)</stereoChemistry>")
 # What the parser knows as stereodescriptors and never places (measured, version 2.9.0).
 _NEVER_PLACED = frozenset(
-    "M P Ra Sa Rp Sp Rm Sm aR aS pR pS exo endo syn anti threo erythro meso "
-    "all-trans all-cis".split()
+    [
+        "M",
+        "P",
+        "Ra",
+        "Sa",
+        "Rp",
+        "Sp",
+        "Rm",
+        "Sm",
+        "aR",
+        "aS",
+        "pR",
+        "pS",
+        "exo",
+        "endo",
+        "syn",
+        "anti",
+        "threo",
+        "erythro",
+        "meso",
+        "all-trans",
+        "all-cis",
+    ]
 )
 _MOST_TRIES = 60
 
@@ -76,14 +95,13 @@ def least_left_out(
     return _put_back(rest, ask)
 
 
-def _put_back(rest, ask):  # type: ignore[no-untyped-def]
-    """Descriptors that were left out on suspicion and that the read name bears after all."""
-    if not rest.parse.smiles or len(rest.dropped) < 2:
-        return rest
-    for index in sorted(rest.dropped):
-        again = ask([rest.dropped - {index}])[0]
-        if again.parse.smiles:
-            rest = again
+def _put_back(rest: Rest, ask: Callable[[Sequence[frozenset[int]]], list[Rest]]) -> Rest:
+    """Take in again what was left out on suspicion and what the name bears after all."""
+    if rest.parse.smiles and len(rest.dropped) > 1:
+        for index in sorted(rest.dropped):
+            again = ask([rest.dropped - {index}])[0]
+            if again.parse.smiles:
+                rest = again
     return rest
 
 
@@ -113,48 +131,10 @@ def _suspicion(
     )
     before = text[: descriptor.item[0] - 1] if descriptor.bracket >= 0 else text[: descriptor.at[0]]
     depth = sum(before.count(c) for c in "([{") - sum(before.count(c) for c in ")]}")
-    return (not _is_unjudged(descriptor), not twice, depth, index)
+    return (not is_unjudged(descriptor), not twice, depth, index)
 
 
-def _is_unjudged(descriptor: PrintedDescriptor) -> bool:
+def is_unjudged(descriptor: PrintedDescriptor) -> bool:
+    """Whether the parser does not know the descriptor by its meaning: its refusal says nothing
+    of whether the name is right."""
     return descriptor.text in ("r", "s", "cis", "trans") or descriptor.text in _NEVER_PLACED
-
-
-def faults_of(
-    descriptors: Sequence[PrintedDescriptor],
-    dropped: Collection[int],
-    skeleton: NamedStructure | None,
-    structure: NamedStructure | None,
-    unplaced: Collection[int] = (),
-) -> list[Fault]:
-    """One fault for each descriptor that was left out. `unplaced` are those on which the parser
-    gave up although the unit may exist."""
-    base = skeleton or structure
-    found = []
-    for index in sorted(dropped):
-        descriptor = descriptors[index]
-        printed = descriptor.locant + descriptor.text
-        atoms = candidates(base, descriptor) if base else ()
-        if _is_unjudged(descriptor) or index in unplaced:
-            detail = f"the name parser cannot place {printed}; the rest was read without it"
-            found.append(Fault("descriptor-stripped", index, None, detail, atoms))
-            continue
-        if descriptor.locant and base and not base.labelled(descriptor.locant):
-            detail = f"{printed}: no atom of the named structure has the locant {descriptor.locant}"
-            found.append(Fault("no-such-locant", index, None, detail))
-        else:
-            where = f"locant {descriptor.locant}" if descriptor.locant else "this place"
-            detail = f"{printed}: nothing at {where} that the descriptor could describe"
-            found.append(Fault("locant-not-stereogenic", index, None, detail, atoms))
-    return found
-
-
-def candidates(structure: NamedStructure, descriptor: PrintedDescriptor) -> tuple[int, ...]:
-    """The atoms a descriptor may speak of by its locant; for E and Z those of double bonds
-    when there are such."""
-    atoms = structure.labelled(descriptor.locant)
-    if descriptor.family == "double bond":
-        bonds = [b[:2] for b in read_notation(structure.smiles).bonds if b[2] == "="]
-        doubly = tuple(a for a in atoms if any(a in bond for bond in bonds))
-        return doubly or atoms
-    return atoms

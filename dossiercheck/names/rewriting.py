@@ -15,10 +15,7 @@ _OPPOSITES = (
     "cis trans,alpha beta,D L,d l"
 )
 OPPOSITE: Mapping[str, str] = {
-    a: b
-    for pair in _OPPOSITES.split(",")
-    for x, y in [pair.split()]
-    for a, b in ((x, y), (y, x))
+    a: b for pair in _OPPOSITES.split(",") for x, y in [pair.split()] for a, b in ((x, y), (y, x))
 }
 
 

@@ -1,7 +1,8 @@
-"""Ester and salt names from which a space was lost: `ethyl(2S)-2-hydroxypropanoate`.
+"""Ester names from which a space was lost: `ethyl(2S)-2-hydroxypropanoate`.
 
-The parser guesses that an ester is meant, and mostly rightly; but a name with a space and one
-without are names of different things (an alkyl on the acid's own chain), so it is a fault.
+The parser guesses that an ester is meant, and mostly rightly; but with the space the name is
+that of an ester and without it that of a substituted acid's anion (IUPAC 2013, P-65.6.3.2), so
+it is a fault of the name.
 """
 
 from __future__ import annotations
@@ -13,31 +14,36 @@ from dossiercheck.names.parser import NameParser, Parse
 from dossiercheck.names.typography import Cleaned
 
 _ALKYL = (
-    r"(?:(?:iso|neo|tert-?|sec-?|n-|cyclo|cyclo)?(?:meth|eth|prop|but|pent|hex|hept|oct|dec|dodec)yl"
-    r"|prop(?:an)?-?[12]-yl|butan-[12]-yl|benzyl|phenyl|allyl|vinyl|trityl|menthyl"
-    r"|2,2,2-tri(?:chloro|fluoro)ethyl)"
+    r"(?:(?:iso|neo|tert-?|sec-?|n-|cyclo|di|tri)?"
+    r"(?:meth|eth|prop|but|pent|hex|hept|oct|non|dec|undec|dodec)yl"
+    r"|prop(?:an)?-?[12]-yl|butan-[12]-yl|prop-2-en-1-yl|prop-2-yn-1-yl|2-methylpropyl|benzyl"
+    r"|phenyl|allyl|vinyl|trityl|menthyl|(?:di|tri)phenylmethyl|2,2,2-tri(?:chloro|fluoro)ethyl)"
 )
+# An alkyl at the name's beginning, then what starts another word and not a substituent's end:
+# a locant without its hyphen, or a bracket of descriptors, perhaps inside another bracket.
 _LOST = re.compile(
-    rf"^(?:di)?{_ALKYL}(?=[(\[{{]?\(?\d+[a-z]?'*(?:[RSEZ],|[RSEZ]\)|[-,])|[(\[{{]?\([RSEZ]\))", re.I
+    rf"^{_ALKYL}(?=[(\[{{]{{0,2}}\((?:\d+[a-z]?'*)?(?:RS|SR|[RSEZ])\*?[,)]|\d+(?:,\d+)*[a-z]?'*-"
+    rf"|[(\[{{](?![^()\[\]]*yl\)[a-z]*ate))",
+    re.IGNORECASE,
 )
-_ESTER = re.compile(r"(?:oate|[a-z]ate|ite)(?: [a-z]+)*$", re.IGNORECASE)
+_ESTER = re.compile(r"(?:[a-z]ate|[a-z]ite)(?: [a-z]+)*$", re.IGNORECASE)
 
 
 def lost(text: str, parse: Parse, parser: NameParser) -> tuple[int, ...]:
     """Where in the cleaned name a space is missing; empty where none is, or where the name may
-    as well be that of a substituted acid's salt."""
+    as well be that of an anion.
+
+    The parser is asked once more, with the space, only when the name looks like one.
+    """
     match = _LOST.match(text)
-    if not match or not _ESTER.search(text):
+    if not match or not _ESTER.search(text) or _words_before_ester(text) > 1:
         return ()
     place = match.end()
-    if _has_ester_word(text[:0]) or " " in _outside_brackets(text.partition("ate")[0]):
+    spaced = parser.parse([f"{text[:place]} {text[place:]}"])[0]
+    if spaced.smiles is None:
         return ()
-    if text[place] in "[{(" and not re.match(r"\(\d*[a-z]?'*[RSEZ][,)]", text[place:]):
-        # "methyl[4-(…)phenyl]carbamate" may be an N-methyl carbamate ion: it counts only where
-        # the parser, too, sees the ester and nothing else.
-        spaced = parser.parse([f"{text[:place]} {text[place:]}"])[0]
-        if not parse.smiles or not spaced.smiles or not _same_size(parse, spaced):
-            return ()
+    if parse.smiles is not None and _atoms(parse.smiles) != _atoms(spaced.smiles):
+        return ()
     return (place,)
 
 
@@ -48,27 +54,27 @@ def faults(cleaned: Cleaned, spaces: tuple[int, ...]) -> list[Fault]:
             "lost-space",
             None,
             None,
-            f"no space between “{cleaned.text[:place]}” and “{cleaned.text[place:place + 12]}…”",
+            f"no space between “{cleaned.text[:place]}” and “{cleaned.text[place : place + 12]}…”",
         )
         for place in spaces
     ]
 
 
-def _same_size(first: Parse, second: Parse) -> bool:
-    def letters(parse: Parse) -> list[str]:
-        return sorted(c for c in (parse.smiles or "").partition(" ")[0] if c.isalpha() and c != "H")
-
-    return letters(first) == letters(second)
-
-
-def _has_ester_word(text: str) -> bool:
-    return bool(text)
-
-
-def _outside_brackets(text: str) -> str:
-    depth, kept = 0, []
+def _words_before_ester(text: str) -> int:
+    """Words outside brackets up to the first that ends as an ester's acid does."""
+    depth, plain = 0, []
     for character in text:
         depth += (character in "([{") - (character in ")]}")
         if depth == 0:
-            kept.append(character)
-    return "".join(kept)
+            plain.append(character)
+    words = "".join(plain).split(" ")
+    for number, word in enumerate(words, 1):
+        if re.search(r"(?:ate|ite)$", word, re.IGNORECASE):
+            return number
+    return len(words)
+
+
+def _atoms(answer: str) -> list[str]:
+    """The heavy atoms and charges of an answer, to tell an ester from an anion."""
+    smiles = answer.partition(" ")[0]
+    return sorted(re.findall(r"Br|Cl|[BCNOPSFI]|[+-]|\b[cnops]\b", smiles))

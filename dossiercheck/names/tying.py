@@ -66,9 +66,7 @@ def changed(here: Notation, there: Notation) -> tuple[tuple[int, ...], ...] | No
     atom) for double bonds. None when the two do not number the same constitution alike."""
     if here.constitution != there.constitution:
         return None
-    centres = [
-        (i,) for i, (a, b) in enumerate(zip(here.marks, there.marks, strict=True)) if a != b
-    ]
+    centres = [(i,) for i, (a, b) in enumerate(zip(here.marks, there.marks, strict=True)) if a != b]
     first, second = here.double_bonds, there.double_bonds
     bonds = [key for key in sorted({*first, *second}) if first.get(key) != second.get(key)]
     return (*centres, *bonds)
@@ -110,9 +108,14 @@ def _carries(structure: NamedStructure, unit: tuple[int, ...], locant: str) -> b
 def _by_locant(reading: NameReading, index: int, here: Notation, why: str) -> Tie:
     """The tie by locant alone, where only one unit can be meant."""
     structure, descriptor = reading.structure, reading.descriptors[index]
-    if structure is None or not descriptor.locant or descriptor.family not in (
-        "centre",
-        "double bond",
+    if (
+        structure is None
+        or not descriptor.locant
+        or descriptor.family
+        not in (
+            "centre",
+            "double bond",
+        )
     ):
         return Tie(index, (), why)
     atoms = structure.labelled(descriptor.locant)

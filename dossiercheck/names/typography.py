@@ -50,16 +50,39 @@ _LETTERS = {
     "\uf0b1": "+/-",
     "\uf0ae": "->",
 }
-_GREEK = (
-    "alpha beta gamma delta epsilon zeta eta theta iota kappa lambda mu nu xi omicron pi rho "
-    "sigma tau upsilon phi chi psi omega"
-).split()
+_GREEK = [
+    "alpha",
+    "beta",
+    "gamma",
+    "delta",
+    "epsilon",
+    "zeta",
+    "eta",
+    "theta",
+    "iota",
+    "kappa",
+    "lambda",
+    "mu",
+    "nu",
+    "xi",
+    "omicron",
+    "pi",
+    "rho",
+    "sigma",
+    "tau",
+    "upsilon",
+    "phi",
+    "chi",
+    "psi",
+    "omega",
+]
 _SUPERSCRIPTS = "⁰¹²³⁴⁵⁶⁷⁸⁹"
 _SUPERSCRIPT = re.compile(rf"[{_SUPERSCRIPTS}]+(?:[,,⸴][{_SUPERSCRIPTS}]+)*")
 _MARKUP = re.compile(
     r"""(?P<curly>~\{(?P<curled>[^{}]*)\})              # 2~{R}
     | (?P<tilde>~(?P<raised>\d+(?:,\d+)*'*)~)           # N~2~, 0^2,7^ written 0~2,7~
-    | (?P<caret>(?<=[NOSP])(?P<digits>\d+)\^(?=-))      # N6^-
+    | (?P<caret>(?<=[NOSP])\^?(?P<digits>\d+'*)\^(?=-)) # N6^-, N^6^-
+    | (?P<bridge>(?<=\d)\^\((?P<bridged>\d+,\d+)\))    # 0^(2,7)
     | (?P<tag></?(?:i|em|b|strong|sup|sub|small|span|font|u)(?:\s[^<>]*)?>)
     | (?P<star>(?<![A-Za-z*])\*(?P<starred>[A-Za-z]+)\*(?![A-Za-z]))
     | (?P<line>(?<![A-Za-z0-9_])_(?P<lined>[A-Za-z]+)_(?![A-Za-z0-9_])
@@ -68,8 +91,14 @@ _MARKUP = re.compile(
     """,
     re.VERBOSE | re.IGNORECASE,
 )
-_PLAIN = re.compile(r"[A-Za-z0-9\-'()\[\]{},.+/:;?=!&%#@$|>]+(?:(?<!,) [A-Za-z0-9\-'()\[\]{},.+/:;]+)*")
-_DOTTED = re.compile(r"\.[a-z+]+[/-]*\.", re.IGNORECASE)
+_PLAIN = re.compile(
+    r"[A-Za-z0-9\-'()\[\]{},.+/:;?=!&%#@$|>]+(?:(?<!,) [A-Za-z0-9\-'()\[\]{},.+/:;]+)*"
+)
+# The parser reads greek locants in small letters only.
+_GREEK_LOCANT = re.compile(r"(?<![A-Za-z])(?:ALPHA|BETA|GAMMA|DELTA|OMEGA)(?='*[RS](?![a-z]))")
+# What naming programs put after a name of theirs; no part of it.
+_REMARK = re.compile(r" ?\((?:non-)?preferred(?: IUPAC)? name\)$", re.IGNORECASE)
+_UNUSUAL = re.compile(r"\.[a-z+]+[/-]*\.|preferred|ALPHA|BETA|GAMMA|DELTA|OMEGA", re.IGNORECASE)
 _BREAKS = "\r\n\v\f\x85\u2028\u2029"
 
 
@@ -104,10 +133,13 @@ def clean(text: str) -> Cleaned:
     `foreign` to report, except around the name and where a line break stands beside a hyphen,
     comma or bracket, where no name has a space.
     """
-    if _PLAIN.fullmatch(text) and not _DOTTED.search(text):
+    if _PLAIN.fullmatch(text) and not _UNUSUAL.search(text):
         return Cleaned(text, tuple(range(len(text))), text)
     pairs = list(_joined(_spaced(list(_characters(text)))))
-    return Cleaned("".join(c for c, _ in pairs), tuple(i for _, i in pairs), text)
+    plain = "".join(c for c, _ in pairs)
+    plain = _GREEK_LOCANT.sub(lambda match: match[0].lower(), plain)
+    plain = _REMARK.sub("", plain)
+    return Cleaned(plain, tuple(i for _, i in pairs[: len(plain)]), text)
 
 
 def foreign(cleaned: Cleaned) -> tuple[str, int] | None:
@@ -150,6 +182,8 @@ def _unmarked(text: str) -> dict[int, tuple[list[tuple[str, int]], int]]:
             "raised": "raised",
             "caret": "digits",
             "digits": "digits",
+            "bridge": "bridged",
+            "bridged": "bridged",
             "star": "starred",
             "starred": "starred",
             "lined": "lined",
@@ -163,7 +197,7 @@ def _unmarked(text: str) -> dict[int, tuple[list[tuple[str, int]], int]]:
         else:
             start = end = match.start()
         kept = [(text[i], i) for i in range(start, end)]
-        if inner == "raised" and match.start() and text[match.start() - 1].isdigit():
+        if inner in ("raised", "bridged") and match.start() and text[match.start() - 1].isdigit():
             kept = [("^{", match.start()), *kept, ("}", match.end() - 1)]
         found[match.start()] = (kept, match.end())
     for match in _SUPERSCRIPT.finditer(text):
@@ -177,7 +211,8 @@ def _unmarked(text: str) -> dict[int, tuple[list[tuple[str, int]], int]]:
 def _in_von_baeyer_ring(text: str, place: int) -> bool:
     """Whether the raised digits at `place` are bridgeheads (3.3.1.1³,⁷), where 13,7 would be
     another bridge."""
-    return bool(re.search(r"[\[(.]\d+(?:[.,]\d+[⁰¹²³⁴⁵⁶⁷⁸⁹,]*)*\.\d+$", text[max(0, place - 80) : place]))
+    before = text[max(0, place - 80) : place]
+    return bool(re.search(r"[\[(.]\d+(?:[.,]\d+[⁰¹²³⁴⁵⁶⁷⁸⁹,]*)*\.\d+$", before))
 
 
 def _digit(character: str) -> str:
