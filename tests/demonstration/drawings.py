@@ -42,7 +42,11 @@ def without_wedge(atom: int) -> Edit:
 
 def wavy(atom: int) -> Edit:
     """Draw the wedge at `atom` wavy (bond stereo 4 of the V2000 connection table)."""
-    return lambda block: _restyle(block, lambda begin, _, style: style if begin != atom else 4)
+
+    def style(begin: int, _: int, old: int) -> int:
+        return 4 if begin == atom and old else old
+
+    return lambda block: _restyle(block, style)
 
 
 def wedged(begin: int, end: int) -> Edit:

@@ -57,14 +57,19 @@ class Substance:
 
     @property
     def line(self) -> str:
-        """Canonical SMILES; without stereo marks for a racemic or relative structure, as
-        registries print them (common practice)."""
+        """Canonical SMILES; without stereo marks for a racemate (common practice), with the
+        groups of extended SMILES for a relative configuration."""
+        if self.stereo == "relative configuration":
+            whole = Chem.CanonicalizeStereoGroups(self.mol)
+            only = Chem.CXSmilesFields.CX_ENHANCEDSTEREO
+            return Chem.MolToCXSmiles(whole, Chem.SmilesWriteParams(), only)
         return Chem.MolToSmiles(self.mol, isomericSmiles=not self.mixed)
 
     @property
     def inchi(self) -> str:
-        """Standard InChI of `line`."""
-        return Chem.MolToInchi(Chem.MolFromSmiles(self.line))
+        """Standard InChI; without stereo for a racemic or relative structure, which it cannot say."""
+        line = Chem.MolToSmiles(self.mol, isomericSmiles=not self.mixed)
+        return Chem.MolToInchi(Chem.MolFromSmiles(line))
 
     @property
     def inchikey(self) -> str:
@@ -165,7 +170,9 @@ LEUCINE = Substance(
     other_name="(2S)-2-acetamido-4-methylpentanoic acid",
     centres=1,
 )
-PYRIDINOL = Substance("Reagent 2", "Oc1ccccn1", "pyridin-2-ol", "achiral")
+DIONE = Substance(
+    "Reagent 2", "CC1(C)CC(=O)CC(=O)C1", "5,5-dimethylcyclohexane-1,3-dione", "achiral"
+)
 TARTARIC = Substance(
     "Reagent 3",
     "OC(=O)[C@H](O)[C@@H](O)C(O)=O",
@@ -359,9 +366,17 @@ IMPURITIES = (
         "single enantiomer",
         centres=5,
     ),
+    # Drawn only: it has no systematic name in the dossier.
+    Substance(
+        "Impurity Q",
+        "CC[C@H](C)Oc1cccc(c1)[C@H]1[C@@H](CN(C1)C)C(=O)N[C@@H]1COC[C@H]1O",
+        "",
+        "single enantiomer",
+        centres=5,
+    ),
 )
 
-MATERIALS = (ALDEHYDE, AMINE, FURAN, LEUCINE, PYRIDINOL, TARTARIC)
+MATERIALS = (ALDEHYDE, AMINE, FURAN, LEUCINE, DIONE, TARTARIC)
 INTERMEDIATES = (
     RESOLVED,
     ENOATE,
