@@ -39,6 +39,25 @@ def cite(views: Sequence[UnitView]) -> str:
     )
 
 
+def steps(case: Case, pair: Pair, views: Sequence[UnitView]) -> tuple[str, ...]:
+    """How the comparison was made, in steps that can be followed on paper."""
+    assert pair.reading.structure is not None
+    laid = len(pair.alignment.mapping)
+    lines = [
+        f"The structure of the name was laid on the {called(case)}: {laid} atoms correspond"
+        f" (constitution: {pair.alignment.constitution.verdict})."
+    ]
+    for view in views:
+        where = "–".join(str(atom + 1) for atom in view.atoms)
+        spoken = f"atom {where} of the {called(case)} is {view.locant or 'unnumbered'} in the name"
+        lines.append(
+            f"{view.kind.capitalize()}: {spoken}; recomputed there"
+            f" {view.descriptor or 'no descriptor'}; the name has {view.shows or 'none'}"
+            f"{' as printed' if view.span else ' by its own structure'}."
+        )
+    return tuple(lines)
+
+
 def different(pair: Pair) -> list[UnitView]:
     """Units with opposite configuration."""
     return pair.having(State.DIFFERS)
@@ -68,6 +87,7 @@ def configuration_differs(case: Case, params: Params) -> Iterator[Observation]:
                 ),
                 unit_of(case, [view]),
                 view.locant,
+                steps(case, pair, [view]),
             )
 
 
@@ -85,6 +105,7 @@ def mirror_image(case: Case, params: Params) -> Iterator[Observation]:
                     of_units(case.reference, views, reference=True),
                 ),
                 unit_of(case, views),
+                derivation=steps(case, pair, views),
             )
 
 
