@@ -23,9 +23,8 @@ from rich.progress import Progress
 from dossiercheck import __version__, pipeline, report, rulebook, rulepage
 from dossiercheck import settings as settings_file
 from dossiercheck.model import Grade, Review
-from dossiercheck.report import text as report_text
 from dossiercheck.report.document import document
-from dossiercheck.report.jsonfile import render
+from dossiercheck.report.text import summary
 from dossiercheck.settings import FORMATS, Settings
 from dossiercheck.tomlfile import TomlError, suggestion
 
@@ -137,16 +136,18 @@ def _check(
     rules = rulebook.load(settings, folders)
     with _progress(quiet) as progress:
         review = pipeline.review(paths, settings, rules, progress=progress)
-    if out is not None:
-        files = tuple(name for name in formats if name != "text")
+    made = document(review)
+    files = tuple(name for name in formats if name != "text")
+    if files and out is None:
+        _print(report.format_of(files[0]).render(made))
+        return exit_status(review, settings)
+    if files and out is not None:
         try:
-            report.write(review, out, files)
+            report.write_document(made, out, files)
         except OSError as trouble:
             raise click.UsageError(f"cannot write to {out}: {trouble.strerror}") from trouble
-    if out is None and "json" in formats:
-        _print(render(document(review)))
-    elif not quiet:
-        _print(report_text.summary(review).encode())
+    if not quiet:
+        _print(summary(made).encode())
     return exit_status(review, settings)
 
 
@@ -230,8 +231,6 @@ def _paths_exist(paths: Sequence[Path]) -> None:
 def _output_possible(out: Path | None, formats: Sequence[str], paths: Sequence[Path]) -> None:
     """Refuse before the work what would fail after it."""
     if out is None:
-        if "html" in formats:
-            raise click.UsageError("the format 'html' is a file; say where with --out DIR")
         if len(formats) > 1:
             raise click.UsageError("only one format can go to the screen; add --out DIR")
         return
