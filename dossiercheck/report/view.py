@@ -1,0 +1,166 @@
+"""Arranges the document for the page: what is written out, what takes one row, which columns.
+
+Nothing is decided here about the dossier; the page and `findings.json` say the same.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Any
+
+from dossiercheck.report.document import Json
+
+FULL_FINDINGS = 400
+FULL_SUBSTANCES = 200
+_COLUMNS = 6
+_GROUPS = (
+    ("Structures, names and notations", ("drawing", "coordinates", "name", "notation")),
+    ("Properties", ("property",)),
+    ("Statements", ("statement",)),
+)
+
+
+@dataclass(frozen=True, slots=True)
+class Group:
+    """The findings of one substance; `anchor` leads to its concordance."""
+
+    label: str
+    anchor: str
+    gravest: str
+    findings: tuple[Json, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Block:
+    """Some columns of a concordance with their rows; the reference is always the first column.
+
+    Each row is (unit, cells), each cell a dict or None where an evidence says nothing of a unit.
+    """
+
+    columns: tuple[Json, ...]
+    rows: tuple[tuple[Json, tuple[Json | None, ...]], ...]
+    constitution: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Substance:
+    """A substance with its evidence in groups, its concordance in blocks, its findings' links."""
+
+    entry: Json
+    label: str
+    anchor: str
+    findings: tuple[Json, ...]
+    evidence: tuple[tuple[str, tuple[Json, ...]], ...]
+    blocks: tuple[Block, ...]
+    states: dict[str, int]
+
+
+@dataclass(frozen=True, slots=True)
+class Page:
+    """What the template writes, in its order."""
+
+    groups: tuple[Group, ...]
+    brief: tuple[Json, ...]
+    substances: tuple[Substance, ...]
+    rows: tuple[Substance, ...]
+    rules: dict[str, Json]
+    labels: dict[str, str]
+    anchors: dict[str, str]
+
+
+def page(
+    document: Json, full_findings: int = FULL_FINDINGS, full_substances: int = FULL_SUBSTANCES
+) -> Page:
+    """The document arranged, gravest first.
+
+    The first `full_findings` findings are written out, the others take one row each. Substances
+    without a finding are written out when they are `full_substances` or fewer.
+    """
+    findings = _by_id(document["findings"])
+    labels = {one["id"]: one["label"] or one["id"] for one in document["substances"]}
+    anchors = {one["id"]: f"s{at}" for at, one in enumerate(document["substances"], 1)}
+    groups: list[Group] = []
+    brief: list[Json] = []
+    number = 0
+    held: dict[str, tuple[Json, ...]] = {}
+    written: set[str] = set()
+    for item in document["by_substance"]:
+        every = []
+        for key in item["findings"]:
+            number += 1
+            every.append({**findings[key].pop(0), "number": number})
+        held[item["substance"]] = tuple(every)
+        room = max(0, full_findings - (number - len(every)))
+        if room:
+            written.add(item["substance"])
+            label = labels.get(item["substance"], item["substance"])
+            anchor = anchors.get(item["substance"], "")
+            groups.append(Group(label, anchor, item["gravest"], tuple(every[:room])))
+        brief += every[room:]
+    clean = sum(one["id"] not in held for one in document["substances"])
+    full: list[Substance] = []
+    rows: list[Substance] = []
+    for entry in document["substances"]:
+        key = entry["id"]
+        whole = key in written or (key not in held and clean <= full_substances)
+        view = _substance(entry, labels[key], anchors[key], held.get(key, ()), whole)
+        (full if whole else rows).append(view)
+    # Substances that a finding speaks of come before the others.
+    full.sort(key=lambda one: not one.findings)
+    rules = {one["id"]: one for one in document["rules"]}
+    return Page(tuple(groups), tuple(brief), tuple(full), tuple(rows), rules, labels, anchors)
+
+
+def _by_id(findings: list[Json]) -> dict[str, list[Json]]:
+    """Findings by id; a list each, so that two of one id are both shown."""
+    found: dict[str, list[Json]] = {}
+    for finding in findings:
+        found.setdefault(finding["id"], []).append(finding)
+    return found
+
+
+def _substance(
+    entry: Json, label: str, anchor: str, findings: tuple[Json, ...], whole: bool
+) -> Substance:
+    concordance = entry["concordance"]
+    states: dict[str, int] = {}
+    for row in concordance["rows"] if concordance else ():
+        for cell in row["cells"]:
+            states[cell["state"]] = states.get(cell["state"], 0) + 1
+    if not whole:
+        return Substance(entry, label, anchor, findings, (), (), states)
+    groups = []
+    for title, kinds in _GROUPS:
+        members = tuple(one for one in entry["evidence"] if one["kind"] in kinds)
+        if members:
+            groups.append((title, members))
+    blocks = _blocks(entry, concordance) if concordance else ()
+    return Substance(entry, label, anchor, findings, tuple(groups), blocks, states)
+
+
+def _blocks(entry: Json, concordance: Json) -> tuple[Block, ...]:
+    """The concordance in widths that a page holds."""
+    reference = concordance["reference"]
+    spoken = set(concordance["constitution"])
+    cells: list[dict[str, Json]] = []
+    for row in concordance["rows"]:
+        cells.append({cell["evidence"]: cell for cell in row["cells"]})
+        spoken |= cells[-1].keys()
+    known = {one["id"]: one for one in entry["evidence"]}
+    order = [one for one in known if one in spoken and one != reference]
+    order += sorted(spoken.difference(known, {reference}))
+    first: dict[str, Any] = {"id": reference, "role": "", "place": None}
+    found = []
+    for start in range(0, max(len(order), 1), _COLUMNS):
+        ids = [reference, *order[start : start + _COLUMNS]]
+        found.append(
+            Block(
+                tuple(known.get(one, {**first, "id": one}) for one in ids),
+                tuple(
+                    (row, tuple(held.get(one) for one in ids))
+                    for row, held in zip(concordance["rows"], cells, strict=True)
+                ),
+                tuple(concordance["constitution"].get(one, "") for one in ids),
+            )
+        )
+    return tuple(found)
