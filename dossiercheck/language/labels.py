@@ -1,0 +1,120 @@
+"""What a place calls a substance: "Impurity B", "DX-101", "Intermediate 3", an invented name.
+
+A label attributes firmly, so a wrong one is worse than none: "the enantiomer of DX-101" is not
+DX-101, and a heading "Impurities" hides the drug substance named above it.
+"""
+
+from __future__ import annotations
+
+import re
+
+from dossiercheck.language.roles import meaning_of
+from dossiercheck.language.words import NO_CODES, SALTS, SENTENCE_WORDS
+
+_CLASS = (
+    r"(?:[Ss]pecified |[Pp]rocess |[Pp]otential |[Rr]elated )?"
+    r"(?:[Ii]mpurity|[Ii]ntermediate|[Cc]ompound|[Dd]egrada(?:tion product|nt)|[Mm]etabolite"
+    r"|[Ss]tarting [Mm]aterial|[Rr]eagent|[Bb]y-?product|[Rr]elated [Ss]ubstance|[Ii]somer"
+    r"|[Dd]iastereomer|[Ee]pimer|[Pp]recursor|[Bb]uilding [Bb]lock|[Rr]eference [Ss]tandard)"
+)
+_MARK = r"(?:[A-Z]{1,2}\d{0,3}|\d{1,3}[A-Za-z]?|[IVX]{1,5}|RRT ?\d\.\d+)"
+CLASSED = rf"{_CLASS}[ \u00a0-]{_MARK}(?![\w])"
+CODE = rf"(?!(?:{NO_CODES})\b)[A-Z]{{2,6}}-?\d{{2,7}}[A-Za-z]?(?![\w-])"
+_INVENTED = rf"[A-Z][a-z]{{5,24}}(?: {SALTS}){{0,2}}"
+
+LABEL = re.compile(rf"(?:{CLASSED}|(?<![\w-]){CODE}(?: {SALTS})*)")
+_NAMED = re.compile(_INVENTED)
+_RELATION = re.compile(
+    r"\b(?:enantiomers?|antipodes?|diastereo(?:iso)?mers?|epimers?|isomers?|racemates?|salts?|esters?"
+    r"|analogues?|analogs?|derivatives?|metabolites?|precursors?|impurit(?:y|ies)|forms?|prodrug)"
+    r"\s+(?:of|to|from)\s+(?:the\s+)?$",
+    re.IGNORECASE,
+)
+_LEADS_ELSEWHERE = re.compile(
+    r"(?:^|[.;:]\s+)(?:from|with|using|by|after|for|in|on|of|unlike|like)\s+$", re.I
+)
+_MANY = re.compile(
+    r"\b(?:impurities|related substances|starting materials|intermediates|reagents|solvents"
+    r"|degradation products|metabolites|reference standards|reference materials|by-?products)\b",
+    re.IGNORECASE,
+)
+
+
+def in_heading(headings: tuple[str, ...]) -> str:
+    """The substance that the headings above a place name, "" where they name none for certain.
+
+    The innermost naming heading counts; a heading about many substances ends the search.
+    """
+    for heading in reversed(headings):
+        found = in_title(heading)
+        if found:
+            return found
+        if _MANY.search(heading):
+            return ""
+    return ""
+
+
+def in_title(title: str) -> str:
+    """The substance one heading or caption names: its label, or the whole title where it speaks
+    of a relation ("Enantiomer of DX-101")."""
+    bare = re.sub(r"^(?:\d+(?:\.(?:\d+|[SPAR]))*\.?|Table \d+[.:]?)\s+", "", title).strip()
+    found = list(LABEL.finditer(bare))
+    bracketed = re.search(r"\(([^()]+)\)$", bare)
+    if not found and bracketed and _NAMED.fullmatch(bracketed[1]):
+        return bracketed[1]
+    if len({match[0] for match in found}) != 1:
+        return ""
+    if _RELATION.search(bare[: found[0].start()]):
+        return bare
+    return found[0][0]
+
+
+def is_label(text: str) -> bool:
+    """True for a text that as a whole is a label of the kinds that need no heading to say so."""
+    return LABEL.fullmatch(text.strip()) is not None
+
+
+def beside(text: str, start: int, end: int) -> str:
+    """The label set directly beside a name at `start` to `end` of a sentence, "" where none is.
+
+    After the name in brackets ("…amine (Impurity B)"), or before it in apposition ("Impurity B,
+    …amine", "DX-101 (…amine)").
+    """
+    after = re.match(r"[\s,]*[(\[]\s*([^()\[\]]{2,60}?)\s*[)\]]", text[end:])
+    if after:
+        named = _as_label(after[1])
+        if named:
+            return named
+    before = text[max(0, start - 160) : start]
+    joint = re.search(r"(?:,\s+|:\s+|\s+[–—=-]\s+|\s+is\s+|\s*[(\[]\s*)$", before)
+    if not joint:
+        return ""
+    words = before[: joint.start()]
+    for pattern in (LABEL, _NAMED):
+        for match in pattern.finditer(words):
+            if match.end() != len(words) or re.search(r"[\w-]$", words[: match.start()]):
+                continue
+            lead = words[: match.start()]
+            if _RELATION.search(lead):
+                return ""
+            if joint[0].startswith(",") and _LEADS_ELSEWHERE.search(lead):
+                return ""
+            return match[0] if pattern is LABEL else _invented(match[0])
+    return ""
+
+
+def _as_label(text: str) -> str:
+    found = LABEL.fullmatch(text)
+    if found:
+        return found[0]
+    return _invented(text) if _NAMED.fullmatch(text) else ""
+
+
+def _invented(word: str) -> str:
+    """A capitalised word as a substance's name, unless it is one that begins sentences."""
+    first = word.split()[0].casefold()
+    if first in SENTENCE_WORDS or first.endswith(
+        ("ly", "ing", "tion", "ward", "wards", "ment", "ness")
+    ):
+        return ""
+    return "" if meaning_of(word) is not None else word

@@ -1,0 +1,61 @@
+"""Records of a structure file to evidence: the drawing, and the data fields beside it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+
+from dossiercheck.language.roles import (
+    Aside,
+    Meaning,
+    is_nothing,
+    is_own,
+    looks_systematic,
+    meaning_of,
+    says_itself,
+)
+from dossiercheck.model import Evidence, Field, Record, Role, Unread
+
+_ONE_LINE = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.FORMULA, Role.MASS, Role.REGISTRY)
+
+
+def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evidence | Unread]:
+    """The molfile, then the fields in their order; all of one group.
+
+    A label field names the substance; without one the record's title does.
+    """
+    group = f"{record.place.source}#record{record.place.record}"
+    fields = [(field, _meaning(field, columns)) for field in record.fields]
+    label = next((f.value.strip() for f, m in fields if m is Aside.LABEL), record.title)
+    if record.molblock:
+        yield Evidence("", Role.MOLFILE, record.molblock, record.place, group, label)
+    for field, meaning in fields:
+        value = field.value.strip()
+        if is_nothing(value) or not isinstance(meaning, Role | Aside):
+            continue
+        if meaning is Aside.COUNT:
+            # The number says nothing without its heading.
+            text = f"{field.name}: {value}"
+            yield Evidence("", Role.STEREO, text, field.place, group, label)
+        elif isinstance(meaning, Role):
+            if "\n" in value and (meaning is Role.NAME or meaning in _ONE_LINE):
+                detail = "The field has several lines; whether they are one value is not certain."
+                yield Unread(field.place, "several-lines", detail, value[:2000])
+            else:
+                text = field.value if meaning is Role.MOLFILE else value
+                yield Evidence("", meaning, text, field.place, group, label)
+
+
+def _meaning(field: Field, columns: Mapping[str, str]) -> Meaning | None:
+    meaning = meaning_of(field.name, columns)
+    if is_nothing(field.value):
+        return None
+    itself = says_itself(field.value)
+    if (
+        itself
+        and not is_own(field.name, columns)
+        and meaning in (None, Role.SMILES, Role.INCHI, Role.INCHIKEY)
+    ):
+        return itself
+    if meaning is Aside.NAME_OR_LABEL:
+        return Role.NAME if looks_systematic(field.value) else Aside.LABEL
+    return meaning

@@ -1,0 +1,305 @@
+"""Systematic names with stereodescriptors in running text.
+
+A candidate starts from a bracketed descriptor, `(2R,3S)`, `(E)`, `(2~{R})`, and grows over the
+characters that names are made of, brackets balanced. Over a space it grows only where names have
+one: esters, acids, salts, hydrates. Whether it *is* a name the name parser says; the shorter
+alternatives are there for it to try.
+"""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass
+
+from dossiercheck.language.words import ANIONS, CATIONS
+
+HYPHENS = "-‐‑‒–—−﹣－"
+PRIMES = "'′″‴`´’"
+_MARKS = r"[*\u2217]?"
+_LOCANT = rf"(?:\d+[a-z]?|[α-ωA-Z]|N\d*)(?:[{PRIMES}]|\^\d+|[⁰¹²³⁴-⁹])*"
+_LETTER = r"(?:RS|SR|[RSEZrsMP]|R[ap]|S[ap]|ξ)"
+_ONE = rf"(?:{_LOCANT}\s?)?(?:~\{{{_LETTER}\}}|{_LETTER}){_MARKS}"
+_GROUP = re.compile(rf"[(\[]\s?{_ONE}(?:\s?,\s?{_ONE})*\s?[)\]]")
+_OLD_STYLE = re.compile(r"\[\d*[a-z]?[RS]\*?-$")  # [R-(R*,S*)]-, as CAS index names were printed
+_JOINTS = "\u200b\u2060\ufeff\u00ad"
+_NAME_CHARACTER = re.compile(
+    rf"[A-Za-zα-ωΑ-Ω0-9,.:*+±~^()\[\]{{}}{re.escape(HYPHENS)}{re.escape(PRIMES)}"
+    rf"⁰¹²³⁴-⁹ⁿ₀-₉&λ{_JOINTS}]"
+)
+_SPACE = " \u00a0\u2009\u202f\u2002\u2003\t"
+_PAIRS = {")": "(", "]": "[", "}": "{"}
+
+_LOCANTS_BEFORE = re.compile(rf"(?:^|[{HYPHENS}\s(\[{{])[\d{PRIMES},]*\d[{PRIMES}]*,$")
+_LOCANTS_AFTER = re.compile(rf"\d+[a-z]?[{PRIMES}]*(?:,\s?\d+[{PRIMES}]*)*[{HYPHENS}]")
+# A comma after a word ends a name; inside one it stands between locants.
+_LIST_COMMA = re.compile(r"(?<!alpha)(?<!beta)(?<!gamma)(?<=[a-z]{3}),(?=[A-Za-z(\[])")
+
+# A stretch without a space that is longer than this is handed on whole, for the name parser to
+# refuse: no name is that long, and looking closer would take time.
+_LONGEST = 10_000
+
+# Words that take a space before or after them inside a name (IUPAC 2013, P-65.6 esters and salts,
+# P-65.1 acids; salt and solvate words are common practice).
+_AFTER = re.compile(rf"\d+[a-z]?[{PRIMES}]*(?:,\s?\d+[{PRIMES}]*)*[{HYPHENS}]")
+# A comma after a word ends a name; inside one it stands between locants.
+_LIST_COMMA = re.compile(r"(?<!alpha)(?<!beta)(?<!gamma)(?<=[a-z]{3}),(?=[A-Za-z(\[])")
+
+# A stretch without a space that is longer than this is handed on whole, for the name parser to
+# refuse: no name is that long, and looking closer would take time.
+_LONGEST = 10_000
+
+# Words that take a space before or after them inside a name (IUPAC 2013, P-65.6 esters and salts,
+# P-65.1 acids; salt and solvate words are common practice).
+_CATION = r"(?:(?:di|tri|tetra|mono|hemi|bis)?(?:sodium|potassium|lithium|calcium|magnesium|zinc|silver|ammonium|caesium|cesium))"
+_ANION = r"(?:(?:di|tri|mono|hemi|sesqui|bis|semi)?(?:hydrochloride|hydrobromide|hydroiodide|chloride|bromide|iodide|sulfate|sulphate|hydrogen|nitrate|phosphate|acetate|trifluoroacetate|formate|oxalate|malonate|succinate|maleate|fumarate|tartrate|malate|citrate|lactate|benzoate|mesylate|mesilate|methanesulfonate|besylate|besilate|tosylate|tosilate|hydrate|hydroxide|oxide|salt|solvate|ethanolate|methanolate))"
+_AFTER = re.compile(
+    rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
+    rf"|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
+    rf"|\(?\d+/\d+\)?|methyl|ethyl|propyl|isopropyl|butyl|benzyl)(?![A-Za-z])"
+)
+_ALKYL = re.compile(rf"(?:[^\s]*yl|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
+_ACYL_END = re.compile(r"(?:ate|ite|ide|amate)(?:\W|$)|carboxylate|oate", re.IGNORECASE)
+_ACID_END = re.compile(r"(?:ic|ous)$", re.IGNORECASE)
+_STEM_END = re.compile(
+    r"(?:ane|ene|yne|ol|one|al|ine|ide|ate|ate|ite|ic|yl|ium|ole|ose|oate|amide|amine|oxy|acid|urea"
+    r"|in|an|en|on|yne|idene|ylidene|thiol|nitrile|oyl|furan|oxide|am|id|en|phenol|thial|ether)$",
+    re.IGNORECASE,
+)
+_PROSE = re.compile(
+    r"(?:enantiomer|isomer|stereoisomer|diastereo(?:iso)?mer|epimer|antipode|form|configuration"
+    r"|configured|config|center|centre|stereocentre|stereocenter|alkene|olefin|double|geometry"
+    r"|series|absolute|selective|isomeric|enantioselective|derivative|analogue?|product|compound"
+    r"|impurity|material|substrate|precursor|catalyst|ligand|intermediate|racemate|alcohol|amine"
+    r"|acid|ester|ketone|aldehyde|amide|salt|base|drug|enriched|rich|isomerism|assignment"
+    r"|descriptor|value|values|type|only|and|or|to|rule|rules|atom|carbon|bond)s?",
+    re.IGNORECASE,
+)
+
+
+@dataclass(frozen=True, slots=True)
+class Candidate:
+    """A stretch of text that may be a name; `alternatives` are shorter ones, longest first."""
+
+    start: int
+    end: int
+    alternatives: tuple[tuple[int, int], ...] = ()
+
+
+def candidates(text: str) -> list[Candidate]:
+    """The candidates in a text, left to right, none overlapping another."""
+    found: list[Candidate] = []
+    for group in _GROUP.finditer(text):
+        if found and group.start() < found[-1].end:
+            continue
+        candidate = _grow(text, group.start(), group.end(), found[-1].end if found else 0)
+        if candidate:
+            found.append(candidate)
+    return found
+
+
+def _grow(text: str, start: int, end: int, floor: int) -> Candidate | None:
+    token = _token(text, start, end, floor)
+    if token is None:
+        return None
+    left, right = token
+    if right - left > _LONGEST:
+        return Candidate(left, right)
+    if not _is_chemical(text[left:right], text[start:end]):
+        return None
+    rights = _rightwards(text, left, right)
+    lefts = _leftwards(text, left, rights, floor)
+    spans = [(left_end, right_end) for left_end in lefts for right_end in rights]
+    spans = sorted(set(spans), key=lambda span: (span[0] - span[1], span[0]))
+    best, *others = spans
+    return Candidate(*best, tuple(others))
+
+
+def _token(text: str, start: int, end: int, floor: int) -> tuple[int, int] | None:
+    """The stretch without spaces around a descriptor group, brackets balanced; a space is taken
+    after a hyphen or after a comma between locants, where it can only be a slip."""
+    left = start
+    while left > floor and _NAME_CHARACTER.match(text[left - 1]):
+        left -= 1
+    for comma in _LIST_COMMA.finditer(text, left, start):
+        left = comma.end()
+    right = end
+    while right < len(text):
+        if text[right] == "," and _LIST_COMMA.match(text, right):
+            break
+        if _NAME_CHARACTER.match(text[right]) or _slipped_space(text, right):
+            right += 1
+        elif (
+            text[right] in _SPACE
+            and (group := _GROUP.match(text, right + 1))
+            and _open(text[left:right])
+        ):
+            right = group.end()
+        else:
+            break
+    if right - left > _LONGEST:
+        return left, right
+    return _trimmed(text, left, right, start, end)
+
+
+def _slipped_space(text: str, at: int) -> bool:
+    if text[at] not in _SPACE or at + 1 >= len(text):
+        return False
+    before, after = text[at - 1], text[at + 1]
+    if before in HYPHENS:
+        return bool(re.match(r"[\w(\[{]", after)) and text[at - 2] not in _SPACE
+    return (
+        before == ","
+        and after.isdigit()
+        and _LOCANTS_BEFORE.search(text[max(0, at - 20) : at]) is not None
+        and _LOCANTS_AFTER.match(text[at + 1 : at + 40]) is not None
+    )
+
+
+def _open(text: str) -> bool:
+    """True when brackets opened in the text are not all closed."""
+    return sum(c in "([{" for c in text) > sum(c in ")]}" for c in text)
+
+
+def _trimmed(text: str, left: int, right: int, start: int, end: int) -> tuple[int, int] | None:
+    """Cut sentence punctuation and brackets whose partner is outside, keeping the group."""
+    stack: list[tuple[str, int]] = []
+    for at in range(left, right):
+        char = text[at]
+        if char in "([{":
+            stack.append((char, at))
+        elif char in _PAIRS:
+            if stack and stack[-1][0] == _PAIRS[char]:
+                stack.pop()
+            elif at >= end:
+                right = at
+                break
+            else:
+                left, stack = at + 1, []
+    for _, at in reversed(stack):
+        if at >= end:
+            right = at
+        elif at <= start:
+            left = max(left, at + 1)
+            break
+    while right > end and text[right - 1] in ".,:;*&+" + PRIMES + HYPHENS + _JOINTS:
+        right -= 1
+    while left < start and text[left] in ".,:;*&" + PRIMES + HYPHENS + _JOINTS:
+        left += 1
+    if (
+        left < start
+        and text[left] == "("
+        and text[right - 1] == ")"
+        and _encloses(text[left:right])
+    ):
+        left, right = left + 1, right - 1
+    return (left, right) if left <= start and right > end else None
+
+
+def _encloses(text: str) -> bool:
+    depth = 0
+    for at, char in enumerate(text):
+        depth += (char in "([{") - (char in ")]}")
+        if depth == 0:
+            return at == len(text) - 1
+    return False
+
+
+def _is_chemical(token: str, group: str) -> bool:
+    """Prose is no name: "(S)-enantiomer", "(R)-form", "(S)-DX-101", "3(R)" and the like."""
+    at = token.find(group)
+    before, after = token[:at], token[at + len(group) :]
+    rest = before + after
+    if not re.search(r"[a-zα-ω]{3}|[A-Z]{6}", rest):
+        return False
+    has_locant = any(c.isdigit() or c in "αβγ" for c in group)
+    if _OLD_STYLE.search(before):
+        after = after.removeprefix("]")
+        before = ""
+    if not has_locant:
+        if after[:1] not in HYPHENS or (before and before[-1].isalnum()):
+            return False
+    elif not after or not re.match(rf"[{HYPHENS}A-Za-z0-9([{{]", after):
+        return False
+    words = [word for word in re.split(r"[^A-Za-z]+", rest) if len(word) > 2]
+    if not words:
+        return False
+    if all(_PROSE.fullmatch(word) for word in words):
+        return False
+    if _PROSE.fullmatch(words[-1]) and not re.search(r"\d", rest):
+        return False
+    return bool(re.search(r"\d", rest)) or any(_STEM_END.search(word) for word in words)
+
+
+def _rightwards(text: str, left: int, right: int) -> list[int]:
+    """Ends of the name, longest first: the token's own and those over a space."""
+    ends = [right]
+    while right < len(text) and text[right] in _SPACE:
+        at = right + 1
+        word = _AFTER.match(text, at)
+        core = text[left:right]
+        if word and _goes_with(core, word[0]):
+            right = word.end()
+        elif following := _second_part(text, at, core):
+            right = following
+        else:
+            break
+        ends.append(right)
+    return ends[::-1]
+
+
+def _goes_with(core: str, word: str) -> bool:
+    if word == "acid":
+        return bool(_ACID_END.search(core))
+    if word.endswith("yl"):
+        return bool(re.search(r"(?:acid|ate|oxide)$", core))
+    if word == "hydrogen":
+        return False
+    if core.endswith(("yl", "ylene")):
+        return bool(re.search(r"(?:ate|ide|ether|ketone|sulfoxide|sulfone|oxide)$", word))
+    return True
+
+
+def _second_part(text: str, at: int, core: str) -> int | None:
+    """End of a second word with its own descriptors or locants: the acid part of an ester, the
+    counter-ion of a salt, an acid in a name of two components."""
+    group = re.compile(rf"(?:[{re.escape('(+−-)±')}]+[{HYPHENS}])?{_GROUP.pattern}").match(text, at)
+    if group:
+        token = _token(text, at, group.end(), at)
+        if token is None or token[0] != at or not _is_chemical(text[slice(*token)], group[0]):
+            return None
+        word = text[slice(*token)]
+        tail = re.match(r"[ \u00a0]acid\b", text[token[1] :])
+        if core.endswith("yl"):
+            return token[1] if _ACYL_END.search(word[-12:]) else None
+        if _ACID_END.search(word) and tail:
+            return token[1] + tail.end()
+        return token[1] if _ACYL_END.search(word[-12:]) else None
+    plain = re.compile(rf"[\w,()\[\]{re.escape(HYPHENS + PRIMES)}]*[a-z]ate(?![\w-])").match(
+        text, at
+    )
+    if plain and (core.endswith("yl") or re.search(r"\d|^[NO]-", plain[0])):
+        return plain.end()
+    return None
+
+
+def _leftwards(text: str, left: int, rights: list[int], floor: int) -> list[int]:
+    """Starts of the name, leftmost first: words before an ester or a salt."""
+    starts = [left]
+    name = text[left : rights[0]]
+    if not (_ACYL_END.search(name) or re.search(r"acid$|oxide$|ether$|ketone$", name)):
+        return starts
+    while left > floor and text[left - 1] in _SPACE:
+        at = left - 1
+        begin = at
+        while begin > floor and _NAME_CHARACTER.match(text[begin - 1]):
+            begin -= 1
+        word = text[begin:at]
+        opened = re.match(r"[(\[{]+", word)
+        if opened and _open(word):
+            begin += len(opened[0])
+            word = text[begin:at]
+        if not word or not _ALKYL.fullmatch(word) or _open(word):
+            break
+        left = begin
+        starts.append(left)
+    return starts[::-1]
