@@ -2,21 +2,14 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Collection
 
-from dossiercheck.names.descriptors import PrintedDescriptor
+from dossiercheck.names.hetero import hetero_centres, speaks_of_hetero
 from dossiercheck.names.named import Fault, NamedStructure, NameReading
 from dossiercheck.names.notation import read_notation
 from dossiercheck.names.parser import NameParser
 from dossiercheck.names.refused import is_unjudged
 from dossiercheck.names.tying import ties
-
-# The last word of a group whose own centre is not carbon; its atom has no locant to print.
-_HETERO_GROUP = re.compile(
-    r"(?:phosph|sulfin|sulfon[io]|sulfox|sulfil|seleni|arso|sila|silyl|germ)[a-z]*$", re.IGNORECASE
-)
-_HETERO_ATOM = re.compile(r"\[?\d*(?:P|S|As|Se|Si|Ge)(?![a-z])")
 
 
 def faults(reading: NameReading, unplaced: Collection[int], parser: NameParser) -> list[Fault]:
@@ -30,7 +23,8 @@ def faults(reading: NameReading, unplaced: Collection[int], parser: NameParser) 
         descriptor = reading.descriptors[index]
         printed = descriptor.locant + descriptor.text
         atoms = _nearest(reading, index, candidates(reading, index, base), parser)
-        if is_unjudged(descriptor) or index in unplaced:
+        hetero = atoms and speaks_of_hetero(reading.cleaned.text, descriptor)
+        if is_unjudged(descriptor) or hetero or index in unplaced:
             detail = f"the name parser cannot place {printed}; the rest was read without it"
             found.append(Fault("descriptor-stripped", index, None, detail, atoms))
         elif descriptor.locant and not base.labelled(descriptor.locant):
@@ -54,36 +48,11 @@ def candidates(reading: NameReading, index: int, structure: NamedStructure) -> t
         bonds = [bond[:2] for bond in notation.bonds if bond[2] == "="]
         doubly = tuple(a for a in atoms if any(a in bond for bond in bonds))
         return doubly or atoms
-    if not descriptor.locant and speaks_of_hetero(reading.cleaned.text, descriptor):
+    if speaks_of_hetero(reading.cleaned.text, descriptor):
         stated = read_notation(reading.structure.smiles).marks if reading.structure else ()
-        return tuple(
-            a
-            for a, token in enumerate(notation.atoms)
-            if _HETERO_ATOM.match(token)
-            and len(notation.neighbours[a]) > 2
-            and not (len(stated) == len(notation.atoms) and stated[a])
-        )
+        alike = len(stated) == len(notation.atoms)
+        return tuple(a for a in hetero_centres(notation) if not (alike and stated[a]))
     return atoms
-
-
-def speaks_of_hetero(text: str, descriptor: PrintedDescriptor) -> bool:
-    """Whether the group that a bracket without a locant stands before ends in phosphoryl,
-    sulfinyl or the like, so that phosphorus or sulfur is meant."""
-    if descriptor.bracket < 0:
-        return False
-    depth, kept = 0, []
-    for character in text[descriptor.item[1] + 1 :]:
-        depth += (character in "([{") - (character in ")]}")
-        if depth < 0 or (depth == 0 and character == " "):
-            break
-        if depth == 0:
-            kept.append(character)
-    return bool(_HETERO_GROUP.search("".join(kept).rstrip(")]}")))
-
-
-def is_hetero(structure: NamedStructure, atom: int) -> bool:
-    """Whether an atom is phosphorus, sulfur or the like."""
-    return bool(_HETERO_ATOM.match(read_notation(structure.smiles).atoms[atom]))
 
 
 def _nearest(

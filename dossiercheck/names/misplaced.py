@@ -1,17 +1,18 @@
 """Descriptors of phosphorus or sulfur that the parser silently put on a carbon atom.
 
 `[(R)-(…)(hydroxy)phosphoryl]`: phosphorus with OH and =O is no centre to the parser, and it
-gives the letter to the next centre that it finds further inside the bracket, even against a
-D or L printed there. Such a descriptor is found by turning it round, and left out.
+gives the letter to the next centre that it finds further inside, even against a D or L printed
+there. Such a descriptor is found by turning it round. It is left out where a phosphorus or
+sulfur atom could bear it as well.
 """
 
 from __future__ import annotations
 
 from dataclasses import replace
 
-from dossiercheck.names.leftout import is_hetero, speaks_of_hetero
+from dossiercheck.names.hetero import hetero_centres, speaks_of_hetero
 from dossiercheck.names.named import NameReading
-from dossiercheck.names.notation import NotationError, read_extended
+from dossiercheck.names.notation import NotationError, read_extended, read_notation
 from dossiercheck.names.parser import NameParser
 from dossiercheck.names.refused import Rest, is_stereo_refusal, least_left_out
 from dossiercheck.names.rewriting import rewritten
@@ -24,10 +25,7 @@ def left_out(reading: NameReading, rest: Rest, parser: NameParser) -> Rest:
     suspects = [
         i
         for i, d in enumerate(descriptors)
-        if not d.locant
-        and d.text in ("R", "S")
-        and i not in rest.dropped
-        and speaks_of_hetero(text, d)
+        if d.text in ("R", "S") and i not in rest.dropped and speaks_of_hetero(text, d)
     ]
     if not suspects or rest.parse.smiles is None:
         return rest
@@ -35,11 +33,15 @@ def left_out(reading: NameReading, rest: Rest, parser: NameParser) -> Rest:
         structure = read_extended(rest.parse.smiles)
     except NotationError:
         return rest
+    notation = read_notation(structure.smiles)
+    centres = hetero_centres(notation)
+    if all(notation.marks[atom] for atom in centres):
+        return rest
     so_far = replace(reading, structure=structure, dropped=rest.dropped)
     wrong = {
         tied.descriptor
         for tied in ties(so_far, suspects, parser)
-        if tied.atoms and not any(is_hetero(structure, atom) for atom in tied.atoms)
+        if tied.atoms and tied.atoms[0] not in centres
     }
     if not wrong:
         return rest

@@ -16,6 +16,7 @@ _TOKEN = re.compile(
     r"(?P<atom>\[[^\]]*\]|Br|Cl|[BCNOPSFIbcnops*])|(?P<bond>[-=#$:/\\])|(?P<ring>%\d\d|\d)"
     r"|(?P<open>\()|(?P<close>\))|(?P<dot>\.)"
 )
+_ATOM = re.compile(r"\[[^\]]*\]|Br|Cl|[BCNOPSFIbcnops*]")
 _CENTRE = re.compile(r"\[(\d*)([A-Z][a-z]?|[a-z])(@@?)(H\d?)?([+-]\d*)?\]")
 _ORGANIC = frozenset(["B", "C", "N", "O", "P", "S", "F", "Cl", "Br", "I"])
 
@@ -144,7 +145,7 @@ def read_notation(smiles: str) -> Notation:
 def read_extended(answer: str) -> NamedStructure:
     """The parser's `SMILES |$_AV:locants$,groups|`. NotationError when it does not add up."""
     smiles, _, extension = answer.partition(" |")
-    count = len(read_notation(smiles).atoms)
+    count = len(_ATOM.findall(smiles))
     labels: tuple[str, ...] = ("",) * count
     groups: list[StereoGroup] = []
     if extension:

@@ -12,6 +12,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 from dossiercheck.names.descriptors import PrintedDescriptor
+from dossiercheck.names.hetero import speaks_of_hetero
 from dossiercheck.names.parser import NameParser, Parse
 from dossiercheck.names.rewriting import rewritten
 
@@ -80,6 +81,12 @@ def least_left_out(
         names = [rewritten(text, descriptors, drop=drop, spaces=spaces) for drop in drops]
         return [Rest(p, d) for p, d in zip(parser.parse(names), drops, strict=True)]
 
+    astray = frozenset(i for i, d in enumerate(descriptors) if speaks_of_hetero(text, d))
+    if is_stereo_refusal(rest.parse) and astray - rest.dropped:
+        # A letter meant for phosphorus may have taken the place of a sound one further inside,
+        # which the parser then blames.
+        without = ask([rest.dropped | astray])[0]
+        rest = without if without.parse.smiles else rest
     while is_stereo_refusal(rest.parse) and len(rest.dropped) < len(descriptors):
         left = [i for i in range(len(descriptors)) if i not in rest.dropped]
         blamed = [i for i in left if _is_blamed(descriptors[i], rest.parse)] or left
