@@ -11,12 +11,12 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
-from dossiercheck.language.words import ANIONS, CATIONS
+from dossiercheck.language.words import ANIONS, CATIONS, PROSE_WORDS
 
 HYPHENS = "-‐‑‒–—−﹣－"
 PRIMES = "'′″‴`´’"
 _MARKS = r"[*\u2217]?"
-_LOCANT = rf"(?:\d+[a-z]?|[α-ωA-Z]|N\d*)(?:[{PRIMES}]|\^\d+|[⁰¹²³⁴-⁹])*"
+_LOCANT = rf"(?:\d+[a-z]?|[α-ω]|N\d*)(?:[{PRIMES}]|\^\d+|[⁰¹²³⁴-⁹])*"
 _LETTER = r"(?:RS|SR|[RSEZrsMP]|R[ap]|S[ap]|ξ)"
 _ONE = rf"(?:{_LOCANT}\s?)?(?:~\{{{_LETTER}\}}|{_LETTER}){_MARKS}"
 _GROUP = re.compile(rf"[(\[]\s?{_ONE}(?:\s?,\s?{_ONE})*\s?[)\]]")
@@ -32,7 +32,9 @@ _PAIRS = {")": "(", "]": "[", "}": "{"}
 _LOCANTS_BEFORE = re.compile(rf"(?:^|[{HYPHENS}\s(\[{{])[\d{PRIMES},]*\d[{PRIMES}]*,$")
 _LOCANTS_AFTER = re.compile(rf"\d+[a-z]?[{PRIMES}]*(?:,\s?\d+[{PRIMES}]*)*[{HYPHENS}]")
 # A comma after a word ends a name; inside one it stands between locants.
-_LIST_COMMA = re.compile(r"(?<!alpha)(?<!beta)(?<!gamma)(?<=[a-z]{3}),(?=[A-Za-z(\[])")
+_LIST_COMMA = re.compile(
+    r"(?<!alpha)(?<!beta)(?<!gamma)(?:(?<=[a-z]{2}),(?=[(\[])|(?<=[a-z]{3}),(?=[A-Za-z]))"
+)
 
 # A stretch without a space that is longer than this is handed on whole, for the name parser to
 # refuse: no name is that long, and looking closer would take time.
@@ -40,18 +42,6 @@ _LONGEST = 10_000
 
 # Words that take a space before or after them inside a name (IUPAC 2013, P-65.6 esters and salts,
 # P-65.1 acids; salt and solvate words are common practice).
-_AFTER = re.compile(rf"\d+[a-z]?[{PRIMES}]*(?:,\s?\d+[{PRIMES}]*)*[{HYPHENS}]")
-# A comma after a word ends a name; inside one it stands between locants.
-_LIST_COMMA = re.compile(r"(?<!alpha)(?<!beta)(?<!gamma)(?<=[a-z]{3}),(?=[A-Za-z(\[])")
-
-# A stretch without a space that is longer than this is handed on whole, for the name parser to
-# refuse: no name is that long, and looking closer would take time.
-_LONGEST = 10_000
-
-# Words that take a space before or after them inside a name (IUPAC 2013, P-65.6 esters and salts,
-# P-65.1 acids; salt and solvate words are common practice).
-_CATION = r"(?:(?:di|tri|tetra|mono|hemi|bis)?(?:sodium|potassium|lithium|calcium|magnesium|zinc|silver|ammonium|caesium|cesium))"
-_ANION = r"(?:(?:di|tri|mono|hemi|sesqui|bis|semi)?(?:hydrochloride|hydrobromide|hydroiodide|chloride|bromide|iodide|sulfate|sulphate|hydrogen|nitrate|phosphate|acetate|trifluoroacetate|formate|oxalate|malonate|succinate|maleate|fumarate|tartrate|malate|citrate|lactate|benzoate|mesylate|mesilate|methanesulfonate|besylate|besilate|tosylate|tosilate|hydrate|hydroxide|oxide|salt|solvate|ethanolate|methanolate))"
 _AFTER = re.compile(
     rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
     rf"|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
@@ -60,20 +50,13 @@ _AFTER = re.compile(
 _ALKYL = re.compile(rf"(?:[^\s]*yl|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
 _ACYL_END = re.compile(r"(?:ate|ite|ide|amate)(?:\W|$)|carboxylate|oate", re.IGNORECASE)
 _ACID_END = re.compile(r"(?:ic|ous)$", re.IGNORECASE)
+# Endings of chemical words; asked for only where a name has no locant beside its descriptor.
 _STEM_END = re.compile(
-    r"(?:ane|ene|yne|ol|one|al|ine|ide|ate|ate|ite|ic|yl|ium|ole|ose|oate|amide|amine|oxy|acid|urea"
-    r"|in|an|en|on|yne|idene|ylidene|thiol|nitrile|oyl|furan|oxide|am|id|en|phenol|thial|ether)$",
+    r"(?:ane|ene|yne|ol|one|ine|ide|[a-z]{3}ate|ite|yl|ium|ole|ose|oyl|oxy|urea|in|am|fen|furan"
+    r"|idene|thiol|nitrile|aldehyde|phenol)$",
     re.IGNORECASE,
 )
-_PROSE = re.compile(
-    r"(?:enantiomer|isomer|stereoisomer|diastereo(?:iso)?mer|epimer|antipode|form|configuration"
-    r"|configured|config|center|centre|stereocentre|stereocenter|alkene|olefin|double|geometry"
-    r"|series|absolute|selective|isomeric|enantioselective|derivative|analogue?|product|compound"
-    r"|impurity|material|substrate|precursor|catalyst|ligand|intermediate|racemate|alcohol|amine"
-    r"|acid|ester|ketone|aldehyde|amide|salt|base|drug|enriched|rich|isomerism|assignment"
-    r"|descriptor|value|values|type|only|and|or|to|rule|rules|atom|carbon|bond)s?",
-    re.IGNORECASE,
-)
+_PROSE = re.compile(PROSE_WORDS, re.IGNORECASE)
 
 
 @dataclass(frozen=True, slots=True)
@@ -104,7 +87,8 @@ def _grow(text: str, start: int, end: int, floor: int) -> Candidate | None:
     left, right = token
     if right - left > _LONGEST:
         return Candidate(left, right)
-    if not _is_chemical(text[left:right], text[start:end]):
+    acid = re.match(r"[ \u00a0]acid\b", text[right : right + 6]) is not None
+    if not _is_chemical(text[left:right], text[start:end], acid):
         return None
     rights = _rightwards(text, left, right)
     lefts = _leftwards(text, left, rights, floor)
@@ -204,8 +188,11 @@ def _encloses(text: str) -> bool:
     return False
 
 
-def _is_chemical(token: str, group: str) -> bool:
-    """Prose is no name: "(S)-enantiomer", "(R)-form", "(S)-DX-101", "3(R)" and the like."""
+def _is_chemical(token: str, group: str, acid: bool) -> bool:
+    """Prose is no name: "(S)-enantiomer", "(R)-form", "(S)-DX-101", "3(R)" and the like.
+
+    `acid`: whether that word follows, which makes "(S)-lactic" chemical and "(S)-acidic" not.
+    """
     at = token.find(group)
     before, after = token[:at], token[at + len(group) :]
     rest = before + after
@@ -221,13 +208,14 @@ def _is_chemical(token: str, group: str) -> bool:
     elif not after or not re.match(rf"[{HYPHENS}A-Za-z0-9([{{]", after):
         return False
     words = [word for word in re.split(r"[^A-Za-z]+", rest) if len(word) > 2]
-    if not words:
+    if not words or all(_PROSE.fullmatch(word) for word in words):
         return False
-    if all(_PROSE.fullmatch(word) for word in words):
+    numbered = re.search(r"\d", rest) is not None
+    if numbered:
+        return True
+    if _PROSE.fullmatch(words[-1]):
         return False
-    if _PROSE.fullmatch(words[-1]) and not re.search(r"\d", rest):
-        return False
-    return bool(re.search(r"\d", rest)) or any(_STEM_END.search(word) for word in words)
+    return any(_STEM_END.search(w) for w in words) or (acid and words[-1].endswith("ic"))
 
 
 def _rightwards(text: str, left: int, right: int) -> list[int]:
@@ -265,10 +253,12 @@ def _second_part(text: str, at: int, core: str) -> int | None:
     group = re.compile(rf"(?:[{re.escape('(+−-)±')}]+[{HYPHENS}])?{_GROUP.pattern}").match(text, at)
     if group:
         token = _token(text, at, group.end(), at)
-        if token is None or token[0] != at or not _is_chemical(text[slice(*token)], group[0]):
+        if token is None or token[0] != at:
             return None
         word = text[slice(*token)]
-        tail = re.match(r"[ \u00a0]acid\b", text[token[1] :])
+        tail = re.match(r"[ \u00a0]acid\b", text[token[1] : token[1] + 6])
+        if not _is_chemical(word, group[0], tail is not None):
+            return None
         if core.endswith("yl"):
             return token[1] if _ACYL_END.search(word[-12:]) else None
         if _ACID_END.search(word) and tail:

@@ -225,7 +225,7 @@ def _one_column(
     next substance."""
     met: list[Met] = []
     part = 1
-    own = label
+    own = ""
     waiting: list[Evidence] = []
     left = ""
     for row in body:
@@ -238,25 +238,25 @@ def _one_column(
         left = beyond or left
         again = role is not None and starts_next(role, head.text, met)
         if changed or again:
-            yield from (replace(said, label=own) for said in waiting)
-            waiting, met, own, part = [], [], label, part + 1
-        if column and beyond and own == label:
-            own = beyond
+            yield from (replace(said, label=own or label) for said in waiting)
+            waiting, met, own, part = [], [], "", part + 1
+        if column and beyond:
+            own = own or beyond
         if is_nothing(cell.text):
             continue
         if role is not None:
             met.append((role, plain(head.text)))
         if role is Aside.LABEL or (role is Aside.NAME_OR_LABEL and not looks_systematic(cell.text)):
-            own = cell.text if own == label else own
+            own = own or cell.text
             continue
         group = f"{sheet.name}column{value_column + 1}" + (f"part{part}" if part > 1 else "")
         named = _named_field(sheet, cell, head.text)
-        for said in _cell(sheet, named, head.text, role, group, own):
+        for said in _cell(sheet, named, head.text, role, group, ""):
             if isinstance(said, Evidence) and said.group:
                 waiting.append(said)
             else:
                 yield said
-    yield from (replace(said, label=own) for said in waiting)
+    yield from (replace(said, label=own or label) for said in waiting)
 
 
 def _named_field(sheet: _Sheet, cell: Cell, heading: str) -> Cell:
