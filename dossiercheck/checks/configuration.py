@@ -9,6 +9,7 @@ from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case, Pair, UnitView
 from dossiercheck.model import Kind, Role, State
 from dossiercheck.stereo import constitution as con
+from dossiercheck.stereo.structure import is_pyramidal_nitrogen
 
 # A fault of the name that leaves a unit without its descriptor explains the silence there; the
 # silence is then part of that finding and not one of its own.
@@ -68,10 +69,11 @@ def configuration_differs(case: Case, params: Params) -> Iterator[Observation]:
     """A name gives one unit, or several but not all, the configuration opposite to that of the
     reference structure."""
     for pair in of_kind(case, Kind.NAME):
-        views = different(pair)
-        if _whole_mirror(pair):
-            continue
-        for view in views:
+        mirrored = {view for _, part in mirrored_parts(case, pair) for view in part}
+        at_fault = _at_fault(pair)
+        for view in different(pair):
+            if view in mirrored or view.span in at_fault:
+                continue
             assert case.reference is not None
             yield Observation(
                 {
@@ -91,15 +93,15 @@ def configuration_differs(case: Case, params: Params) -> Iterator[Observation]:
             )
 
 
-@check(needs=("name",), fields=("count", "reference"))
+@check(needs=("name",), fields=("count", "reference", "part"))
 def mirror_image(case: Case, params: Params) -> Iterator[Observation]:
-    """A name with two or more centres that are all opposite: it names the enantiomer."""
+    """A name in which the two or more centres of a component are all opposite: it names the
+    enantiomer of the compound, or that of its counter-ion."""
     for pair in of_kind(case, Kind.NAME):
-        if _whole_mirror(pair):
-            views = different(pair)
+        for part, views in mirrored_parts(case, pair):
             assert case.reference is not None
             yield Observation(
-                {"count": str(len(views)), "reference": called(case)},
+                {"count": str(len(views)), "reference": called(case), "part": part},
                 (
                     of_units(pair.reading, views, reference=False),
                     of_units(case.reference, views, reference=True),
@@ -113,7 +115,7 @@ def mirror_image(case: Case, params: Params) -> Iterator[Observation]:
 def name_silent(case: Case, params: Params) -> Iterator[Observation]:
     """The reference specifies units of which the name says nothing."""
     for pair in of_kind(case, Kind.NAME):
-        views = silent_names(case, pair)
+        views = silent_views(case, pair)
         if not views or len(views) <= _offences(pair):
             continue
         assert case.reference is not None
@@ -142,6 +144,7 @@ def drawing_silent(case: Case, params: Params) -> Iterator[Observation]:
             view
             for view in pair.having(State.SILENT, "reference")
             if not _open_racemate(pair.reading.structure, view, len(pair.views))
+            and not _pyramidal_nitrogen(case, view)
             and frozenset(view.atoms) not in said
         ]
         if not views:
@@ -236,25 +239,54 @@ def describe(case: Case, pair: Pair) -> tuple[str, list[UnitView]]:
     if views:
         if pair.alignment.mirrored and len(views) > 1:
             return "the whole structure is the mirror image", views
+        for part, mirrored in mirrored_parts(case, pair):
+            if len(mirrored) == len(views):
+                return f"the {part} is the mirror image", views
         return f"the configuration differs at {cite(views)}", views
-    silent = pair.having(State.SILENT, "other")
+    silent = silent_views(case, pair)
     if silent:
         return f"the configuration is left open at {cite(silent)}", silent
     return "", []
 
 
-def silent_names(case: Case, pair: Pair) -> list[UnitView]:
-    """The units on which a name is silent and should not be."""
+def silent_views(case: Case, pair: Pair) -> list[UnitView]:
+    """The units on which an evidence is silent and should not be."""
     return [
         view
         for view in pair.having(State.SILENT, "other")
         if not _open_racemate(case.structure, view, len(pair.views))
         and not _imine_hydrogen(case, view)
+        and not _pyramidal_nitrogen(case, view)
     ]
 
 
-def _whole_mirror(pair: Pair) -> bool:
-    return pair.alignment.mirrored and len(different(pair)) > 1
+def mirrored_parts(case: Case, pair: Pair) -> list[tuple[str, list[UnitView]]]:
+    """The components of which all centres, two or more, are opposite, and what to call each."""
+    if case.structure is None or not different(pair):
+        return []
+    parts = [set(part) for part in case.structure.components()]
+    main = max(parts, key=len)
+    found = []
+    for part in parts:
+        centres = [v for v in pair.views if v.kind == "centre" and v.atoms[0] in part]
+        if len(centres) > 1 and all(view.state is State.DIFFERS for view in centres):
+            name = "compound" if part == main else "smaller component (counter-ion or solvate)"
+            found.append((name, centres))
+    return found
+
+
+def _at_fault(pair: Pair) -> set[tuple[int, int] | None]:
+    """Descriptors that contradict another part of their own name: a finding about the name."""
+    name = pair.reading.name
+    if name is None:
+        return set()
+    return {
+        name.descriptors[index].span
+        for fault in name.faults
+        if fault.slug in ("overrides-implied", "contradictory-descriptors")
+        for index in (fault.descriptor, fault.other)
+        if index is not None
+    }
 
 
 def _offences(pair: Pair) -> int:
@@ -273,6 +305,13 @@ def _imine_hydrogen(case: Case, view: UnitView) -> bool:
         return False
     atoms = (case.structure.mol.GetAtomWithIdx(atom) for atom in view.atoms)
     return any(atom.GetSymbol() == "N" and atom.GetTotalNumHs(True) > 0 for atom in atoms)
+
+
+def _pyramidal_nitrogen(case: Case, view: UnitView) -> bool:
+    """A bridgehead nitrogen is fixed by its rings; names do not state it (common practice)."""
+    if view.kind != "centre" or case.structure is None:
+        return False
+    return is_pyramidal_nitrogen(case.structure, view.atoms[0])
 
 
 def _kind_spans(pair: Pair) -> list[tuple[int, int]]:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from dossiercheck.checks.configuration import OFFENCES, silent_names, unit_of
+from dossiercheck.checks.configuration import OFFENCES, silent_views, unit_of
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case, Pair
@@ -43,7 +43,7 @@ def _observe(case: Case, reading: Reading, fault: Fault, values: dict[str, str])
 def _bereft(case: Case, pair: Pair, fault: Fault) -> list:  # type: ignore[type-arg]
     """The units of which the faulty descriptor ought to speak."""
     at_locant = [view for view in pair.views if set(view.other) & set(fault.atoms)]
-    silent = silent_names(case, pair)
+    silent = silent_views(case, pair)
     if fault.slug in OFFENCES and silent:
         return silent
     return at_locant

@@ -128,7 +128,9 @@ class Structure:
         bare = [
             (kind, atoms, near)
             for kind, atoms, near in self.possible
-            if atoms not in specified and not self._is_marked(kind, atoms)
+            if atoms not in specified
+            and not self._is_marked(kind, atoms)
+            and not is_pyramidal_nitrogen(self, atoms[0])
         ]
         if not bare:
             return ()
@@ -142,7 +144,31 @@ class Structure:
             earned.update(atoms for kind, atoms, _ in bare if _has_label(trial, kind, atoms))
             if len(earned) == len(bare):
                 break
-        return tuple(Unit(kind, atoms, "") for kind, atoms, _ in bare if atoms in earned)
+        return tuple(
+            Unit(kind, atoms, "")
+            for kind, atoms, near in bare
+            if atoms in earned and not self._is_held(kind, atoms, near, earned)
+        )
+
+    def _is_held(
+        self,
+        kind: str,
+        atoms: tuple[int, ...],
+        near: tuple[int, int],
+        earned: set[tuple[int, ...]],
+    ) -> bool:
+        """Whether a bridgehead is held by its rings: it earns a descriptor only through another
+        bare bridgehead across the bridges, as in quinuclidine, and has no choice of its own."""
+        if kind != "centre":
+            return False
+        atom = self.mol.GetAtomWithIdx(atoms[0])
+        if not all(bond.IsInRing() for bond in atom.GetBonds()):
+            return False
+        if any((other.GetIdx(),) in earned for other in atom.GetNeighbors()):
+            return False
+        alone = Chem.Mol(self.mol)
+        _set(alone, kind, atoms, near, 1)
+        return not _label(alone) and not _has_label(alone, kind, atoms)
 
     @cached_property
     def _canonical(self) -> tuple[str, tuple[int, ...]]:
@@ -202,6 +228,17 @@ class Structure:
 
 
 _GROUP_KIND = {"and": "racemic", "or": "relative"}
+
+
+def is_pyramidal_nitrogen(structure: Structure, index: int) -> bool:
+    """A neutral nitrogen with three ligands: its configuration is nowhere drawn or stated."""
+    atom = structure.mol.GetAtomWithIdx(index)
+    return (
+        atom.GetSymbol() == "N"
+        and atom.GetFormalCharge() == 0
+        and atom.GetDegree() + atom.GetNumImplicitHs() == 3
+        and not any(bond.GetBondTypeAsDouble() > 1 for bond in atom.GetBonds())
+    )
 
 
 def geometry(mol: Chem.Mol, atoms: tuple[int, ...]) -> tuple[int, int, int] | None:
