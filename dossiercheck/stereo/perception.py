@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import logging
+import re
 from collections.abc import Iterable, Iterator, Sequence
 from contextlib import contextmanager
 
 from rdkit import Chem, rdBase
+from rdkit.Chem import rdqueries
 
 from dossiercheck.stereo.structure import (
     Mark,
@@ -27,6 +29,13 @@ _GROUPS = {
 }
 _V2000_STYLES = {1: "wedge", 6: "hash", 4: "wavy", 3: "crossed"}
 _V3000_STYLES = {"1": "wedge", "3": "hash", "2": "wavy"}
+
+# S-groups that repeat or vary (CTFile formats, "Sgroup type"); the others only group or abbreviate.
+_REPEATING = frozenset(["SRU", "MON", "MER", "COP", "CRO", "MOD", "GRA", "ANY", "MIX", "FOR"])
+_DUMMY = rdqueries.AtomNumEqualsQueryAtom(0)
+# A bond line of order 0 (none that the format knows) or 4 (aromatic, which needs a look).
+_ODD_BOND = re.compile(r"^[ \d]{6}  [04]|^M  V30 \d+ [04] \d+ \d+", re.MULTILINE)
+_STAMP = re.compile(r"^\[\d\d:\d\d:\d\d\]\s*")
 
 # Below this sine of the angle between substituent and double bond, the drawing does not say on
 # which side the substituent stands (about 6 degrees).
@@ -63,7 +72,6 @@ def from_molblock(text: str) -> Structure:
     Raises `Unreadable` where the connection table is damaged, a valence is impossible, or the
     table stands for more than one molecule (query atoms, R groups, polymers).
     """
-    _refuse_generic(text)
     with _complaints() as said:
         try:
             mol = Chem.MolFromMolBlock(text, sanitize=False, removeHs=False, strictParsing=True)
@@ -73,9 +81,12 @@ def from_molblock(text: str) -> Structure:
             raise Unreadable(_sentence(said))
     if mol.GetNumAtoms() == 0:
         raise Unreadable("the connection table has no atoms")
+    _refuse_generic(mol, text)
     conformer = mol.GetConformer()
     flat = not conformer.Is3D()
     _sanitize(mol)
+    if _ODD_BOND.search(text):
+        _refuse_odd_bonds(mol)
     if flat:
         Chem.AssignChiralTypesFromBondDirs(mol)
     else:
@@ -105,6 +116,8 @@ def from_smiles(
 
     `groups` and `locants` come from a name's parse. Raises `Unreadable`.
     """
+    if "\n" in text.strip():
+        raise Unreadable("more than one line")
     with _complaints() as said:
         try:
             mol = Chem.MolFromSmiles(text, _SMILES)
@@ -112,9 +125,10 @@ def from_smiles(
             raise Unreadable(_sentence([str(error)])) from error
         if mol is None or mol.GetNumAtoms() == 0:
             raise Unreadable(_sentence(said))
-    if "*" in text.split("|")[0]:
-        raise Unreadable("the notation stands for more than one molecule")
+    _refuse_generic(mol, text)
     _sanitize(mol)
+    if ":" in text:
+        _refuse_odd_bonds(mol)
     Chem.SetBondStereoFromDirections(mol)
     return Structure(mol, text, groups=(*_groups(mol), *groups), locants=tuple(locants))
 
@@ -148,36 +162,35 @@ def _sanitize(mol: Chem.Mol) -> None:
 
 def _sentence(said: list[str]) -> str:
     """The library's complaint as one short line, without its time stamps."""
-    for line in said:
-        plain = line.strip().split("] ", 1)[-1].strip()
-        if plain:
-            return plain.splitlines()[0].rstrip(".") if plain else plain
+    stamped = [line for line in said if _STAMP.match(line)]
+    for line in (*stamped, *said):
+        plain = _STAMP.sub("", line).strip()
+        if plain and plain not in ("ERROR:", "****"):
+            return plain.splitlines()[0].rstrip(".")
     return "the structure could not be parsed"
 
 
-def _refuse_generic(text: str) -> None:
+def _refuse_generic(mol: Chem.Mol, text: str) -> None:
+    """Refuse what stands for more than one molecule."""
     if "M  RGP" in text or " R# " in text or ("M  V30 " in text and " RGROUPS=" in text):
         raise Unreadable("an R group: the drawing stands for more than one molecule")
-    if "M  STY" in text and any(kind in text for kind in (" SRU", " MON", " COP", " ANY")):
-        raise Unreadable("a polymer bracket: the drawing stands for more than one molecule")
-    for query in (" A  ", " Q  ", " * ", " L  ", " LP "):
-        if query in text[: text.find("M  END")] and _has_query_atom(text):
-            raise Unreadable("a query atom: the drawing stands for more than one molecule")
-
-
-def _has_query_atom(text: str) -> bool:
-    lines = text.split("\n")
-    if len(lines) > 4 and "V2000" in lines[3]:
-        count = int(lines[3][:3] or 0)
-        return any(
-            line[31:34].strip() in {"A", "Q", "*", "L", "LP"} for line in lines[4 : 4 + count]
+    grouped = "M  STY" in text or "SGROUP" in text or "Sg:" in text
+    for group in Chem.GetMolSubstanceGroups(mol) if grouped else ():
+        if group.HasProp("TYPE") and group.GetProp("TYPE") in _REPEATING:
+            raise Unreadable("a polymer bracket: the drawing stands for more than one molecule")
+    if mol.HasQuery() or mol.GetAtomsMatchingQuery(_DUMMY):
+        raise Unreadable(
+            "a query atom, query bond or open valence: it stands for more than one molecule"
         )
-    return any(
-        len(part := line.split()) > 4
-        and part[:2] == ["M", "V30"]
-        and part[3] in {"A", "Q", "*", "L", "LP"}
-        for line in lines
-    )
+
+
+def _refuse_odd_bonds(mol: Chem.Mol) -> None:
+    """Refuse bonds that the library passes on although they have no sound order."""
+    for bond in mol.GetBonds():
+        if bond.GetBondType() == Chem.BondType.AROMATIC and not bond.GetBeginAtom().GetIsAromatic():
+            raise Unreadable("an aromatic bond outside an aromatic ring")
+        if bond.GetBondType() in (Chem.BondType.UNSPECIFIED, Chem.BondType.ZERO):
+            raise Unreadable("a bond without an order")
 
 
 def _groups(mol: Chem.Mol) -> Iterator[StereoGroup]:
@@ -192,7 +205,8 @@ def _marks(text: str) -> Iterator[Mark]:
     lines = text.split("\n")
     if len(lines) > 3 and "V3000" in lines[3]:
         inside = False
-        for line in lines:
+        # A line that ends in a hyphen goes on in the next one.
+        for line in re.sub(r"-\s*\nM  V30 ", "", text).split("\n"):
             if line.startswith("M  V30 BEGIN BOND"):
                 inside = True
             elif line.startswith("M  V30 END BOND"):
