@@ -93,7 +93,7 @@ def build_case(substance: Substance, parser: NameParser) -> Case:
     structural = [r for r in substance.readings if r.structure is not None]
     if not structural:
         return Case(substance, None, ())
-    reference = min(structural, key=_preference)
+    reference = _reference(structural)
     pairs = tuple(_pair(reference, r, parser) for r in structural if r is not reference)
     case = Case(substance, reference, pairs)
     atoms: dict[frozenset[int], None] = {}
@@ -136,10 +136,15 @@ def table(case: Case) -> Concordance | None:
     return Concordance(case.reference.evidence.id, tuple(rows), constitution)
 
 
-def _preference(reading: Reading) -> tuple[int, int]:
+def _reference(structural: Sequence[Reading]) -> Reading:
     """Drawings first, among them the one that specifies most."""
-    assert reading.structure is not None
-    return _RANK[reading.kind], -len(reading.structure.units)
+    rank = min(_RANK[reading.kind] for reading in structural)
+    likely = [reading for reading in structural if _RANK[reading.kind] == rank]
+    return likely[0] if len(likely) == 1 else max(likely, key=_specified)
+
+
+def _specified(reading: Reading) -> int:
+    return len(reading.structure.units) if reading.structure else 0
 
 
 def _cell(pair: Pair, view: UnitView | None) -> UnitCell:
@@ -209,7 +214,7 @@ def _needs_tying(found: al.Alignment, views: Sequence[UnitView], reading: Readin
     if reading.structure.groups:
         return False
     printed = Counter(d.text.upper() for d in reading.name.descriptors if d.text in _ABSOLUTE)
-    computed = Counter(unit.descriptor.upper() for unit in reading.structure.units)
+    computed = Counter(verdict.other_descriptor.upper() for verdict in found.verdicts)
     return bool(printed - computed)
 
 

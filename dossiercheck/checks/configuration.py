@@ -194,7 +194,9 @@ def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
     configuration only."""
     for pair in of_kind(case, Kind.NAME):
         mine, theirs = case.structure, pair.reading.structure
-        if not (mine and theirs) or pair.alignment.constitution.verdict not in _LAID:
+        if not (mine and theirs) or not (mine.groups or theirs.groups):
+            continue
+        if pair.alignment.constitution.verdict not in _LAID:
             continue
         kinds = mine.kind, theirs.kind
         if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds):

@@ -52,20 +52,19 @@ def align(reference: Structure, other: Structure) -> Alignment:
     """Lay `other` on `reference` in the way that leaves the fewest disagreements."""
     if not reference.groups and not other.groups and reference.smiles == other.smiles:
         mapping = dict(zip(reference.order, other.order, strict=True))
-        own = {frozenset(unit.atoms): unit.descriptor for unit in other.units}
+        # One canonical form is one structure: the descriptors need not be computed twice.
         verdicts = tuple(
             Verdict(
                 unit.kind,
                 unit.atoms,
-                image := tuple(mapping[atom] for atom in unit.atoms),
+                tuple(mapping[atom] for atom in unit.atoms),
                 SAME,
                 unit.descriptor,
-                own.get(frozenset(image), ""),
+                unit.descriptor,
             )
             for unit in reference.units
         )
-        doubt = reference.doubt or other.doubt
-        return Alignment(con.Constitution(con.SAME), mapping, verdicts, doubt=doubt)
+        return Alignment(con.Constitution(con.SAME), mapping, verdicts, doubt=reference.doubt)
     return _align_slowly(reference, other)
 
 
