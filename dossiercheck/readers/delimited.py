@@ -138,6 +138,7 @@ class _Shape:
     width: int
     heading_row: int
     match: float
+    score: float
 
 
 def _shape(text: str, tabbed: bool) -> _Shape | None:
@@ -155,10 +156,10 @@ def _shape(text: str, tabbed: bool) -> _Shape | None:
     shapes = [shape for mark in delimiters if (shape := _shape_with(text, mark))]
     wide = [shape for shape in shapes if shape.width > 1]
     if wide:
-        best = max(wide, key=lambda s: (round(s.match * 0.8 ** min(s.heading_row, 9), 2), s.width))
-        if best.heading_row == 1 or best.match > 0.5:
+        best = max(wide, key=lambda shape: (round(shape.score, 2), shape.width))
+        if best.score == best.match or best.match > 0.5:
             return best
-    return _Shape(delimiters[0] if len(delimiters) == 1 else "\t", 1, 1, 1.0) if shapes else None
+    return _Shape(delimiters[0] if len(delimiters) == 1 else "\t", 1, 1, 1, 1) if shapes else None
 
 
 def _shape_with(text: str, delimiter: str) -> _Shape | None:
@@ -172,8 +173,9 @@ def _shape_with(text: str, delimiter: str) -> _Shape | None:
         pass  # the strict reading reports it; what was seen so far decides the layout
     if not widths:
         return None
-    heading = next(((n, w) for n, w in widths[:_HEADING_ROWS] if w > 1), None)
-    if heading is None:
-        return _Shape(delimiter, 1, 1, 0.0)
-    body = [width for number, width in widths if number >= heading[0]]
-    return _Shape(delimiter, heading[1], heading[0], body.count(heading[1]) / len(body))
+    above = next((i for i, (_, width) in enumerate(widths[:_HEADING_ROWS]) if width > 1), None)
+    if above is None:
+        return _Shape(delimiter, 1, 1, 0, 0)
+    heading_row, width = widths[above]
+    match = sum(1 for _, other in widths[above:] if other == width) / (len(widths) - above)
+    return _Shape(delimiter, width, heading_row, match, match * 0.9**above)
