@@ -6,6 +6,7 @@ double bond.
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
@@ -139,6 +140,7 @@ class Identity:
     fixed: str
     standard: str
     smiles: str
+    formula: str
 
     def same_as(self, other: Identity) -> bool | None:
         """Whether both are the same stereoisomer; None where the two canonical forms disagree."""
@@ -157,17 +159,35 @@ def identity(mol: Chem.Mol | None) -> Identity | None:
     text = Chem.MolToSmiles(without_hydrogens(plain, keep_imine=True))
     again = Chem.MolFromSmiles(text)
     return Identity(
-        fixed=Chem.MolToInchi(plain, options="/FixedH", logLevel=None) or "",
-        standard=Chem.MolToInchi(plain, logLevel=None) or "",
+        fixed=form(plain, "fixed"),
+        standard=form(plain, "standard"),
         smiles=Chem.MolToSmiles(again) if again is not None else "",
+        formula=neutral_formula(mol),
     )
+
+
+def neutral_formula(mol: Chem.Mol) -> str:
+    """Element counts as text, hydrogens less the charge: the same for all protonation states."""
+    counts = Counter(atom.GetSymbol() for atom in mol.GetAtoms())
+    counts["H"] += sum(atom.GetTotalNumHs() for atom in mol.GetAtoms())
+    counts["H"] -= Chem.GetFormalCharge(mol)
+    return " ".join(f"{element}{count}" for element, count in sorted(counts.items()) if count)
+
+
+def form(mol: Chem.Mol, name: str) -> str:
+    """One of the canonical forms alone, by its name in `Identity`."""
+    if name == "smiles":
+        found = identity(mol)
+        return found.smiles if found else ""
+    plain = Chem.Mol(mol)
+    plain.RemoveAllConformers()
+    options = "/FixedH" if name == "fixed" else ""
+    return Chem.MolToInchi(plain, options=options, logLevel=None) or ""
 
 
 def standard_inchi(mol: Chem.Mol) -> str:
     """The standard InChI, "" where it fails."""
-    plain = Chem.Mol(mol)
-    plain.RemoveAllConformers()
-    return Chem.MolToInchi(plain, logLevel=None) or ""
+    return form(mol, "standard")
 
 
 def with_units(mol: Chem.Mol, flip: Iterable[Unit] = (), unset: Iterable[Unit] = ()) -> Chem.Mol:
