@@ -91,7 +91,7 @@ class Structure:
                 begin = next((a for a in near[:2] if a != _NOTHING), -1)
                 end = next((a for a in near[2:] if a != _NOTHING), -1)
                 ends = (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx())
-                if min(begin, end) < 0:
+                if min(begin, end) < 0 or _is_cumulated(bond):
                     continue
                 if self.mol.GetBondBetweenAtoms(ends[0], begin) is None:
                     begin, end = end, begin
@@ -227,6 +227,16 @@ class Structure:
         return self.mol.GetBondBetweenAtoms(*atoms).GetStereo() in _SHOWN
 
 
+def _is_cumulated(bond: Chem.Bond) -> bool:
+    """One of several double bonds in a row: the unit is then the row's axis or plane (IUPAC 2013,
+    P-93.4.2), never one bond of it."""
+    return any(
+        atom.GetDegree() == 2 and all(b.GetBondType() == _DOUBLE for b in atom.GetBonds())
+        for atom in (bond.GetBeginAtom(), bond.GetEndAtom())
+    )
+
+
+_DOUBLE = Chem.BondType.DOUBLE
 _GROUP_KIND = {"and": "racemic", "or": "relative"}
 
 
