@@ -9,9 +9,12 @@ from pathlib import Path
 
 from tests.demonstration.documents import documents
 from tests.demonstration.drawings import Edit
-from tests.demonstration.planted import PLANTED, Planted
+from tests.demonstration.error import Planted
+from tests.demonstration.planted_impurities import CHARACTERISATION
+from tests.demonstration.planted_manufacture import MANUFACTURE
 from tests.demonstration.substances import BASE, DRUG, Substance
 
+PLANTED = (*MANUFACTURE, *CHARACTERISATION)
 SAMPLES = Path(__file__).parents[2] / "samples"
 
 SETTINGS = f"""# Invented sponsor, invented substances; the registry numbers are invented too.

@@ -300,7 +300,8 @@ def _specification(say: Say) -> str:
         if one.label[-1] in limits
     ]
     drug = s.DRUG
-    rows.append((drug.label, say(SPECIFICATION, drug, "name", drug.other_name), ""))
+    # the company code is an alias in the settings
+    rows.append(("BQT-2291", say(SPECIFICATION, drug, "name", drug.other_name), ""))
     return _delimited(rows, "\t")
 
 
