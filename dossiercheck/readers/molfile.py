@@ -158,6 +158,8 @@ def _fault(lines: list[str]) -> str:
         atoms, bonds = int(counts[0:3]), int(counts[3:6])
     except ValueError:
         return "The fourth line is not a counts line."
+    if atoms < 0 or bonds < 0:
+        return "The fourth line is not a counts line."
     first_bond, after = 4 + atoms, 4 + atoms + bonds
     if len(lines) <= after:
         return f"The counts line promises {atoms} atoms and {bonds} bonds; lines are missing."
