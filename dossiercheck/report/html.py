@@ -18,7 +18,7 @@ from dossiercheck.model import Drawing, DrawnAtom, DrawnBond
 from dossiercheck.report.depict import svg
 from dossiercheck.report.document import Json
 from dossiercheck.report.verdict import number_of
-from dossiercheck.report.view import FULL_FINDINGS, FULL_SUBSTANCES, page
+from dossiercheck.report.view import FULL_FINDINGS, FULL_SUBSTANCES, is_long, page
 from dossiercheck.report.visible import runs, visible
 
 FILE = "report.html"
@@ -45,6 +45,7 @@ def render(
     environment.filters.update(
         verbatim=_verbatim, structure=_structure, number_of=number_of, thousands=_thousands
     )
+    environment.tests["long"] = is_long
     text = environment.get_template(_TEMPLATE).render(
         document=document,
         page=page(document, full_findings, full_substances),

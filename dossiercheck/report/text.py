@@ -21,7 +21,8 @@ def summary(document: Json) -> str:
         label = labels.get(group["substance"], group["substance"])
         for key in group["findings"]:
             finding = findings[key].pop(0)
-            lines.append(one_line(f"{finding['grade'].upper()}  {label}: {finding['message']}"))
+            grade = finding["grade"].upper()
+            lines.append(f"{grade:<8}  {one_line(label)}: {one_line(finding['message'])}")
             lines += [
                 f"    {one_line(one['title'])} in {_place(one['place'])}"
                 for one in finding["exhibits"]

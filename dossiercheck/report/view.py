@@ -84,18 +84,20 @@ def page(
     number = 0
     held: dict[str, tuple[Json, ...]] = {}
     written: set[str] = set()
+    entries = {one["id"]: one for one in document["substances"]}
     for item in document["by_substance"]:
+        key = item["substance"]
+        room = max(0, full_findings - number)
         every = []
-        for key in item["findings"]:
+        for one in item["findings"]:
             number += 1
-            every.append({**findings[key].pop(0), "number": number})
-        held[item["substance"]] = tuple(every)
-        room = max(0, full_findings - (number - len(every)))
+            every.append({**findings[one].pop(0), "number": number})
+        held[key] = tuple(every)
         if room:
-            written.add(item["substance"])
-            label = labels.get(item["substance"], item["substance"])
-            anchor = anchors.get(item["substance"], "")
-            groups.append(Group(label, anchor, item["gravest"], tuple(every[:room])))
+            written.add(key)
+            anchor = anchors.get(key, "")
+            shown = tuple(_with_citations(one, entries.get(key), anchor) for one in every[:room])
+            groups.append(Group(labels.get(key, key), anchor, item["gravest"], shown))
         brief += every[room:]
     clean = sum(one["id"] not in held for one in document["substances"])
     full: list[Substance] = []
@@ -119,6 +121,30 @@ def _by_id(findings: list[Json]) -> dict[str, list[Json]]:
     return found
 
 
+def is_long(text: str) -> bool:
+    """Whether a text, a connection table above all, is folded rather than set in full."""
+    return text.count("\n") > 7 or len(text) > 1500
+
+
+def evidence_anchor(anchor: str, position: int) -> str:
+    """The id of a substance's evidence on the page, `position` counted from 1."""
+    return f"{anchor}e{position}"
+
+
+def _with_citations(finding: Json, entry: Json | None, anchor: str) -> Json:
+    """The finding with, for each exhibit whose long text is that of a listed evidence, a link to
+    it: a connection table is set once on the page, not once a finding."""
+    listed = {}
+    for position, one in enumerate(entry["evidence"] if entry else (), 1):
+        listed[one["id"]] = (one["text"], evidence_anchor(anchor, position))
+    exhibits = []
+    for exhibit in finding["exhibits"]:
+        text, target = listed.get(exhibit["evidence"], ("", ""))
+        same = text == exhibit["text"] and is_long(text) and not exhibit["marks"]
+        exhibits.append({**exhibit, "cited": target if same else ""})
+    return {**finding, "exhibits": exhibits}
+
+
 def _substance(
     entry: Json, label: str, anchor: str, findings: tuple[Json, ...], whole: bool
 ) -> Substance:
@@ -130,8 +156,12 @@ def _substance(
     if not whole:
         return Substance(entry, label, anchor, findings, (), (), states)
     groups = []
+    evidence = [
+        {**one, "anchor": evidence_anchor(anchor, position)}
+        for position, one in enumerate(entry["evidence"], 1)
+    ]
     for title, kinds in _GROUPS:
-        members = tuple(one for one in entry["evidence"] if one["kind"] in kinds)
+        members = tuple(one for one in evidence if one["kind"] in kinds)
         if members:
             groups.append((title, members))
     blocks = _blocks(entry, concordance) if concordance else ()
