@@ -9,6 +9,7 @@ from rdkit import Chem
 
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.graph import Graph, graph_of
+from dossiercheck.stereo.likeness import same_stereoisomer
 from dossiercheck.stereo.mapping import Mapped, best_mapping, compare
 from dossiercheck.stereo.structure import StereoGroup, Structure
 
@@ -50,9 +51,9 @@ class Alignment:
 
 def align(reference: Structure, other: Structure) -> Alignment:
     """Lay `other` on `reference` in the way that leaves the fewest disagreements."""
-    if not reference.groups and not other.groups and reference.smiles == other.smiles:
-        mapping = dict(zip(reference.order, other.order, strict=True))
-        # One canonical form is one structure: the descriptors need not be computed twice.
+    mapping = {} if reference.groups or other.groups else same_stereoisomer(reference, other)
+    if mapping:
+        # One stereoisomer has one set of descriptors: they need not be computed twice.
         verdicts = tuple(
             Verdict(
                 unit.kind,

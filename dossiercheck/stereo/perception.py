@@ -34,7 +34,7 @@ _V3000_STYLES = {"1": "wedge", "3": "hash", "2": "wavy"}
 _REPEATING = frozenset(["SRU", "MON", "MER", "COP", "CRO", "MOD", "GRA", "ANY", "MIX", "FOR"])
 _DUMMY = rdqueries.AtomNumEqualsQueryAtom(0)
 # A bond line of order 0 (none that the format knows) or 4 (aromatic, which needs a look).
-_ODD_BOND = re.compile(r"^[ \d]{6}  [04]|^M  V30 \d+ [04] \d+ \d+", re.MULTILINE)
+_ODD_BOND = re.compile(r"^[ \d]{6}  [04](?!.*V[23]000)|^M  V30 \d+ [04] \d+ \d+", re.MULTILINE)
 _STAMP = re.compile(r"^\[\d\d:\d\d:\d\d\]\s*")
 
 # Below this sine of the angle between substituent and double bond, the drawing does not say on

@@ -173,7 +173,8 @@ class Structure:
     @cached_property
     def _canonical(self) -> tuple[str, tuple[int, ...]]:
         smiles = str(Chem.MolToSmiles(self.mol))
-        return smiles, tuple(self.mol.GetPropsAsDict(True, True)["_smilesAtomOutputOrder"])
+        written = self.mol.GetProp("_smilesAtomOutputOrder")
+        return smiles, tuple(int(atom) for atom in written.strip("[],").split(",") if atom)
 
     @property
     def smiles(self) -> str:
@@ -238,6 +239,18 @@ def _is_cumulated(bond: Chem.Bond) -> bool:
 
 _DOUBLE = Chem.BondType.DOUBLE
 _GROUP_KIND = {"and": "racemic", "or": "relative"}
+
+
+def marked_atoms(structure: Structure) -> list[int]:
+    """The atoms with a chirality mark, meaningful or not."""
+    return [atom.GetIdx() for atom in structure.mol.GetAtomsMatchingQuery(_MARKED)]
+
+
+def stereo_bonds(structure: Structure) -> list[int]:
+    """The double bonds with a geometry."""
+    if not structure.dimension and not {"/", "\\"} & set(structure.text):
+        return []
+    return [bond.GetIdx() for bond in structure.mol.GetBonds() if bond.GetStereo() in _SHOWN]
 
 
 def is_pyramidal_nitrogen(structure: Structure, index: int) -> bool:

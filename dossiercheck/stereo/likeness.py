@@ -1,0 +1,63 @@
+"""The quick answer for the usual case: both are one and the same stereoisomer."""
+
+from __future__ import annotations
+
+from rdkit import Chem
+
+from dossiercheck.stereo.graph import HYDROGEN, LONE_PAIR, Centre, Geometry
+from dossiercheck.stereo.graph import same_centre as _same_centre
+from dossiercheck.stereo.graph import same_geometry as _same_geometry
+from dossiercheck.stereo.structure import Structure, geometry, marked_atoms, stereo_bonds
+
+_CHIRAL = Chem.SubstructMatchParameters()
+_CHIRAL.useChirality = True
+_CHIRAL.maxMatches = 1
+
+
+def same_stereoisomer(one: Structure, two: Structure) -> dict[int, int]:
+    """A mapping that shows both to be one stereoisomer, or {} where none was found quickly.
+
+    The library proposes the mapping; every unit is then compared under it by our own parities,
+    and neither side may carry a mark that the other lacks. {} means "look closer".
+    """
+    if one.mol.GetNumAtoms() != two.mol.GetNumAtoms() or one.hill != two.hill:
+        return {}
+    if one.doubt:
+        return {}
+    units = one.units
+    if len(marked_atoms(two)) + len(stereo_bonds(two)) != len(units):
+        return {}
+    found = two.mol.GetSubstructMatch(one.mol, _CHIRAL)
+    if not found:
+        return {}
+    mapping = dict(enumerate(found))
+    for unit in units:
+        image = tuple(mapping[atom] for atom in unit.atoms)
+        if unit.kind == "centre":
+            here, there = _centre(one, unit.atoms[0]), _centre(two, image[0])
+            if not (here and there and _same_centre(here, there, mapping)):
+                return {}
+        else:
+            bond, other = _bond(one, unit.atoms), _bond(two, image)
+            if not (bond and other and _same_geometry(bond, other, mapping)):
+                return {}
+    return mapping
+
+
+def _centre(structure: Structure, index: int) -> Centre | None:
+    atom = structure.mol.GetAtomWithIdx(index)
+    tag = atom.GetChiralTag()
+    if tag not in (Chem.ChiralType.CHI_TETRAHEDRAL_CCW, Chem.ChiralType.CHI_TETRAHEDRAL_CW):
+        return None
+    order = [other.GetIdx() for other in atom.GetNeighbors()]
+    if len(order) == 3:
+        order.append(HYDROGEN if atom.GetTotalNumHs() else LONE_PAIR)
+    sign = 1 if tag == Chem.ChiralType.CHI_TETRAHEDRAL_CCW else -1
+    return Centre(tuple(order), sign)
+
+
+def _bond(structure: Structure, atoms: tuple[int, ...]) -> Geometry | None:
+    if structure.mol.GetBondBetweenAtoms(*atoms) is None:
+        return None
+    shown = geometry(structure.mol, atoms)
+    return Geometry((atoms[0], atoms[1]), shown[:2], shown[2]) if shown else None
