@@ -77,13 +77,19 @@ def _thousands(value: int) -> str:
     return f"{value:,}"
 
 
-def _verbatim(text: str, marks: list[list[int]] | None = None) -> Markup:
-    """The text as it stands, what matters in `<mark>`, hidden characters as code points."""
+def _verbatim(text: str, marks: list[list[int]] | None = None, breaks: bool = True) -> Markup:
+    """The text as it stands, what matters in `<mark>`, hidden characters as code points.
+
+    With `breaks` a line may end after any hyphen: a browser left alone does not end one between
+    a hyphen and a digit, and would cut a long name in the middle of a word.
+    """
     parts = []
     for piece, marked, hidden in runs(text, marks or []):
         shown = escape(piece)
         if hidden:
             shown = Markup('<span class="codepoint">{}</span>').format(piece)
+        elif breaks:
+            shown = shown.replace("-", Markup("-<wbr>"))
         parts.append(Markup("<mark>{}</mark>").format(shown) if marked else shown)
     return Markup("").join(parts)
 

@@ -171,7 +171,8 @@ def _substance(
 def _blocks(entry: Json, concordance: Json) -> tuple[Block, ...]:
     """The concordance in widths that a page holds."""
     reference = concordance["reference"]
-    spoken = set(concordance["constitution"])
+    constitution = {reference: "reference", **concordance["constitution"]}
+    spoken = set(constitution)
     cells: list[dict[str, Json]] = []
     for row in concordance["rows"]:
         cells.append({cell["evidence"]: cell for cell in row["cells"]})
@@ -190,7 +191,7 @@ def _blocks(entry: Json, concordance: Json) -> tuple[Block, ...]:
                     (row, tuple(held.get(one) for one in ids))
                     for row, held in zip(concordance["rows"], cells, strict=True)
                 ),
-                tuple(concordance["constitution"].get(one, "") for one in ids),
+                tuple(constitution.get(one, "") for one in ids),
             )
         )
     return tuple(found)

@@ -105,6 +105,20 @@ def test_concordance_table_has_unit_rows_and_evidence_columns(tree: etree._Eleme
     assert rows[5][4] == "— ○ silent"
 
 
+def test_names_may_break_after_a_hyphen_and_nowhere_else(text: str) -> None:
+    marked = re.search(r'<p class="verbatim"[^>]*>(methyl .*?)</p>', text).group(1)
+    assert marked.count("<wbr>") == marked.count("-") == sample.WRONG_NAME.count("-")
+    assert "<wbr>" not in "".join(re.findall(r"<pre.*?</pre>", text, re.DOTALL))
+
+
+def test_reference_is_called_so_where_the_constitution_does_not_list_it() -> None:
+    bare = sample.replace(sample.CLEAN.concordance, constitution={"E13": "same"})
+    entry = sample.replace(sample.CLEAN, concordance=bare)
+    text = rendered(sample.replace(sample.clean(), substances=(entry,)))
+    row = parser.document_fromstring(text).find(".//tr[@class='constitution']")
+    assert [words(one) for one in row] == ["Constitution", "reference", "same"]
+
+
 def test_method_sources_and_rules_are_listed(tree: etree._Element) -> None:
     said = words(tree)
     for heading, value in sample.METHOD.items():

@@ -1,0 +1,262 @@
+"""The page in a real browser: with and without script, keyboard, print, accessibility, safety.
+
+Uses the distribution's Chromium; skipped with a reason where there is none. Accessibility rules
+are those of axe-core (WCAG 2.1 A and AA), as the `axe-playwright-python` package carries it.
+"""
+
+import shutil
+from collections.abc import Iterator
+from pathlib import Path
+from typing import Any
+
+import pypdfium2
+import pytest
+
+from dossiercheck import report
+from dossiercheck.report.labels import width_of
+from tests.unit.report import sample
+
+playwright = pytest.importorskip("playwright.sync_api", reason="playwright is not installed")
+CHROMIUM = shutil.which("chromium") or shutil.which("chromium-browser")
+pytestmark = pytest.mark.skipif(CHROMIUM is None, reason="no Chromium on this machine")
+
+
+@pytest.fixture(scope="module")
+def browser() -> Iterator[Any]:
+    with playwright.sync_playwright() as driver:
+        started = driver.chromium.launch(
+            executable_path=CHROMIUM, args=["--no-sandbox", "--disable-gpu"]
+        )
+        yield started
+        started.close()
+
+
+@pytest.fixture(scope="module")
+def folder(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    made = tmp_path_factory.mktemp("reports")
+    for name in ("review", "hostile", "empty", "clean"):
+        report.write(getattr(sample, name)(), made / name, ["html"])
+    return made
+
+
+def opened(browser: Any, folder: Path, name: str = "review", **options: Any) -> Any:
+    options.setdefault("viewport", {"width": 1200, "height": 900})
+    page = browser.new_context(**options).new_page()
+    page.errors = []
+    page.requests = []
+    page.on("pageerror", lambda error: page.errors.append(str(error)))
+    page.on("console", lambda said: page.errors.append(said.text) if said.type == "error" else None)
+    page.on("request", lambda asked: page.requests.append(asked.url))
+    page.goto((folder / name / "report.html").as_uri())
+    return page
+
+
+@pytest.fixture
+def page(browser: Any, folder: Path) -> Iterator[Any]:
+    made = opened(browser, folder)
+    yield made
+    assert made.errors == []
+    made.context.close()
+
+
+def test_loads_only_itself_and_reports_no_error(page: Any) -> None:
+    assert len(page.requests) == 1
+    assert page.requests[0].startswith("file:")
+
+
+def test_without_script_everything_is_there(browser: Any, folder: Path) -> None:
+    page = opened(browser, folder, java_script_enabled=False)
+    for finding in sample.FINDINGS:
+        assert page.get_by_role("heading", name=finding.message, exact=True).is_visible()
+    assert not page.locator("#tools").is_visible()
+    assert page.locator("table.concordance").first.is_visible()
+    fold = page.locator("article details").first
+    assert not fold.locator("li").first.is_visible()
+    fold.locator("summary").click()
+    assert fold.locator("li").first.is_visible()
+    page.context.close()
+
+
+def test_filter_by_grade_says_what_it_hides(page: Any) -> None:
+    cards = page.locator("article.finding")
+    assert cards.count() == 6
+    page.get_by_label("major").uncheck()
+    assert page.locator("article.finding:visible").count() == 3
+    assert "3 of 6 findings shown; 3 hidden" in page.locator("#shown").inner_text()
+    page.get_by_label("major").check()
+    assert page.locator("article.finding:visible").count() == 6
+    page.get_by_label("Containing").fill("tartrate maleate")
+    assert page.locator("article.finding:visible h4").all_inner_texts() == [
+        sample.FINDINGS[5].message
+    ]
+
+
+def test_keys(page: Any) -> None:
+    def focused() -> str:
+        return page.evaluate("document.activeElement.id")
+
+    page.keyboard.press("j")
+    assert focused() == "f1"
+    page.keyboard.press("j")
+    assert focused() == "f2"
+    page.keyboard.press("k")
+    assert focused() == "f1"
+    page.keyboard.press("o")
+    assert page.locator("#f1 details:not([open])").count() == 0
+    assert page.locator("#f2 details[open]").count() == 0
+    page.keyboard.press("o")
+    assert page.locator("#f1 details[open]").count() == 0
+    page.keyboard.press("a")
+    assert page.locator("details:not([open])").count() == 0
+    page.keyboard.press("2")
+    assert page.locator("article.finding.major:visible").count() == 0
+    page.keyboard.press("?")
+    assert page.locator("#help").is_visible()
+    page.keyboard.press("Escape")
+    assert not page.locator("#help").is_visible()
+    page.keyboard.press("/")
+    assert focused() == "search"
+    page.keyboard.type("j?")
+    assert page.locator("#search").input_value() == "j?"
+
+
+def test_tables_sort_by_their_headings(page: Any) -> None:
+    table = page.locator("table.sources")
+    sizes = [one.size for one in sample.SOURCES]
+    heading = table.get_by_role("button", name="Bytes")
+    heading.click()
+    shown = [int(one.replace(",", "")) for one in table.locator("td.number").all_inner_texts()]
+    assert shown == sorted(sizes)
+    heading.click()
+    shown = [int(one.replace(",", "")) for one in table.locator("td.number").all_inner_texts()]
+    assert shown == sorted(sizes, reverse=True)
+    assert table.locator("th[aria-sort=descending]").count() == 1
+
+
+def pdf_text(page: Any, target: Path) -> list[str]:
+    page.pdf(path=target, prefer_css_page_size=True, print_background=True)
+    with pypdfium2.PdfDocument(target) as pdf:
+        assert [round(side) for side in pdf[0].get_size()] == [595, 842]  # A4 in points
+        return [" ".join(one.get_textpage().get_text_range().split()) for one in pdf]
+
+
+@pytest.mark.parametrize("script", [True, False], ids=["script", "no-script"])
+def test_print_opens_folds_and_repeats_the_caution(
+    browser: Any, folder: Path, tmp_path: Path, script: bool
+) -> None:
+    page = opened(browser, folder, java_script_enabled=script)
+    if script:
+        page.get_by_label("major").uncheck()
+    sheets = pdf_text(page, tmp_path / "out.pdf")
+    said = " ".join(sheets)
+    for step in sample.FINDINGS[0].derivation:
+        assert step.split(":")[0] in said
+    for rule in sample.RULES[:6]:
+        assert rule.why[:40] in said
+    for finding in sample.FINDINGS:
+        assert finding.message[:30] in said
+    for reason in sample.OVESTRILIDE.attribution.values():
+        assert reason[:12] in said
+    assert "M END" in said
+    for number, sheet in enumerate(sheets, 1):
+        assert "Every finding must be confirmed by a qualified reviewer" in sheet
+        assert f"{number} / {len(sheets)}" in sheet
+    page.context.close()
+
+
+@pytest.mark.parametrize("width", [1200, 390, 320])
+def test_no_sideways_scrolling_of_the_page(browser: Any, folder: Path, width: int) -> None:
+    for name in ("review", "hostile", "empty"):
+        page = opened(browser, folder, name, viewport={"width": width, "height": 800})
+        assert page.evaluate("document.documentElement.scrollWidth") <= width, name
+        page.context.close()
+
+
+@pytest.mark.parametrize("scheme", ["light", "dark"])
+@pytest.mark.parametrize("name", ["review", "empty", "clean"])
+def test_accessible(browser: Any, folder: Path, name: str, scheme: str) -> None:
+    axe = pytest.importorskip("axe_playwright_python.sync_playwright")
+    page = opened(browser, folder, name, color_scheme=scheme)
+    page.keyboard.press("a")
+    tags = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "best-practice"]
+    found = axe.Axe().run(page, options={"runOnly": {"type": "tag", "values": tags}}).response
+    assert len(found["passes"]) > 15
+    faults = [
+        (one["id"], [node["html"][:160] for node in one["nodes"][:3]])
+        for one in found["violations"]
+    ]
+    assert faults == []
+    page.context.close()
+
+
+def test_skip_link_leads_to_the_findings(page: Any) -> None:
+    page.keyboard.press("Tab")
+    assert page.evaluate("document.activeElement.textContent") == "Skip to the findings"
+    page.keyboard.press("Enter")
+    assert page.evaluate("document.activeElement.id") == "findings"
+
+
+def test_hostile_text_does_nothing(browser: Any, folder: Path) -> None:
+    page = browser.new_context().new_page()
+    said: list[str] = []
+    page.on("dialog", lambda dialog: (said.append(dialog.message), dialog.dismiss()))
+    page.goto((folder / "hostile" / "report.html").as_uri())
+    assert page.locator("article.finding").count() == 1
+    assert said == []
+    # The policy would stop a script even if one got in: this one is put in by force.
+    page.evaluate(
+        "() => { const s = document.createElement('script'); s.textContent = 'window.bad = 1';"
+        " document.body.append(s); }"
+    )
+    assert page.evaluate("window.bad") is None
+    page.context.close()
+
+
+def test_marks_cover_neither_label_nor_bond(page: Any) -> None:
+    """Measured on the letters as the browser sets them, not on our estimate of their widths."""
+    overlaps = page.evaluate(
+        """() => {
+          const found = [];
+          let marks = 0;
+          for (const svg of document.querySelectorAll('article svg.structure')) {
+            for (const mark of svg.querySelectorAll('.marktext text')) {
+              marks += 1;
+              const box = mark.getBBox();
+              const top = box.y + box.height * 0.2, low = box.y + box.height * 0.8;
+              for (const text of svg.querySelectorAll('text')) {
+                if (text === mark) continue;
+                const other = text.getBBox();
+                const wide = Math.min(box.x + box.width, other.x + other.width) - Math.max(box.x, other.x);
+                const high = Math.min(low, other.y + other.height * 0.8) - Math.max(top, other.y + other.height * 0.2);
+                if (wide > 0 && high > 0) found.push(mark.textContent + ' on ' + text.textContent);
+              }
+              for (const path of svg.querySelectorAll('g[stroke-width] path')) {
+                const length = path.getTotalLength();
+                for (let at = 0; at <= length; at += 1) {
+                  const point = path.getPointAtLength(at);
+                  if (point.x > box.x && point.x < box.x + box.width && point.y > top && point.y < low) {
+                    found.push(mark.textContent + ' on a bond');
+                    break;
+                  }
+                }
+              }
+            }
+          }
+          return [marks, found];
+        }"""
+    )
+    assert overlaps == [7, []]
+
+
+def test_labels_as_set_stay_close_to_their_estimated_widths(page: Any) -> None:
+    """Bonds are drawn back from estimated label widths; a wrong estimate would cut into letters."""
+    widths = page.evaluate(
+        """() => [...document.querySelectorAll('svg.structure text')].map(
+             (text) => [text.textContent, text.getComputedTextLength(), text.getAttribute('font-size')
+               || text.parentNode.getAttribute('font-size')])"""
+    )
+    assert len(widths) > 30
+    for text, measured, size in widths:
+        assert width_of(text, float(size)) == pytest.approx(measured, abs=0.18 * measured + 0.5), (
+            text
+        )
