@@ -65,17 +65,19 @@ class Pair:
 
 @dataclass(eq=False, slots=True)
 class Case:
-    """What a check is given: a substance, its reference, and every other structural evidence
-    laid on it. `unit_ids` names the units of the table ("u1") by the reference's atoms."""
+    """What a check is given: a substance, its readings, the reference among them, and every
+    other structural reading laid on it. `unit_ids` names the units of the table ("u1") by the
+    reference's atoms."""
 
     substance: Substance
+    readings: Sequence[Reading]
     reference: Reading | None
     pairs: tuple[Pair, ...]
     unit_ids: dict[frozenset[int], str] = field(default_factory=dict)
 
     def of_role(self, role: Role) -> list[Reading]:
         """The substance's readings in a role that were understood."""
-        return [r for r in self.substance.readings if r.evidence.role is role and not r.refusal]
+        return [r for r in self.readings if r.evidence.role is role and not r.refusal]
 
     @property
     def structure(self) -> Structure | None:
@@ -85,17 +87,17 @@ class Case:
     @property
     def kinds(self) -> frozenset[str]:
         """The kinds of evidence there are."""
-        return frozenset(str(reading.kind) for reading in self.substance.readings)
+        return frozenset(str(reading.kind) for reading in self.readings)
 
 
-def build_case(substance: Substance, parser: NameParser) -> Case:
+def build_case(substance: Substance, readings: Sequence[Reading], parser: NameParser) -> Case:
     """Choose the reference and lay everything else on it."""
-    structural = [r for r in substance.readings if r.structure is not None]
+    structural = [r for r in readings if r.structure is not None]
     if not structural:
-        return Case(substance, None, ())
+        return Case(substance, readings, None, ())
     reference = _reference(structural)
     pairs = tuple(_pair(reference, r, parser) for r in structural if r is not reference)
-    case = Case(substance, reference, pairs)
+    case = Case(substance, readings, reference, pairs)
     atoms: dict[frozenset[int], None] = {}
     assert reference.structure is not None
     for unit in reference.structure.units:

@@ -46,14 +46,13 @@ def _review(
 ) -> Review:
     evidence, unread = _gather(items, settings)
     with Workers(settings.jobs, rulebook, progress) as workers:
-        readings = workers.interpret(evidence)
-        unread += [reading.unread for reading in readings if reading.unread]
-        substances, unattributed = attribute(readings, settings.register)
-        unread += unattributed
+        substances, unattributed = attribute(evidence, settings.register, workers.survey)
         judged = workers.judge(substances)
     return Review(
         sources=sources,
-        unread=(*unread, *(entry for one in judged for entry in one.unread)),
+        unread=_in_order(
+            sources, [*unread, *unattributed, *(u for one in judged for u in one.unread)]
+        ),
         substances=tuple(one.entry for one in judged),
         findings=tuple(_numbered(judged)),
         rules=rulebook.entries(),
@@ -106,6 +105,12 @@ def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], 
         else:
             evidence.append(replace(entry, id=f"e{len(evidence) + 1}"))
     return evidence, unread
+
+
+def _in_order(sources: Sequence[Source], unread: Iterable[Unread]) -> tuple[Unread, ...]:
+    """By source as the dossier was walked, within a source as it came."""
+    order = {source.path: number for number, source in enumerate(sources)}
+    return tuple(sorted(unread, key=lambda entry: order.get(entry.place.source, -1)))
 
 
 def _numbered(judged: Iterable[Judged]) -> Iterator[Finding]:

@@ -6,7 +6,7 @@ The catalogue, the user's own folders of rules and the settings' overrides come 
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -34,6 +34,10 @@ class Rulebook:
     """The rules in force, in the order of their ids."""
 
     rules: tuple[Rule, ...]
+    # The same few kinds of evidence come again for every substance of a dossier.
+    _by_kinds: dict[frozenset[str] | None, tuple[Rule, ...]] = field(
+        default_factory=dict, init=False, repr=False, compare=False
+    )
 
     def entries(self) -> tuple[RuleEntry, ...]:
         """The rules as the report prints them."""
@@ -50,14 +54,17 @@ class Rulebook:
         """
         findings: list[Finding] = []
         unread: list[Unread] = []
-        for rule in self.rules:
-            if not rule.applies(case_needs):
-                continue
+        for rule in self._asked(case_needs):
             try:
                 findings.extend(_findings(rule, case))
             except Exception as trouble:
                 unread.append(_breakdown(rule, case, trouble))
         return Outcome(tuple(findings), tuple(unread))
+
+    def _asked(self, kinds: frozenset[str] | None) -> tuple[Rule, ...]:
+        if kinds not in self._by_kinds:
+            self._by_kinds[kinds] = tuple(rule for rule in self.rules if rule.applies(kinds))
+        return self._by_kinds[kinds]
 
 
 def load(settings: Settings, folders: Sequence[Path] = ()) -> Rulebook:
@@ -112,7 +119,7 @@ def _findings(rule: Rule, case: Case) -> Iterator[Finding]:
 
 def _breakdown(rule: Rule, case: Case, trouble: Exception) -> Unread:
     return Unread(
-        place=case.substance.readings[0].evidence.place,
+        place=case.substance.evidence[0].place,
         reason="check-failed",
         detail=(
             f"The rule {rule.id} could not be applied to the substance {case.substance.id}: its"

@@ -10,40 +10,42 @@ from __future__ import annotations
 
 import re
 import unicodedata
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Evidence, Unread
 from dossiercheck.settings import RegisterEntry
-from dossiercheck.stereo.alignment import SAME, align
-from dossiercheck.stereo.structure import Structure
+
+
+@dataclass(frozen=True, slots=True)
+class Identity:
+    """What a structure is, as text: canonical SMILES without and with stereo, and the kind of
+    stereo (`Structure.kind`). Two equal ones are one stereoisomer."""
+
+    flat: str
+    smiles: str
+    kind: str
 
 
 @dataclass(eq=False, slots=True)
 class Substance:
-    """`readings` in the order of the dossier; `attribution` gives the reason for each evidence
+    """`evidence` in the order of the dossier; `attribution` gives the reason for each evidence
     id; `role` is what the register says it is for."""
 
     id: str
     label: str
-    readings: list[Reading] = field(default_factory=list)
+    evidence: list[Evidence] = field(default_factory=list)
     attribution: dict[str, str] = field(default_factory=dict)
     role: str = ""
 
-    def add(self, reading: Reading, reason: str) -> None:
-        """Attribute one reading."""
-        self.readings.append(reading)
-        self.attribution[reading.evidence.id] = reason
+    def add(self, said: Evidence, reason: str) -> None:
+        """Attribute one evidence."""
+        self.evidence.append(said)
+        self.attribution[said.id] = reason
 
-    @property
-    def evidence(self) -> tuple[Evidence, ...]:
-        """The evidence attributed, in the order of the dossier."""
-        return tuple(reading.evidence for reading in self.readings)
 
-    def structures(self) -> Iterable[Structure]:
-        """The structures already attributed, names included."""
-        return (r.structure for r in self.readings if r.structure is not None)
+Survey = Callable[[Sequence[Substance]], Sequence[frozenset[Identity]]]
 
 
 def key_of(label: str) -> str:
@@ -52,120 +54,111 @@ def key_of(label: str) -> str:
     return re.sub(r"[\W_]+", "", plain)
 
 
+def identities(readings: Sequence[Reading]) -> frozenset[Identity]:
+    """What the structures among the readings are."""
+    return frozenset(
+        Identity(r.structure.flat, r.structure.smiles, r.structure.kind)
+        for r in readings
+        if r.structure is not None
+    )
+
+
 def attribute(
-    readings: Sequence[Reading], register: Sequence[RegisterEntry] = ()
+    evidence: Sequence[Evidence], register: Sequence[RegisterEntry], survey: Survey
 ) -> tuple[list[Substance], list[Unread]]:
-    """Sort readings into substances, in the order in which these first appear."""
+    """Sort evidence into substances, in the order in which these first appear.
+
+    `survey` interprets the evidence of substances; it is asked only where something stands
+    without a label.
+    """
     known = {key_of(name): entry for entry in register for name in (entry.id, *entry.aliases)}
     found: dict[str, Substance] = {}
-    homes: dict[str, Substance] = {}  # by group
-    homeless: list[list[Reading]] = []
-    for group in _groups(readings):
-        label = next((r.evidence.label for r in group if r.evidence.label), "")
+    homeless: list[Substance] = []
+    for group in _groups(evidence):
+        label = next((said.label for said in group if said.label), "")
         key = key_of(label)
         if not key:
-            homeless.append(group)
+            home = Substance("", _title(group))
+            for said in group:
+                home.add(said, "without a label; taken as a substance of its own")
+            homeless.append(home)
             continue
         entry = known.get(key)
         title = entry.id if entry else label
-        home = found.get(key_of(title))
-        if home is None:
-            home = Substance("", title, role=entry.role if entry else "")
-            found[key_of(title)] = home
-        for reading in group:
-            home.add(reading, _reason(reading, label, title))
-        homes[group[0].evidence.group] = home
+        home = found.setdefault(
+            key_of(title), Substance("", title, role=entry.role if entry else "")
+        )
+        for said in group:
+            home.add(said, _reason(said, label, title))
     substances = list(found.values())
-    unread = _settle(homeless, substances)
-    order = {reading.evidence.id: number for number, reading in enumerate(readings)}
+    unread = list(_settle(homeless, substances, survey)) if homeless else []
+    order = {said.id: number for number, said in enumerate(evidence)}
     for home in substances:
-        home.readings.sort(key=lambda reading: order[reading.evidence.id])
-    substances.sort(key=lambda home: order[home.readings[0].evidence.id])
+        home.evidence.sort(key=lambda said: order[said.id])
+    substances.sort(key=lambda home: order[home.evidence[0].id])
     for number, home in enumerate(substances, 1):
         home.id = f"s{number}"
     return substances, unread
 
 
-def _groups(readings: Sequence[Reading]) -> list[list[Reading]]:
-    groups: dict[str, list[Reading]] = {}
-    for reading in readings:
-        said = reading.evidence
-        groups.setdefault(said.group or f"alone {said.id}", []).append(reading)
+def _groups(evidence: Sequence[Evidence]) -> list[list[Evidence]]:
+    groups: dict[str, list[Evidence]] = {}
+    for said in evidence:
+        groups.setdefault(said.group or f"alone {said.id}", []).append(said)
     return list(groups.values())
 
 
-def _reason(reading: Reading, label: str, title: str) -> str:
-    own = reading.evidence.label
-    called = f"called “{own or label}”"
-    if not own:
+def _reason(said: Evidence, label: str, title: str) -> str:
+    called = f"called “{said.label or label}”"
+    if not said.label:
         called = f"stands together with what is called “{label}”"
     return called if key_of(label) == key_of(title) else f"{called}, in the register “{title}”"
 
 
-def _settle(homeless: list[list[Reading]], substances: list[Substance]) -> list[Unread]:
+def _settle(
+    homeless: Sequence[Substance], substances: list[Substance], survey: Survey
+) -> Iterator[Unread]:
     """Give evidence without a label a home by what it says, or a substance of its own."""
-    by_constitution: dict[str, list[Substance]] = {}
-    if homeless:
-        for home in substances:
-            for flat in {structure.flat for structure in home.structures()}:
-                by_constitution.setdefault(flat, []).append(home)
-    unread: list[Unread] = []
-    for group in homeless:
-        structure = next((r.structure for r in group if r.structure is not None), None)
-        alone = not group[0].evidence.group
-        candidates = by_constitution.get(structure.flat, []) if structure is not None else []
-        exact = [home for home in candidates if structure and _says_the_same(structure, home)]
+    surveyed = survey([*substances, *homeless])
+    by_flat: dict[str, list[tuple[Substance, Identity]]] = {}
+
+    def enter(home: Substance, seen: frozenset[Identity]) -> None:
+        for identity in sorted(seen, key=lambda one: (one.smiles, one.kind)):
+            by_flat.setdefault(identity.flat, []).append((home, identity))
+
+    for home, seen in zip(substances, surveyed, strict=False):
+        enter(home, seen)
+    for group, seen in zip(homeless, surveyed[len(substances) :], strict=True):
+        alone = not group.evidence[0].group
+        likely = [entry for identity in seen for entry in by_flat.get(identity.flat, [])]
+        exact = {id(home): home for home, identity in likely if seen == {identity}}
         if len(exact) == 1 or (exact and alone):
-            for reading in group:
-                exact[0].add(reading, "without a label; says exactly what this substance is")
-        elif alone and candidates:
-            said = group[0].evidence
-            names = " or ".join(f"“{home.label}”" for home in candidates[:3])
-            unread.append(
-                Unread(
-                    said.place,
-                    "not-attributed",
-                    f"has the constitution of {names} but another configuration, and the text"
-                    " does not say of which substance it speaks",
-                    said.text,
-                )
-            )
-        elif structure is not None or not alone:
-            home = Substance("", _title(group))
-            for reading in group:
-                home.add(reading, "without a label; taken as a substance of its own")
-            substances.append(home)
-            if structure is not None:
-                by_constitution.setdefault(structure.flat, []).append(home)
+            target = next(iter(exact.values()))
+            for said in group.evidence:
+                target.add(said, "without a label; says exactly what this substance is")
+        elif alone and likely:
+            yield _nobody(group.evidence[0], [home.label for home, _ in likely])
         else:
-            home = Substance("", _title(group))
-            home.add(group[0], "without a label and not understood")
-            substances.append(home)
-    return unread
+            substances.append(group)
+            enter(group, seen)
 
 
-def _says_the_same(structure: Structure, home: Substance) -> bool:
-    """No unit opposite and none silent on either side, against some structure of the home."""
-    for other in home.structures():
-        if other.flat != structure.flat:
-            continue
-        if other.kind != structure.kind:
-            continue
-        found = align(other, structure)
-        if not found.doubt and found.count(SAME) == len(found.verdicts):
-            return True
-    return False
+def _nobody(said: Evidence, labels: Sequence[str]) -> Unread:
+    names = " or ".join(f"“{label}”" for label in list(dict.fromkeys(labels))[:3])
+    return Unread(
+        said.place,
+        "not-attributed",
+        f"has the constitution of {names} but not the same configuration, and the text does not"
+        " say of which substance it speaks",
+        said.text,
+    )
 
 
-def _title(group: list[Reading]) -> str:
-    said = group[0].evidence
+def _title(group: Sequence[Evidence]) -> str:
+    said = group[0]
     if said.group:
-        return f"{said.place.source}, {_short(str(said.place))}"
+        parts = str(said.place).split(", ")
+        kept = [part for part in parts if not part.startswith(("field", "column", "char"))]
+        return f"{said.place.source}, {', '.join(kept)}"
     text = " ".join(said.text.split())
     return text if len(text) <= 60 else f"{text[:57]}…"
-
-
-def _short(place: str) -> str:
-    """The record or row of a place, without the field."""
-    kept = [part for part in place.split(", ") if not part.startswith(("field", "column", "char"))]
-    return ", ".join(kept)

@@ -16,15 +16,14 @@ from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
 from dossiercheck.concordance import build_case, table
 from dossiercheck.interpretation import Reading, interpret
-from dossiercheck.model import Evidence, Finding, Grade, Role, SubstanceEntry, Unread
+from dossiercheck.model import Finding, Grade, Role, SubstanceEntry, Unread
 from dossiercheck.names.parser import NameParser
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.stereo.drawing import drawing_of
-from dossiercheck.substances import Substance
+from dossiercheck.substances import Identity, Substance, identities
 
-PIECE = 200
+PIECE = 100
 
-_In = TypeVar("_In", Evidence, Substance)
 _Out = TypeVar("_Out")
 
 
@@ -38,7 +37,12 @@ class Judged:
 
 
 class Workers:
-    """Interprets and judges; a context manager that ends its processes."""
+    """Interprets and judges substances; a context manager that ends its processes.
+
+    What a name or a drawing was understood as lives only while its substance is judged: a
+    dossier of forty thousand substances needs no more memory for structures than one of a
+    hundred.
+    """
 
     def __init__(
         self,
@@ -78,20 +82,20 @@ class Workers:
         else:
             _end()
 
-    def interpret(self, evidence: Sequence[Evidence]) -> list[Reading]:
-        """Understand every evidence, in order."""
-        return self._spread("understanding", _interpret, evidence, _lost_evidence)
+    def survey(self, substances: Sequence[Substance]) -> list[frozenset[Identity]]:
+        """What the structures of each substance are, in order."""
+        return self._spread("surveying", _survey, substances, lambda _: frozenset())
 
     def judge(self, substances: Sequence[Substance]) -> list[Judged]:
-        """Build each substance's concordance and apply the rules, in order."""
-        return self._spread("judging", _judge, substances, _lost_substance)
+        """Interpret each substance, build its concordance and apply the rules, in order."""
+        return self._spread("judging", _judge, substances, _lost)
 
     def _spread(
         self,
         stage: str,
-        function: Callable[[Sequence[_In]], list[_Out]],
-        things: Sequence[_In],
-        lost: Callable[[_In], _Out],
+        function: Callable[[Sequence[Substance]], list[_Out]],
+        things: Sequence[Substance],
+        lost: Callable[[Substance], _Out],
     ) -> list[_Out]:
         pieces = [things[start : start + PIECE] for start in range(0, len(things), PIECE)]
         results: list[_Out] = []
@@ -106,7 +110,7 @@ class Workers:
         return results
 
     def _start(
-        self, function: Callable[[Sequence[_In]], list[_Out]], piece: Sequence[_In]
+        self, function: Callable[[Sequence[Substance]], list[_Out]], piece: Sequence[Substance]
     ) -> ProcessFuture[Any]:
         assert self._pool is not None
         return self._pool.schedule(function, args=(piece,))
@@ -114,9 +118,9 @@ class Workers:
     def _collect(
         self,
         future: ProcessFuture[Any],
-        function: Callable[[Sequence[_In]], list[_Out]],
-        piece: Sequence[_In],
-        lost: Callable[[_In], _Out],
+        function: Callable[[Sequence[Substance]], list[_Out]],
+        piece: Sequence[Substance],
+        lost: Callable[[Substance], _Out],
     ) -> list[_Out]:
         """A piece's results; where its process died, one thing at a time, so that only the one
         that kills it is lost, and is listed as lost."""
@@ -151,60 +155,67 @@ def _end() -> None:
     _State.parser = _State.rulebook = None
 
 
-def _interpret(evidence: Sequence[Evidence]) -> list[Reading]:
+def _readings(substances: Sequence[Substance]) -> list[list[Reading]]:
+    """The readings of each substance; all names of the piece go to the parser together."""
     assert _State.parser is not None
-    return interpret(evidence, _State.parser)
+    together = iter(interpret([said for one in substances for said in one.evidence], _State.parser))
+    return [[next(together) for _ in one.evidence] for one in substances]
+
+
+def _survey(substances: Sequence[Substance]) -> list[frozenset[Identity]]:
+    return [identities(readings) for readings in _readings(substances)]
 
 
 def _judge(substances: Sequence[Substance]) -> list[Judged]:
-    return [_judge_safely(substance) for substance in substances]
+    return [
+        _judge_safely(substance, readings)
+        for substance, readings in zip(substances, _readings(substances), strict=True)
+    ]
 
 
-def _judge_safely(substance: Substance) -> Judged:
+def _judge_safely(substance: Substance, readings: list[Reading]) -> Judged:
     """A substance that the program stumbles over is listed as unread; the others go on."""
     try:
-        return _judge_one(substance)
+        return _judge_one(substance, readings)
     except Exception as error:
         said = f"judging stopped with {type(error).__name__}: {error}".splitlines()[0]
         return _not_judged(substance, "judging-failed", said)
 
 
-def _judge_one(substance: Substance) -> Judged:
+def _judge_one(substance: Substance, readings: list[Reading]) -> Judged:
     assert _State.parser is not None
     assert _State.rulebook is not None
-    case = build_case(substance, _State.parser)
+    case = build_case(substance, readings, _State.parser)
     outcome = _State.rulebook.judge(case, case.kinds)
     drawn = any(finding.grade is not Grade.REMARK for finding in outcome.findings)
     entry = SubstanceEntry(
         substance.id,
         substance.label,
-        substance.evidence,
+        tuple(substance.evidence),
         substance.attribution,
         table(case),
         drawing_of(case.structure) if drawn and case.structure else None,
     )
-    doubts = tuple(
-        Unread(
-            reading.evidence.place,
-            "descriptors-undetermined",
-            f"its descriptors could not be computed: {reading.structure.doubt}",
-            reading.evidence.text if reading.evidence.role is not Role.MOLFILE else "",
-        )
-        for reading in substance.readings
-        if reading.structure is not None and reading.structure.doubt
-    )
-    return Judged(entry, outcome.findings, (*outcome.unread, *doubts))
+    unread = [entry for reading in readings for entry in _not_understood(reading)]
+    return Judged(entry, outcome.findings, (*unread, *outcome.unread))
 
 
-def _lost_evidence(said: Evidence) -> Reading:
-    return Reading(said, reason="worker-died", refusal="the process that read it died on it")
+def _not_understood(reading: Reading) -> list[Unread]:
+    if reading.unread:
+        return [reading.unread]
+    if reading.structure is None or not reading.structure.doubt:
+        return []
+    said = reading.evidence
+    detail = f"its descriptors could not be computed: {reading.structure.doubt}"
+    text = said.text if said.role is not Role.MOLFILE else ""
+    return [Unread(said.place, "descriptors-undetermined", detail, text)]
 
 
-def _lost_substance(substance: Substance) -> Judged:
+def _lost(substance: Substance) -> Judged:
     return _not_judged(substance, "worker-died", "the process that judged it died on it")
 
 
 def _not_judged(substance: Substance, reason: str, detail: str) -> Judged:
-    said = substance.evidence
+    said = tuple(substance.evidence)
     entry = SubstanceEntry(substance.id, substance.label, said, substance.attribution, None)
     return Judged(entry, (), (Unread(said[0].place, reason, f"{substance.label}: {detail}"),))

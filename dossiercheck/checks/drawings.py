@@ -114,7 +114,7 @@ def _said_elsewhere(case: Case, reading: Reading) -> set[int]:
 
 
 def _said_to_be_mixture(case: Case) -> bool:
-    for reading in case.substance.readings:
+    for reading in case.readings:
         if reading.name is not None and reading.name.stereo_kind == "racemic":
             return True
         if reading.statement is not None and reading.statement.kind == "racemic":

@@ -14,7 +14,7 @@ from dossiercheck.names.reading import Fault
 
 
 def _faults(case: Case, slug: str) -> Iterator[tuple[Reading, Fault]]:
-    for reading in case.substance.readings:
+    for reading in case.readings:
         if reading.name is not None:
             for fault in reading.name.faults:
                 if fault.slug == slug:
@@ -137,7 +137,7 @@ def lost_space(case: Case, params: Params) -> Iterator[Observation]:
 @check(needs=("name",), fields=("part", "detail"))
 def name_not_interpretable(case: Case, params: Params) -> Iterator[Observation]:
     """The name led to no structure, so nothing was compared with it."""
-    for reading in case.substance.readings:
+    for reading in case.readings:
         if reading.evidence.role is not Role.NAME or not reading.refusal:
             continue
         span = reading.name.refusal.span if reading.name and reading.name.refusal else None
