@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 from rdkit import Chem
+from rdkit.Chem import rdqueries
 
 from dossiercheck.stereo.graph import HYDROGEN, LONE_PAIR, Centre, Geometry
 from dossiercheck.stereo.graph import same_centre as _same_centre
 from dossiercheck.stereo.graph import same_geometry as _same_geometry
 from dossiercheck.stereo.structure import Structure, geometry, marked_atoms, stereo_bonds
 
+_CHARGED = rdqueries.FormalChargeEqualsQueryAtom(0, negate=True)
 _CHIRAL = Chem.SubstructMatchParameters()
 _CHIRAL.useChirality = True
 _CHIRAL.maxMatches = 1
@@ -21,6 +23,9 @@ def same_stereoisomer(one: Structure, two: Structure) -> dict[int, int]:
     and neither side may carry a mark that the other lacks. {} means "look closer".
     """
     if one.mol.GetNumAtoms() != two.mol.GetNumAtoms() or one.hill != two.hill:
+        return {}
+    # The library lets an uncharged atom match a charged one: a zwitterion is not its neutral form.
+    if len(one.mol.GetAtomsMatchingQuery(_CHARGED)) != len(two.mol.GetAtomsMatchingQuery(_CHARGED)):
         return {}
     if one.doubt:
         return {}

@@ -76,8 +76,7 @@ class ToyCase:
 
     @property
     def substance(self) -> Any:
-        reading = SimpleNamespace(evidence=SimpleNamespace(place=PLACE))
-        return SimpleNamespace(id="s1", readings=[reading])
+        return SimpleNamespace(id="s1", evidence=[SimpleNamespace(place=PLACE)])
 
 
 def read(write: Write, text: str, name: str = "name/two-heads") -> rulefile.Rule:
