@@ -85,10 +85,17 @@
   };
   all("table.sortable").forEach((table) => {
     all("thead th", table).forEach((heading, column) => {
-      const button = document.createElement("button");
-      button.type = "button";
+      // Not a <button>: browsers leave those out of the headings they repeat on printed pages.
+      const button = document.createElement("span");
+      button.setAttribute("role", "button");
+      button.tabIndex = 0;
       button.textContent = heading.textContent;
       button.addEventListener("click", () => sortBy(table, column, heading));
+      button.addEventListener("keydown", (event) => {
+        if (event.key !== "Enter" && event.key !== " ") return;
+        event.preventDefault();
+        sortBy(table, column, heading);
+      });
       heading.replaceChildren(button);
     });
   });

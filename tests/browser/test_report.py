@@ -127,7 +127,8 @@ def test_tables_sort_by_their_headings(page: Any) -> None:
     heading.click()
     shown = [int(one.replace(",", "")) for one in table.locator("td.number").all_inner_texts()]
     assert shown == sorted(sizes)
-    heading.click()
+    heading.focus()
+    page.keyboard.press("Enter")
     shown = [int(one.replace(",", "")) for one in table.locator("td.number").all_inner_texts()]
     assert shown == sorted(sizes, reverse=True)
     assert table.locator("th[aria-sort=descending]").count() == 1
@@ -161,6 +162,19 @@ def test_print_opens_folds_and_repeats_the_caution(
     for number, sheet in enumerate(sheets, 1):
         assert "Every finding must be confirmed by a qualified reviewer" in sheet
         assert f"{number} / {len(sheets)}" in sheet
+    page.context.close()
+
+
+def test_headings_of_a_table_are_repeated_on_each_printed_page(
+    browser: Any, tmp_path: Path
+) -> None:
+    report.write(sample.many(300), tmp_path / "many", ["html"])
+    page = opened(browser, tmp_path, "many")
+    sheets = pdf_text(page, tmp_path / "out.pdf")
+    rows = [one for one in sheets if "Substance 1" in one or "Substance 2" in one]
+    assert len(rows) > 3
+    for sheet in rows:
+        assert "First place" in sheet
     page.context.close()
 
 
