@@ -7,7 +7,9 @@ and nothing else: no request leaves it, and no text of a dossier can run or rest
 from __future__ import annotations
 
 from base64 import b64encode
+from functools import lru_cache
 from hashlib import sha256
+from pathlib import Path
 from typing import Any
 
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
@@ -33,6 +35,23 @@ def render(
     folder = assets.templates()
     style = (folder / _STYLE).read_text(encoding="utf-8")
     script = (folder / _SCRIPT).read_text(encoding="utf-8")
+    text = (
+        _environment(folder)
+        .get_template(_TEMPLATE)
+        .render(
+            document=document,
+            page=page(document, full_findings, full_substances),
+            policy=_policy(style, script),
+            style=Markup(style),
+            script=Markup(script),
+        )
+    )
+    return text.encode("utf-8")
+
+
+@lru_cache(maxsize=4)
+def _environment(folder: Path) -> Environment:
+    """The templates of that folder, compiled once."""
     environment = Environment(
         loader=FileSystemLoader(folder),
         autoescape=True,
@@ -46,14 +65,7 @@ def render(
         verbatim=_verbatim, structure=_structure, number_of=number_of, thousands=_thousands
     )
     environment.tests["long"] = is_long
-    text = environment.get_template(_TEMPLATE).render(
-        document=document,
-        page=page(document, full_findings, full_substances),
-        policy=_policy(style, script),
-        style=Markup(style),
-        script=Markup(script),
-    )
-    return text.encode("utf-8")
+    return environment
 
 
 def _policy(style: str, script: str) -> str:

@@ -7,6 +7,7 @@ difference between two runs short.
 from __future__ import annotations
 
 import json
+from collections.abc import Iterator
 from typing import Any
 
 from dossiercheck.report.document import Json
@@ -16,16 +17,28 @@ FILE = "findings.json"
 
 def render(document: Json) -> bytes:
     """The document as UTF-8 with a line feed at its end; the same bytes for the same document."""
-    parts = [f"{_text(key)}: {_member(value)}" for key, value in document.items()]
-    text = "{\n" + ",\n".join(parts) + "\n}\n"
+    # Piece by piece: a large document's text and its bytes need not be in memory together.
+    return b"".join(_pieces(document))
+
+
+def _pieces(document: Json) -> Iterator[bytes]:
+    before = b"{\n"
+    for key, value in document.items():
+        yield before + _bytes(key) + b": "
+        if isinstance(value, list) and value:
+            yield b"[\n" + _bytes(value[0])
+            for member in value[1:]:
+                yield b",\n" + _bytes(member)
+            yield b"\n]"
+        else:
+            yield _bytes(value)
+        before = b",\n"
+    yield b"\n}\n"
+
+
+def _bytes(value: Any) -> bytes:
     # Half a surrogate pair has no UTF-8; this handler writes it as JSON's own escape, \udc80.
-    return text.encode("utf-8", errors="backslashreplace")
-
-
-def _member(value: Any) -> str:
-    if isinstance(value, list) and value:
-        return "[\n" + ",\n".join(map(_text, value)) + "\n]"
-    return _text(value)
+    return _text(value).encode("utf-8", errors="backslashreplace")
 
 
 _text = json.JSONEncoder(ensure_ascii=False, allow_nan=False, check_circular=False).encode

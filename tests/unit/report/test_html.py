@@ -5,6 +5,8 @@ import json
 import re
 
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 from lxml import etree
 from lxml import html as parser
 
@@ -12,6 +14,7 @@ from dossiercheck.model import Review
 from dossiercheck.report import html, jsonfile
 from dossiercheck.report.document import document
 from dossiercheck.report.view import page
+from dossiercheck.report.visible import visible
 from tests.unit.report import sample
 
 
@@ -192,6 +195,23 @@ def test_hostile_text_stays_text() -> None:
     for control in "\u202e\u202c\u200b\x1b":
         assert control not in shown
         assert f"U+{ord(control):04X}" in shown
+
+
+@settings(max_examples=60, deadline=None)
+@given(st.text(st.characters() | st.sampled_from("<>&\"'/-{}%\u202e"), min_size=1))
+def test_any_text_is_shown_as_itself(anything: str) -> None:
+    exhibit = sample.replace(sample.FINDINGS[4].exhibits[0], text=anything, marks=())
+    finding = sample.replace(
+        sample.FINDINGS[4], message=anything, exhibits=(exhibit,), rule=anything
+    )
+    text = rendered(sample.replace(sample.review(), findings=(finding,)))
+    tree = parser.document_fromstring(text)
+    assert len(list(tree.iter("script"))) == len(list(tree.iter("style"))) == 1
+    expected = visible(anything)
+    if expected.strip():
+        assert "".join(tree.find(".//article//h4").itertext()) == expected
+        quoted = tree.find(".//article//figure/p[@translate='no']")
+        assert "".join(quoted.itertext()) == expected
 
 
 def test_finding_on_an_unknown_substance_and_rule_is_still_shown() -> None:
