@@ -19,6 +19,9 @@ _NOTHING = 4294967295  # the library's "no atom here" among controlling atoms
 # Labels and marks must survive the way between processes.
 Chem.SetDefaultPickleProperties(Chem.PropertyPickleOptions.AllProps)
 
+_ALL_HYDROGENS = Chem.RemoveHsParameters()
+_ALL_HYDROGENS.removeDefiningBondStereo = True
+_DOUBLE_BONDS = Chem.MolFromSmarts("[!D1]=[!D1]")
 _MARKED = rdqueries.HasChiralTagQueryAtom()
 _SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
 
@@ -189,7 +192,8 @@ class Structure:
     @cached_property
     def flat(self) -> str:
         """Canonical SMILES without stereo: equal where the constitution is the same."""
-        bare = Chem.RemoveHs(Chem.Mol(self.mol), sanitize=False)
+        # A hydrogen that is drawn to show the side of an =N–H is a hydrogen like any other.
+        bare = Chem.RemoveHs(self.mol, _ALL_HYDROGENS, sanitize=False)
         return str(Chem.MolToSmiles(bare, isomericSmiles=False))
 
     @cached_property
@@ -250,7 +254,11 @@ def stereo_bonds(structure: Structure) -> list[int]:
     """The double bonds with a geometry."""
     if not structure.dimension and not {"/", "\\"} & set(structure.text):
         return []
-    return [bond.GetIdx() for bond in structure.mol.GetBonds() if bond.GetStereo() in _SHOWN]
+    bonds = (
+        structure.mol.GetBondBetweenAtoms(*ends)
+        for ends in structure.mol.GetSubstructMatches(_DOUBLE_BONDS)
+    )
+    return [bond.GetIdx() for bond in bonds if bond.GetStereo() in _SHOWN]
 
 
 def is_pyramidal_nitrogen(structure: Structure, index: int) -> bool:
