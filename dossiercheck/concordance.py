@@ -164,6 +164,8 @@ def _pair(reference: Reading, reading: Reading, parser: NameParser) -> Pair:
     assert reference.structure is not None
     assert reading.structure is not None
     found = al.align(reference.structure, reading.structure)
+    if reference.structure.dimension == 2 and not reading.structure.dimension:
+        reading.like = (reference.structure, found.mapping)
     views = tuple(_view(verdict, reading.structure) for verdict in found.verdicts)
     if found.doubt:
         views = tuple(

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from dossiercheck.language.statements import Statement, read_statement
@@ -25,6 +25,8 @@ class Reading:
     `structure` is what a drawing, notation or name says; `name` the details of a name;
     `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim.
     `refusal` says why nothing was understood, "" where something was; `reason` is its slug.
+    `like` is the drawing it was laid on and the mapping from there, so that both can be shown in
+    one orientation.
     """
 
     evidence: Evidence
@@ -35,6 +37,7 @@ class Reading:
     statement: Statement | None = None
     reason: str = ""
     refusal: str = ""
+    like: tuple[Structure, Mapping[int, int]] | None = None
 
     @property
     def kind(self) -> Kind:

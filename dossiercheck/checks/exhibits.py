@@ -34,7 +34,7 @@ def exhibit(
         title = "Coordinates"
     drawing = None
     if draw and reading.structure is not None:
-        drawing = drawing_of(reading.structure, atoms)
+        drawing = drawing_of(reading.structure, atoms, reading.like)
     text = said.text if said.role is not Role.MOLFILE else ""
     kept = sorted({span for span in spans if span})
     return Exhibit(said.id, title, text, said.place, tuple(kept), drawing, note)
