@@ -6,6 +6,7 @@ and nothing else: no request leaves it, and no text of a dossier can run or rest
 
 from __future__ import annotations
 
+import re
 from base64 import b64encode
 from functools import lru_cache
 from hashlib import sha256
@@ -24,6 +25,9 @@ from dossiercheck.report.view import FULL_FINDINGS, FULL_SUBSTANCES, is_long, pa
 from dossiercheck.report.visible import runs, visible
 
 FILE = "report.html"
+
+# Hyphen-minus, the hyphens and dashes of Unicode's general punctuation, and the minus sign.
+_HYPHEN = re.compile("[-\u2010-\u2013\u2212]")
 
 _TEMPLATE, _STYLE, _SCRIPT = "report.html.j2", "report.css", "report.js"
 
@@ -101,7 +105,7 @@ def _verbatim(text: str, marks: list[list[int]] | None = None, breaks: bool = Tr
         if hidden:
             shown = Markup('<span class="codepoint">{}</span>').format(piece)
         elif breaks:
-            shown = shown.replace("-", Markup("-<wbr>"))
+            shown = Markup(_HYPHEN.sub(r"\g<0><wbr>", str(shown)))
         parts.append(Markup("<mark>{}</mark>").format(shown) if marked else shown)
     return Markup("").join(parts)
 

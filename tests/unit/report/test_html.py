@@ -114,6 +114,15 @@ def test_names_may_break_after_a_hyphen_and_nowhere_else(text: str) -> None:
     assert "<wbr>" not in "".join(re.findall(r"<pre.*?</pre>", text, re.DOTALL))
 
 
+def test_typographic_hyphens_break_too() -> None:
+    exhibit = sample.replace(
+        sample.FINDINGS[4].exhibits[0], text="2\u2010a\u2011b\u2212c", marks=()
+    )
+    finding = sample.replace(sample.FINDINGS[4], exhibits=(exhibit,))
+    text = rendered(sample.replace(sample.review(), findings=(finding,)))
+    assert ">2\u2010<wbr>a\u2011<wbr>b\u2212<wbr>c</p>" in text
+
+
 def test_reference_is_called_so_where_the_constitution_does_not_list_it() -> None:
     bare = sample.replace(sample.CLEAN.concordance, constitution={"E13": "same"})
     entry = sample.replace(sample.CLEAN, concordance=bare)
