@@ -150,6 +150,10 @@ def _end_own(process: subprocess.Popen[bytes], owner: int) -> None:
         _end(process)
 
 
+def _sendable(name: str) -> bool:
+    return name.isascii() and name.isprintable()
+
+
 class NameParser:
     """Parses names in order through one child process, started when first needed.
 
@@ -212,7 +216,7 @@ class NameParser:
         if len(name) > self.longest:
             said = f"the name has {len(name)} characters, more than {self.longest}"
             return Parse(name, None, ("too-long", said), "too-long")
-        if not name.strip() or name != name.strip() or not all(" " <= c <= "~" for c in name):
+        if not name.strip() or name != name.strip() or not _sendable(name):
             said = "the name is empty or has characters that the parser cannot be sent"
             return Parse(name, None, ("not-sent", said), "not-sent")
         return None

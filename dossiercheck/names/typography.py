@@ -148,6 +148,8 @@ def foreign(cleaned: Cleaned) -> tuple[str, int] | None:
     The name parser drops a NUL, takes a tabulator for the end of the name and a carriage
     return for the start of the next one; such a name is not to be sent.
     """
+    if cleaned.text.isascii() and cleaned.text.isprintable():
+        return None
     for character, place in zip(cleaned.text, cleaned.offsets, strict=True):
         if not " " <= character <= "~":
             return character, place
