@@ -50,15 +50,14 @@ def _bereft(case: Case, pair: Pair, fault: Fault) -> list:  # type: ignore[type-
 
 
 def _is_unit(case: Case, reading: Reading, fault: Fault) -> bool:
-    """Whether the reference has a unit where the name parser sees none, or may have it: then the
-    descriptor was judged by its letter, and the concordance says how."""
+    """Whether the descriptor was judged by its letter after all: the reference has a unit where
+    the name parser sees none, or may have it. The concordance then says how."""
     assert reading.name is not None
-    span = reading.name.descriptors[fault.descriptor].span if fault.descriptor is not None else None
+    if fault.descriptor is None:
+        return False
+    span = reading.name.descriptors[fault.descriptor].span
     return any(
-        view.descriptor and (set(view.other) & set(fault.atoms) or (span and view.span == span))
-        for pair in case.pairs
-        if pair.reading is reading
-        for view in pair.views
+        view.span == span for pair in case.pairs if pair.reading is reading for view in pair.views
     )
 
 

@@ -91,8 +91,13 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         name = rewritten(text, descriptors, drop=rest.dropped, spaces=spaces)
         rest = Rest(parser.parse([name])[0], rest.dropped)
         reading = replace(reading, respaced=spaces)
+    nowhere = frozenset(i for i, d in enumerate(descriptors) if d.locant == "0")
+    if nowhere and rest.parse.smiles is None:
+        # The parser does not even take "0R" for a descriptor; no numbering begins at nought.
+        name = rewritten(text, descriptors, drop=rest.dropped | nowhere, spaces=spaces)
+        rest = Rest(parser.parse([name])[0], rest.dropped | nowhere)
     first = rest
-    if is_stereo_refusal(rest.parse):
+    if rest.parse.smiles is None and not _NOT_PARSED.search(" ".join(rest.parse.messages)):
         rest = least_left_out(text, descriptors, rest, parser, reading.respaced)
     rest = misplaced.left_out(reading, rest, parser)
     messages = tuple(dict.fromkeys((*first.parse.messages, *rest.parse.messages)))

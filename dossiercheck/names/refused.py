@@ -67,6 +67,10 @@ def is_stereo_refusal(parse: Parse) -> bool:
     )
 
 
+def _is_refusal(parse: Parse) -> bool:
+    return parse.smiles is None and not parse.stopped
+
+
 def least_left_out(
     text: str,
     descriptors: Sequence[PrintedDescriptor],
@@ -75,19 +79,28 @@ def least_left_out(
     spaces: Sequence[int] = (),
 ) -> Rest:
     """Leave out descriptors one after another, those blamed by the parser first, until the
-    name is read or none is left."""
+    name is read or none is left.
+
+    The parser sometimes blames something else, when it has fallen back on another way to split
+    the name; that the name is read without any descriptor then says what it was.
+    """
 
     def ask(drops: Sequence[frozenset[int]]) -> list[Rest]:
         names = [rewritten(text, descriptors, drop=drop, spaces=spaces) for drop in drops]
         return [Rest(p, d) for p, d in zip(parser.parse(names), drops, strict=True)]
 
+    refuses = is_stereo_refusal
+    if not refuses(rest.parse):
+        if not ask([frozenset(range(len(descriptors)))])[0].parse.smiles:
+            return rest
+        refuses = _is_refusal
     astray = frozenset(i for i, d in enumerate(descriptors) if speaks_of_hetero(text, d))
-    if is_stereo_refusal(rest.parse) and astray - rest.dropped:
+    if refuses(rest.parse) and astray - rest.dropped:
         # A letter meant for phosphorus may have taken the place of a sound one further inside,
         # which the parser then blames.
         without = ask([rest.dropped | astray])[0]
         rest = without if without.parse.smiles else rest
-    while is_stereo_refusal(rest.parse) and len(rest.dropped) < len(descriptors):
+    while refuses(rest.parse) and len(rest.dropped) < len(descriptors):
         left = [i for i in range(len(descriptors)) if i not in rest.dropped]
         blamed = [i for i in left if _is_blamed(descriptors[i], rest.parse)] or left
         ordered = sorted(blamed, key=lambda i: _suspicion(text, descriptors, i))
