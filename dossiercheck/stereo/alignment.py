@@ -96,6 +96,7 @@ def _align_slowly(reference: Structure, other: Structure) -> Alignment:
     verdicts = _verdicts(reference, other, one, two, judged, mapped)
     if groups:
         verdicts = groups.settle(verdicts, mapped.mapping)
+    verdicts = _without_echoes(reference, other, verdicts)
     doubt = reference.doubt or other.doubt
     if not mapped.complete:
         doubt = "too symmetric to try every way of laying the structures on each other"
@@ -154,6 +155,29 @@ def _verdicts(
             )
         )
     return tuple(found)
+
+
+def _without_echoes(
+    reference: Structure, other: Structure, verdicts: tuple[Verdict, ...]
+) -> tuple[Verdict, ...]:
+    """Without silences that only echo an opposite unit elsewhere.
+
+    Turn one end of (2R,3r,4S)-pentane-2,3,4-triol round and C3 is no centre any more: there is
+    nothing that a name could say of it (IUPAC 2013, P-92.6).
+    """
+    if not any(v.state == OPPOSITE for v in verdicts):
+        return verdicts
+    kept = []
+    for verdict in verdicts:
+        side, atoms = other, verdict.other
+        if verdict.state == REFERENCE_SILENT:
+            side, atoms = reference, verdict.atoms
+        elif verdict.state != OTHER_SILENT:
+            kept.append(verdict)
+            continue
+        if any(frozenset(unit.atoms) == frozenset(atoms) for unit in side.undefined):
+            kept.append(verdict)
+    return tuple(kept)
 
 
 def _is_mirror(reference: Structure, other: Structure, verdicts: tuple[Verdict, ...]) -> bool:
