@@ -249,22 +249,61 @@ def _tied(
         shown = replace(
             view, shows=printed.text, locant=printed.locant or view.locant, span=printed.span
         )
-        letters = printed.text in _ABSOLUTE and bool(view.descriptor) and not relative
         fault = faults.get(index)
-        if letters and not (fault and fault.slug == "overrides-implied"):
-            equal = printed.text.upper() == view.descriptor.upper()
-            if equal != (view.state is State.AGREES) and view.state in (
-                State.AGREES,
-                State.DIFFERS,
-            ):
-                shown = replace(
-                    shown,
-                    state=State.UNDETERMINED,
-                    note=f"printed {printed.text}; recomputed {view.descriptor} on the reference; "
-                    f"the name parser's own ranking gives {view.shows or 'nothing'}",
-                )
+        if view.silent_side == "other":
+            shown = _by_letter(shown)
+        elif not relative and not (fault and fault.slug == "overrides-implied"):
+            shown = _cross_checked(shown, view.shows)
         result.append(shown)
-    return tuple(result)
+    return _loose_bonds(result, name)
+
+
+def _by_letter(view: UnitView) -> UnitView:
+    """A descriptor left out of the name's structure and yet tied: its letter alone decides."""
+    agrees = view.shows.upper() == view.descriptor.upper()
+    if view.shows not in _ABSOLUTE:
+        note = "the descriptor could not be held against the reference"
+        return replace(view, state=State.UNDETERMINED, silent_side="", note=note)
+    return replace(
+        view,
+        state=State.AGREES if agrees else State.DIFFERS,
+        silent_side="",
+        note="held against the reference by its letter alone",
+    )
+
+
+def _cross_checked(view: UnitView, computed: str) -> UnitView:
+    """Doubt where the structures say "opposite" and the letters "equal", or the reverse."""
+    if view.shows not in _ABSOLUTE or not view.descriptor:
+        return view
+    equal = view.shows.upper() == view.descriptor.upper()
+    if view.state not in (State.AGREES, State.DIFFERS) or equal == (view.state is State.AGREES):
+        return view
+    return replace(
+        view,
+        state=State.UNDETERMINED,
+        note=f"printed {view.shows}; recomputed {view.descriptor} on the reference; "
+        f"the name parser's own ranking gives {computed or 'nothing'}",
+    )
+
+
+def _loose_bonds(views: list[UnitView], name: NameReading) -> tuple[UnitView, ...]:
+    """An E or Z without a locant, which the parser did not put on a double bond of the reference
+    while one with that letter is left silent: it may speak of that one."""
+    settled = {view.span for view in views if view.state in (State.AGREES, State.DIFFERS)}
+    loose = {
+        d.span: d.text
+        for d in name.descriptors
+        if d.text in ("E", "Z") and not d.locant and d.span not in settled
+    }
+    note = "the descriptor has no locant and may speak of another double bond"
+    return tuple(
+        replace(view, state=State.UNDETERMINED, silent_side="", note=note)
+        if (view.silent_side == "other" and view.descriptor in loose.values())
+        or (view.silent_side == "reference" and view.span in loose)
+        else view
+        for view in views
+    )
 
 
 def _by_locant(view: UnitView, name: NameReading) -> UnitView:
@@ -283,14 +322,8 @@ def _by_locant(view: UnitView, name: NameReading) -> UnitView:
         if not loose and not set(view.other) & set(fault.atoms):
             continue
         shown = replace(view, shows=printed.text, locant=printed.locant, span=printed.span)
-        if loose or len(fault.atoms) > len(view.other) or printed.text not in _ABSOLUTE:
+        if loose or len(fault.atoms) > len(view.other):
             note = "the descriptor could not be tied to one unit"
             return replace(shown, state=State.UNDETERMINED, silent_side="", note=note)
-        agrees = printed.text.upper() == view.descriptor.upper()
-        return replace(
-            shown,
-            state=State.AGREES if agrees else State.DIFFERS,
-            silent_side="",
-            note="held against the reference by its letter alone",
-        )
+        return _by_letter(shown)
     return view

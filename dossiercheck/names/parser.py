@@ -11,6 +11,7 @@ from __future__ import annotations
 import importlib.util
 import os
 import queue
+import re
 import subprocess
 import threading
 import time
@@ -18,7 +19,7 @@ import weakref
 from collections import OrderedDict
 from collections.abc import Sequence
 from contextlib import suppress
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache
 from pathlib import Path
 from typing import Self
@@ -33,6 +34,7 @@ _FLAGS = (
     "-Xmx1g",
     "-Djava.awt.headless=true",
 )
+_AMIDINO = re.compile(r"aminoiminomethyl", re.IGNORECASE)
 _GREETING = "methane"
 _START_SECONDS = 60.0
 # Bytes sent and not yet answered. Below the smallest pipe buffer of the common systems, so that
@@ -150,6 +152,15 @@ def _end_own(process: subprocess.Popen[bytes], owner: int) -> None:
         _end(process)
 
 
+def _respelt(name: str) -> str:
+    """The name as the parser understands it rightly.
+
+    In index names of the older style "aminoiminomethyl" is H2N–C(=NH)–, today's carbamimidoyl
+    (IUPAC 2013, P-66.4.1.2.1); the parser takes it for H2N–N=CH–.
+    """
+    return _AMIDINO.sub("carbamimidoyl", name)
+
+
 def _sendable(name: str) -> bool:
     return name.isascii() and name.isprintable()
 
@@ -204,10 +215,10 @@ class NameParser:
                 answers[name] = self._known[name]
             else:
                 wanted.append(name)
-        for parse in self._ask_all(wanted):
-            answers[parse.name] = parse
+        for name, parse in zip(wanted, self._ask_all([_respelt(n) for n in wanted]), strict=True):
+            answers[name] = replace(parse, name=name)
             if not parse.stopped:
-                self._known[parse.name] = parse
+                self._known[name] = answers[name]
         while len(self._known) > self._remember:
             self._known.popitem(last=False)
         return [answers[name] for name in names]
