@@ -43,11 +43,18 @@ def compare_constitution(one: Structure, two: Structure) -> Constitution:
     """
     if one.flat == two.flat:
         return Constitution(SAME)
+    labels = _isotopes(one), _isotopes(two)
+    if labels[0] != labels[1]:
+        return Constitution(
+            DIFFERENT, f"isotopes: {labels[0] or 'none'} against {labels[1] or 'none'}"
+        )
     with quiet():
         parts = [Counter(_neutral(s.flat).split(".")) for s in (one, two)]
         if parts[0] == parts[1]:
             return Constitution(CHARGE, "drawn with other charges")
-        largest = [max(part, key=_weight) for part in parts]
+        # Part by part, so that an acid is found in its sodium salt.
+        alone = [Counter(_neutral(p) for p in s.flat.split(".")) for s in (one, two)]
+        largest = [max(part, key=_weight) for part in alone]
         if (len(parts[0]) > 1 or len(parts[1]) > 1) and (
             largest[0] == largest[1] or _mobile(*largest)
         ):
@@ -70,7 +77,17 @@ def _neutral(smiles: str) -> str:
         neutral = rdMolStandardize.Uncharger().uncharge(mol)
     except (RuntimeError, ValueError):
         return smiles
-    return str(Chem.MolToSmiles(neutral, isomericSmiles=False))
+    return str(Chem.MolToSmiles(neutral))
+
+
+def _isotopes(structure: Structure) -> str:
+    """The isotopes stated, with their numbers, as text."""
+    found = Counter(
+        f"{atom.GetIsotope()}{atom.GetSymbol()}"
+        for atom in structure.mol.GetAtoms()
+        if atom.GetIsotope()
+    )
+    return ", ".join(f"{number} × {label}" for label, number in sorted(found.items()))
 
 
 def _weight(smiles: str) -> tuple[int, int, str]:
@@ -82,7 +99,7 @@ def _weight(smiles: str) -> tuple[int, int, str]:
 
 
 def _mobile(one: str, two: str) -> bool:
-    """Equal formula, /c and /h layers of the standard InChI."""
+    """Equal formula, connections, hydrogens, charge and isotopes in the standard InChI."""
     layers = []
     for smiles in (one, two):
         mol = Chem.MolFromSmiles(smiles)
@@ -90,7 +107,7 @@ def _mobile(one: str, two: str) -> bool:
         if not inchi:
             return False
         parts = inchi.split("/")
-        layers.append(parts[1:2] + [part for part in parts[2:] if part[0] in "chqp"])
+        layers.append(parts[1:2] + [part for part in parts[2:] if part[0] in "chqpi"])
     return layers[0] == layers[1]
 
 

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import re
+import unicodedata
 from collections import Counter
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field
 from fractions import Fraction
 
@@ -15,8 +16,11 @@ from dossiercheck.stereo.weights import WEIGHTS
 
 _ELEMENT = re.compile(r"([A-Z][a-z]?)(\d*)")
 _ATOMS = re.compile(r"(?:\[(\d+)([A-Z][a-z]?)\]|([A-Z][a-z]?))(\d*)")
-_SUBSCRIPTS = str.maketrans("₀₁₂₃₄₅₆₇₈₉₊₋·•∙⋅*,−–", "0123456789+-......--")
-_CHARGE = re.compile(r"(?:\^?\{?(\d*)([+-])\}?|\(([+-])\)|([+-])(\d+))$")
+_SUBSCRIPTS = str.maketrans("₀₁₂₃₄₅₆₇₈₉₊₋·•∙⋅*,−–", "0123456789+-·····.--")
+_RAISED = re.compile("[⁰¹²³⁴⁵⁶⁷⁸⁹]*[⁺⁻]$")
+_DECIMAL = re.compile(r"\d+\.\d+(?=[A-Z(])")
+_ION = re.compile(r"[A-Z][a-z]?\d[+-]")
+_CHARGE = re.compile(r"(?:\^?(\d*)([+-])|\((\d*)([+-])\)|([+-])(\d+))$")
 
 
 @dataclass(frozen=True, slots=True)
@@ -41,8 +45,9 @@ class Formula:
             if self.counts.get(e)
         )
         sign = "+" if self.charge > 0 else "-"
-        size = abs(self.charge) if abs(self.charge) > 1 else ""
-        return f"{text}{size}{sign}" if self.charge else text
+        if abs(self.charge) > 1:
+            return f"{text}({abs(self.charge)}{sign})"
+        return f"{text}{sign}" if self.charge else text
 
 
 def molecular_formula(structure: Structure) -> Formula:
@@ -67,16 +72,22 @@ def parse_formula(text: str) -> Formula | None:
     """A printed formula, or None where it is not one.
 
     Reads subscripts, a trailing charge, dots between components with multipliers ("C8H11N · HCl",
-    "2 C8H11N . H2SO4", "C10H12 · 0.5 H2O") and brackets ("(C8H11N)2·H2SO4").
+    "2 C8H11N . H2SO4") and brackets ("(C8H11N)2·H2SO4"). A half of a component is read where the
+    whole comes to full atoms. None for a charge that could be part of a count ("SO42-").
     """
-    plain = re.sub(r"</?su[bp]>|[\s_{}$\u200b]", "", text.translate(_SUBSCRIPTS))
+    raised = _RAISED.sub(lambda m: f"^{unicodedata.normalize('NFKC', m[0])}", text)
+    plain = re.sub(r"</?su[bp]>|[\s_{}$\u200b]", "", raised.translate(_SUBSCRIPTS))
     charge = 0
     found = _CHARGE.search(plain)
     if found and found.start() > 0:
-        digits, sign, bare, lead, after = found.groups()
-        charge = int(digits or after or 1) * (1 if (sign or bare or lead) == "+" else -1)
-        # "C2H3O2-" prints a charge of one; the digit belongs to the element before it.
-        if digits and plain[found.start()] != "^":
+        digits, sign, inside, bare, lead, after = found.groups()
+        size = int(digits or inside or after or 1)
+        charge = size if (sign or bare or lead) == "+" else -size
+        # "C2H3O2-" prints a charge of one; the digit belongs to the element before it. Of an
+        # element alone ("Ca2+") it is the charge; of two digits nobody can tell.
+        if digits and plain[found.start()] != "^" and not _ION.fullmatch(plain):
+            if len(digits) > 1:
+                return None
             charge = 1 if charge > 0 else -1
             plain = plain[: found.start()] + digits
         else:
@@ -95,9 +106,13 @@ def parse_formula(text: str) -> Formula | None:
     return Formula(dict(total), charge) if total else None
 
 
-def _parts(text: str) -> list[str]:
-    """Components between dots; a dot inside a number ("0.5H2O") does not part."""
-    return [part for part in re.split(r"(?<!\d)\.|(?<=[A-Za-z\d)])\.(?=\d*[A-Z(])", text) if part]
+def _parts(text: str) -> Iterator[str]:
+    """Components between dots; the dot of a leading number ("0.5H2O") does not part."""
+    for part in text.split("·"):
+        lead = _DECIMAL.match(part)
+        head = lead.group() if lead else ""
+        first, *rest = re.split(r"(?<!\d)\.|(?<=[A-Za-z\d)])\.(?=\d*[A-Z(])", part[len(head) :])
+        yield from (piece for piece in (head + first, *rest) if piece)
 
 
 def _count(part: str) -> tuple[Fraction, Counter[str]] | None:

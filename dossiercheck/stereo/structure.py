@@ -23,6 +23,7 @@ _ALL_HYDROGENS = Chem.RemoveHsParameters()
 _ALL_HYDROGENS.removeDefiningBondStereo = True
 _DOUBLE_BONDS = Chem.MolFromSmarts("[!D1]=[!D1]")
 _MARKED = rdqueries.HasChiralTagQueryAtom()
+_LABELLED = rdqueries.IsotopeGreaterQueryAtom(0)
 _SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
 
 
@@ -191,10 +192,14 @@ class Structure:
 
     @cached_property
     def flat(self) -> str:
-        """Canonical SMILES without stereo: equal where the constitution is the same."""
+        """Canonical SMILES without stereo, isotopes kept: equal where the constitution is the
+        same and labelled in the same places."""
         # A hydrogen that is drawn to show the side of an =N–H is a hydrogen like any other.
         bare = Chem.RemoveHs(self.mol, _ALL_HYDROGENS, sanitize=False)
-        return str(Chem.MolToSmiles(bare, isomericSmiles=False))
+        labelled = bool(bare.GetAtomsMatchingQuery(_LABELLED))
+        if labelled:
+            Chem.RemoveStereochemistry(bare)
+        return str(Chem.MolToSmiles(bare, isomericSmiles=labelled))
 
     @cached_property
     def hill(self) -> str:
