@@ -174,9 +174,26 @@ def _pair(reference: Reading, reading: Reading, parser: NameParser) -> Pair:
             else v
             for v in views
         )
+    if reading.name is not None:
+        views = _without_assumed(views, reading.name)
     if reading.name is not None and _needs_tying(found, views, reading):
         views = _tied(views, reading, reading.name, reference.structure, parser)
     return Pair(reading, found, views)
+
+
+def _without_assumed(views: tuple[UnitView, ...], name: NameReading) -> tuple[UnitView, ...]:
+    """A configuration that the name parser only assumed says nothing, either way."""
+    for fault in name.faults:
+        if fault.slug == "assumed-configuration":
+            views = tuple(
+                replace(
+                    view, state=State.UNDETERMINED, silent_side="", shows="", note=fault.detail
+                )
+                if set(view.other) & set(fault.atoms)
+                else view
+                for view in views
+            )
+    return views
 
 
 def _view(verdict: al.Verdict, other: Structure) -> UnitView:

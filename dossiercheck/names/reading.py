@@ -10,7 +10,7 @@ import re
 from collections.abc import Sequence
 from dataclasses import replace
 
-from dossiercheck.names import implied, leftout, misplaced, spacing
+from dossiercheck.names import assumed, implied, leftout, misplaced, spacing
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
 from dossiercheck.names.notation import NotationError, read_extended
@@ -131,6 +131,7 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         *_ignored(descriptors, messages),
         *spacing.faults(reading.cleaned, spaces),
         *implied.faults(reading, parser),
+        *assumed.faults(reading),
     ]
     return replace(reading, faults=tuple(found))
 
