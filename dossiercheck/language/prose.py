@@ -184,21 +184,29 @@ def _broken(place: Place, span: tuple[int, int], text: str) -> Unread:
     return Unread(replace(place, span=span), "broken-name", detail, text)
 
 
+_TAIL = re.compile(
+    r"(?:[a-z]*ic acid\b|acid|hydrochloride|hydrobromide|hydrate|\(\d:\d\)|[a-z]*ate\b|[\d)\]},-])"
+)
+# A word cut in two: what follows is not a word of a sentence but the tail of a name.
+_CUT_WORD = re.compile(r"\d|[\])}]|(?:ol|one|ane|ine|ide|yl|oxy)[.,;]?$")
+
+
 def _runs_on(line: Line, following: Line | None, candidate: Candidate) -> bool:
-    """True when a name reaches the end of its line and the next line may go on with it."""
+    """True when a name reaches the end of its line and the next line may go on with it.
+
+    After a comma it may as well be the next item of a list, so only what looks like the rest of
+    a name counts there.
+    """
     rest = line.text[candidate.end :].strip()
     if following is None or (rest and not re.fullmatch(r"[-‐‑–,(\[{]+", rest)):
         return False
-    if rest or breaks_off(line.text):
+    if rest.strip(",") or breaks_off(line.text[candidate.start : candidate.end]):
         return True
     start = following.text.lstrip()
-    if re.match(
-        r"(?:acid|hydrochloride|hydrobromide|hydrate|\(\d:\d\)|[a-z]*ate\b|[\d)\]},-])", start
-    ):
-        return True
-    # A word cut in two: what follows is not a word of a sentence but the tail of a name.
+    if rest:
+        return bool(re.match(r"\d", start))
     first = re.match(r"[^\s]*", start)
-    return bool(first and re.search(r"\d|[\])}]|(?:ol|one|ane|ine|ide|yl|oxy)[.,;]?$", first[0]))
+    return bool(_TAIL.match(start) or (first and _CUT_WORD.search(first[0])))
 
 
 def _began_before(line: Line, previous: Line | None, candidate: Candidate) -> bool:

@@ -16,14 +16,15 @@ from dossiercheck.language.words import ANIONS, CATIONS, PROSE_WORDS
 HYPHENS = "-‐‑‒–—−﹣－"
 PRIMES = "'′″‴`´’"
 _MARKS = r"[*\u2217]?"
-_LOCANT = rf"(?:\d+[a-z]?|[α-ω]|N\d*)(?:[{PRIMES}]|\^\d+|[⁰¹²³⁴-⁹])*"
+_LOCANT = rf"(?:\d+[a-z]?|[α-ω]|N\d*)(?:[{PRIMES}\"]|\^\d+|[⁰¹²³⁴-⁹])*"
 _LETTER = r"(?:RS|SR|[RSEZrsMP]|R[ap]|S[ap]|ξ)"
 _ONE = rf"(?:{_LOCANT}\s?)?(?:~\{{{_LETTER}\}}|{_LETTER}){_MARKS}"
 _GROUP = re.compile(rf"[(\[]\s?{_ONE}(?:\s?,\s?{_ONE})*\s?[)\]]")
 _OLD_STYLE = re.compile(r"\[\d*[a-z]?[RS]\*?-$")  # [R-(R*,S*)]-, as CAS index names were printed
 _JOINTS = "\u200b\u2060\ufeff\u00ad"
 _NAME_CHARACTER = re.compile(
-    rf"[A-Za-zα-ωΑ-Ω0-9,.:*+±~^()\[\]{{}}{re.escape(HYPHENS)}{re.escape(PRIMES)}"
+    # A straight double quote is a double prime only behind a locant, and a quotation mark else.
+    rf"(?<=[\dN])\"(?=[,)\]RSEZ{re.escape(HYPHENS)}])|[A-Za-zα-ωΑ-Ω0-9,.:*+±~^()\[\]{{}}{re.escape(HYPHENS)}{re.escape(PRIMES)}"
     rf"⁰¹²³⁴-⁹ⁿ₀-₉&λ{_JOINTS}]"
 )
 _SPACE = " \u00a0\u2009\u202f\u2002\u2003\t"
@@ -102,7 +103,7 @@ def _token(text: str, start: int, end: int, floor: int) -> tuple[int, int] | Non
     """The stretch without spaces around a descriptor group, brackets balanced; a space is taken
     after a hyphen or after a comma between locants, where it can only be a slip."""
     left = start
-    while left > floor and _NAME_CHARACTER.match(text[left - 1]):
+    while left > floor and _NAME_CHARACTER.match(text, left - 1):
         left -= 1
     for comma in _LIST_COMMA.finditer(text, left, start):
         left = comma.end()
@@ -110,7 +111,7 @@ def _token(text: str, start: int, end: int, floor: int) -> tuple[int, int] | Non
     while right < len(text):
         if text[right] == "," and _LIST_COMMA.match(text, right):
             break
-        if _NAME_CHARACTER.match(text[right]) or _slipped_space(text, right):
+        if _NAME_CHARACTER.match(text, right) or _slipped_space(text, right):
             right += 1
         elif (
             text[right] in _SPACE
@@ -281,7 +282,7 @@ def _leftwards(text: str, left: int, rights: list[int], floor: int) -> list[int]
     while left > floor and text[left - 1] in _SPACE:
         at = left - 1
         begin = at
-        while begin > floor and _NAME_CHARACTER.match(text[begin - 1]):
+        while begin > floor and _NAME_CHARACTER.match(text, begin - 1):
             begin -= 1
         word = text[begin:at]
         opened = re.match(r"[(\[{]+", word)
