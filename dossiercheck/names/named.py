@@ -52,8 +52,8 @@ class Fault:
     `slug` is one of no-such-locant, locant-not-stereogenic, duplicate-descriptor,
     contradictory-descriptors, overrides-implied, lost-space, descriptor-stripped,
     lower-case-descriptor, stereo-ignored, assumed-configuration. `descriptor` and `other` index
-    the reading's descriptors. `atoms` are the candidates, 0-based in the skeleton's SMILES order where the
-    reading has a skeleton, in the structure's otherwise; empty when none is known.
+    the reading's descriptors. `atoms` are the candidates, 0-based in the skeleton's SMILES order
+    where the reading has a skeleton, in the structure's otherwise; empty when none is known.
 
     locant-not-stereogenic is the name parser's opinion from the constitution alone: a centre
     that depends on other centres (Rules 4 and 5) looks to it like none.
