@@ -186,9 +186,7 @@ def _without_assumed(views: tuple[UnitView, ...], name: NameReading) -> tuple[Un
     for fault in name.faults:
         if fault.slug == "assumed-configuration":
             views = tuple(
-                replace(
-                    view, state=State.UNDETERMINED, silent_side="", shows="", note=fault.detail
-                )
+                replace(view, state=State.UNDETERMINED, silent_side="", shows="", note=fault.detail)
                 if set(view.other) & set(fault.atoms)
                 else view
                 for view in views
@@ -260,7 +258,7 @@ def _tied(
     for view in views:
         index = by_atoms.get(frozenset(view.other))
         if index is None:
-            result.append(_by_locant(view, name))
+            result.append(_by_locant(view, views, name, bool(reference.undefined)))
             continue
         printed = name.descriptors[index]
         shown = replace(
@@ -272,7 +270,7 @@ def _tied(
         elif not relative and not (fault and fault.slug == "overrides-implied"):
             shown = _cross_checked(shown, view.shows)
         result.append(shown)
-    return _loose_bonds(result, name)
+    return _loose_bonds(result, name, reference)
 
 
 def _by_letter(view: UnitView) -> UnitView:
@@ -304,7 +302,9 @@ def _cross_checked(view: UnitView, computed: str) -> UnitView:
     )
 
 
-def _loose_bonds(views: list[UnitView], name: NameReading) -> tuple[UnitView, ...]:
+def _loose_bonds(
+    views: list[UnitView], name: NameReading, reference: Structure
+) -> tuple[UnitView, ...]:
     """An E or Z without a locant, which the parser did not put on a double bond of the reference
     while one with that letter is left silent: it may speak of that one."""
     settled = {view.span for view in views if view.state in (State.AGREES, State.DIFFERS)}
@@ -313,6 +313,9 @@ def _loose_bonds(views: list[UnitView], name: NameReading) -> tuple[UnitView, ..
         for d in name.descriptors
         if d.text in ("E", "Z") and not d.locant and d.span not in settled
     }
+    possible = [atoms for kind, atoms, _ in reference.possible if kind != "centre"]
+    if len(possible) == 1:
+        return tuple(views)
     note = "the descriptor has no locant and may speak of another double bond"
     return tuple(
         replace(view, state=State.UNDETERMINED, silent_side="", note=note)
@@ -323,11 +326,14 @@ def _loose_bonds(views: list[UnitView], name: NameReading) -> tuple[UnitView, ..
     )
 
 
-def _by_locant(view: UnitView, name: NameReading) -> UnitView:
+def _by_locant(
+    view: UnitView, views: Sequence[UnitView], name: NameReading, open_units: bool
+) -> UnitView:
     """A descriptor that the parser could not take, judged by its locant and its letter.
 
-    One without a locant, whose letter the silent unit has, cannot be tied to anything: that is
-    doubt, and neither agreement nor silence.
+    Several atoms may carry the locant (C1 of a ring and of its carboxy group); where only one of
+    them is a unit, it is meant. One without a locant, whose letter the silent unit has, cannot be
+    tied to anything: that is doubt, and neither agreement nor silence.
     """
     if view.silent_side != "other":
         return view
@@ -339,7 +345,9 @@ def _by_locant(view: UnitView, name: NameReading) -> UnitView:
         if not loose and not set(view.other) & set(fault.atoms):
             continue
         shown = replace(view, shows=printed.text, locant=printed.locant, span=printed.span)
-        if loose or len(fault.atoms) > len(view.other):
+        meant = [v for v in views if v.kind == view.kind and set(v.other) & set(fault.atoms)]
+        several = len(fault.atoms) > len(view.other) if open_units else len(meant) > 1
+        if loose or several:
             note = "the descriptor could not be tied to one unit"
             return replace(shown, state=State.UNDETERMINED, silent_side="", note=note)
         return _by_letter(shown)

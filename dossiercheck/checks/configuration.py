@@ -7,7 +7,9 @@ from collections.abc import Iterator, Sequence
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case, Pair, UnitView
+from dossiercheck.interpretation import Reading
 from dossiercheck.model import Kind, Role, State
+from dossiercheck.names.reading import Fault
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.structure import is_pyramidal_nitrogen
 
@@ -186,6 +188,40 @@ def descriptor_undetermined(case: Case, params: Params) -> Iterator[Observation]
                 unit_of(case, [view]),
                 view.locant,
             )
+    yield from _axes(case)
+
+
+def _axes(case: Case) -> Iterator[Observation]:
+    """Descriptors of an axis, which nothing here can confirm or contradict."""
+    for reading in case.readings:
+        for fault in reading.name.faults if reading.name else ():
+            if reading.name is None or fault.descriptor is None or not of_axis(reading, fault):
+                continue
+            printed = reading.name.descriptors[fault.descriptor]
+            yield Observation(
+                {
+                    "locant": printed.locant or "an axis",
+                    "printed": printed.text,
+                    "recomputed": "nothing",
+                    "doubt": "it speaks of a chiral axis, which the program does not judge",
+                },
+                (exhibit(reading, spans=[printed.span]),),
+                locant=printed.locant,
+            )
+
+
+def of_axis(reading: Reading, fault: Fault) -> bool:
+    """Whether a descriptor that the name parser did not place speaks of a chiral axis: M, P and
+    the like always, R and S at an axis's atom or, without a locant, where there is an axis."""
+    if reading.name is None or reading.structure is None or fault.descriptor is None:
+        return False
+    printed = reading.name.descriptors[fault.descriptor]
+    if printed.family == "axis":
+        return fault.slug == "descriptor-stripped"
+    if fault.slug != "locant-not-stereogenic" or printed.family != "centre":
+        return False
+    axis = reading.structure.axis_atoms
+    return bool(axis & set(fault.atoms) if fault.atoms else axis and not printed.locant)
 
 
 @check(needs=("name",), fields=("name_kind", "reference_kind"))

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from dossiercheck.checks.configuration import OFFENCES, silent_views, unit_of
+from dossiercheck.checks.configuration import OFFENCES, of_axis, silent_views, unit_of
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case, Pair
@@ -73,12 +73,11 @@ def _printed(reading: Reading, index: int | None) -> tuple[str, str]:
 def locant_not_stereogenic(case: Case, params: Params) -> Iterator[Observation]:
     """A descriptor stands at a locant that carries no stereogenic unit."""
     for reading, fault in _faults(case, "locant-not-stereogenic"):
-        if _is_unit(case, reading, fault):
+        if _is_unit(case, reading, fault) or of_axis(reading, fault):
             continue
         text, locant = _printed(reading, fault.descriptor)
-        yield _observe(
-            case, reading, fault, {"printed": text, "locant": locant, "detail": fault.detail}
-        )
+        values = {"printed": text, "locant": locant or "(none)", "detail": fault.detail}
+        yield _observe(case, reading, fault, values)
 
 
 @check(needs=("name",), fields=("printed", "locant", "detail"))

@@ -14,10 +14,16 @@ from dossiercheck.stereo.structure import Structure
 
 @check(needs=("statement",), fields=("stated", "found"))
 def statement_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
-    """The field says racemate and the structure is one enantiomer, or the reverse."""
+    """The field says racemate and the structure is one enantiomer, or the reverse.
+
+    Nothing is said where the structure may owe its chirality to an axis, or where its descriptors
+    could not be computed.
+    """
     if case.structure is None or case.reference is None:
         return
     found = _kind(case.structure)
+    if case.structure.doubt or (found == "achiral" and case.structure.axis_atoms):
+        return
     for reading in case.of_role(Role.STEREO):
         stated = reading.statement.kind if reading.statement else ""
         if not stated or stated == found or found in ("silent", "") or found.startswith("partly"):

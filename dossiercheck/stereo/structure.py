@@ -24,6 +24,10 @@ _ALL_HYDROGENS.removeDefiningBondStereo = True
 _DOUBLE_BONDS = Chem.MolFromSmarts("[!D1]=[!D1]")
 _MARKED = rdqueries.HasChiralTagQueryAtom()
 _LABELLED = rdqueries.IsotopeGreaterQueryAtom(0)
+_AXES = tuple(
+    Chem.MolFromSmarts(text)
+    for text in ("[#6;!$([CH2])]=[CX2]=[#6;!$([CH2])]", "[a;$(a:[a;X3;H0])]-!@[a;$(a:[a;X3;H0])]")
+)
 _SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
 
 
@@ -205,6 +209,13 @@ class Structure:
     def hill(self) -> str:
         """The molecular formula as text, isotopes apart, the charge last."""
         return str(rdMolDescriptors.CalcMolFormula(self.mol, True, True))
+
+    @cached_property
+    def axis_atoms(self) -> frozenset[int]:
+        """Atoms of what may be a chiral axis, which the program does not judge: an allene, or
+        a bond between aromatic rings substituted beside it (IUPAC 2013, P-92.1.2.2)."""
+        found = (match for axis in _AXES for match in self.mol.GetSubstructMatches(axis))
+        return frozenset(atom for match in found for atom in match)
 
     def components(self) -> list[tuple[int, ...]]:
         """The atoms of each connected part."""

@@ -182,3 +182,20 @@ def test_enhanced_stereo_of_v3000_says_the_same_as_the_notation() -> None:
 def test_canonical_text_does_not_show_marks_without_meaning() -> None:
     assert from_smiles("C[C@H](C)O").smiles == from_smiles("CC(C)O").smiles
     assert from_smiles("C[C@H](O)CC").smiles != from_smiles("C[C@@H](O)CC").smiles
+
+
+@pytest.mark.parametrize(
+    ("smiles", "expected"),
+    [
+        ("CC=C=CC", True),
+        ("C=C=CC", False),
+        # 1,1'-Binaphthalene-2,2'-diol holds its axis, biphenyl turns freely (common practice).
+        ("Oc1ccc2ccccc2c1-c1c(O)ccc2ccccc12", True),
+        ("Cc1cccc(C)c1-c1c(C)cccc1C", True),
+        ("c1ccc(cc1)-c1ccccc1", False),
+        ("Cc1ccccc1Oc1ccccc1C", False),
+        ("C[C@H](N)C(=O)O", False),
+    ],
+)
+def test_an_axis_of_which_nothing_is_said(smiles: str, expected: bool) -> None:
+    assert bool(from_smiles(smiles).axis_atoms) is expected
