@@ -14,7 +14,7 @@ from dossiercheck.names.tying import tie
 from dossiercheck.stereo import alignment as al
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.structure import Structure
-from dossiercheck.substances import Substance
+from dossiercheck.substances import REGISTER, Substance
 
 # Descriptors the name parser could not take. One at a locant that it holds not stereogenic may
 # be right all the same: it looks at the constitution alone, and a centre may exist only through
@@ -139,10 +139,15 @@ def table(case: Case) -> Concordance | None:
 
 
 def _reference(structural: Sequence[Reading]) -> Reading:
-    """Drawings first, among them the one that specifies most."""
-    rank = min(_RANK[reading.kind] for reading in structural)
-    likely = [reading for reading in structural if _RANK[reading.kind] == rank]
+    """What the register declares; else drawings first, among them the one that specifies most."""
+    rank = min(_rank(reading) for reading in structural)
+    likely = [reading for reading in structural if _rank(reading) == rank]
     return likely[0] if len(likely) == 1 else max(likely, key=_specified)
+
+
+def _rank(reading: Reading) -> int:
+    declared = reading.evidence.group.startswith(REGISTER)
+    return _RANK[reading.kind] - (len(_RANK) if declared else 0)
 
 
 def _specified(reading: Reading) -> int:

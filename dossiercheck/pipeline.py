@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import replace
+from itertools import chain
 from pathlib import Path
 
 from dossiercheck import find
@@ -14,7 +15,7 @@ from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, U
 from dossiercheck.readers import reader_for
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.settings import Settings
-from dossiercheck.substances import attribute
+from dossiercheck.substances import attribute, registered
 from dossiercheck.work import Judged, Workers
 
 Progress = Callable[[str, int, int], None]
@@ -99,7 +100,7 @@ def _read_one(source: Source, path: Path) -> Iterator[Item]:
 def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], list[Unread]]:
     evidence: list[Evidence] = []
     unread: list[Unread] = []
-    for entry in gather(items, settings.columns):
+    for entry in chain(gather(items, settings.columns), registered(settings)):
         if isinstance(entry, Unread):
             unread.append(entry)
         else:

@@ -14,8 +14,8 @@ from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.interpretation import Reading
-from dossiercheck.model import Evidence, Unread
-from dossiercheck.settings import RegisterEntry
+from dossiercheck.model import Evidence, Place, Role, Unread
+from dossiercheck.settings import RegisterEntry, Settings
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,6 +43,19 @@ class Substance:
         """Attribute one evidence."""
         self.evidence.append(said)
         self.attribution[said.id] = reason
+
+
+REGISTER = "register#"  # how the group of a register entry's own evidence begins
+
+
+def registered(settings: Settings) -> Iterator[Evidence]:
+    """What the register itself says: the structure a substance is declared to be."""
+    path = settings.path.name if settings.path else "settings"
+    for entry in settings.register:
+        for role, text in ((Role.SMILES, entry.smiles), (Role.NAME, entry.name)):
+            if text:
+                place = Place(path, section=f"[[substance]] {entry.id}", field=role.value)
+                yield Evidence("", role, text, place, f"{REGISTER}{entry.id}", entry.id)
 
 
 Survey = Callable[[Sequence[Substance]], Sequence[frozenset[Identity]]]
