@@ -15,7 +15,11 @@ from dossiercheck.stereo.formula import Formula, parse_formula
 from dossiercheck.stereo.perception import from_inchi, from_molblock, from_smiles
 from dossiercheck.stereo.structure import StereoGroup, Structure, Unreadable
 
-_NUMBER = re.compile(r"(?<![\d.,])(\d{1,3}(?:[ \u00a0\u2009]\d{3})+|\d+)([.,]\d+)?(?![\d])")
+_NUMBER = re.compile(
+    r"(?<![\d.,])(?:(\d{1,3}(?:,\d{3})+)(\.\d+)|([1-9],\d{3})()"
+    r"|(\d{1,3}(?:[ \u00a0\u2009\u202f]\d{3})+|\d+)([.,]\d+)?)(?!\d|[.,]\d)"
+)
+_EITHER = re.compile(r"\d\d,\d{3}")
 
 
 @dataclass(eq=False, slots=True)
@@ -61,7 +65,7 @@ def interpret(evidence: Sequence[Evidence], parser: NameParser) -> list[Reading]
     named = [said for said in evidence if said.role is Role.NAME]
     names = iter(read_names([said.text for said in named], parser))
     return [
-        _name(said, next(names)) if said.role is Role.NAME else _other(said) for said in evidence
+        _name(said, next(names)) if said.role is Role.NAME else _safely(said) for said in evidence
     ]
 
 
@@ -89,6 +93,15 @@ def _name(said: Evidence, name: NameReading) -> Reading:
     except Unreadable as error:
         detail = f"the name leads to no sound structure: {error}"
         return Reading(said, name=name, reason="name-not-interpretable", refusal=detail)
+
+
+def _safely(said: Evidence) -> Reading:
+    """One place that the program stumbles over is unread; the others go on."""
+    try:
+        return _other(said)
+    except Exception as error:
+        detail = f"reading stopped with {type(error).__name__}: {error}".splitlines()[0]
+        return Reading(said, reason="reading-failed", refusal=detail)
 
 
 def _other(said: Evidence) -> Reading:
@@ -129,11 +142,13 @@ def _other(said: Evidence) -> Reading:
 def printed_number(text: str) -> tuple[float, int] | None:
     """The one number in a text and how many decimals it prints; None for none or several.
 
-    A comma is a decimal comma; a space groups thousands; "g/mol" and the like are passed over.
+    A comma is a decimal comma, but before full groups of three and a point, or as the only mark
+    behind one digit ("1,234"), it groups thousands; "12,345" may be either and is not read. A
+    space groups thousands; "g/mol" and the like are passed over.
     """
-    found = _NUMBER.findall(text)
-    if len(found) != 1:
+    found = [tuple(filter(None, groups)) for groups in _NUMBER.findall(text)]
+    if len(found) != 1 or _EITHER.fullmatch("".join(found[0])):
         return None
-    whole, decimals = found[0]
+    whole, decimals = (*found[0], "")[:2]
     digits = re.sub(r"\D", "", whole)
     return float(f"{digits}.{decimals[1:] or '0'}"), max(len(decimals) - 1, 0)

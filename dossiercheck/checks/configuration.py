@@ -188,7 +188,25 @@ def descriptor_undetermined(case: Case, params: Params) -> Iterator[Observation]
                 unit_of(case, [view]),
                 view.locant,
             )
+    yield from _not_laid(case)
     yield from _axes(case)
+
+
+def _not_laid(case: Case) -> Iterator[Observation]:
+    """Structures of one constitution that could nevertheless not be laid on each other."""
+    for pair in case.pairs:
+        found = pair.alignment
+        if not found.mapping and found.doubt and found.constitution.verdict in _LAID:
+            assert case.reference is not None
+            yield Observation(
+                {
+                    "locant": "every unit",
+                    "printed": "nothing",
+                    "recomputed": "nothing",
+                    "doubt": found.doubt,
+                },
+                (exhibit(pair.reading), exhibit(case.reference)),
+            )
 
 
 def _axes(case: Case) -> Iterator[Observation]:

@@ -1,0 +1,135 @@
+"""Evidence to substances: firmly by label, otherwise only where exactly one thing is said."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+import pytest
+
+from dossiercheck.interpretation import Reading
+from dossiercheck.model import Evidence, Place, Role
+from dossiercheck.settings import RegisterEntry
+from dossiercheck.stereo.perception import from_smiles
+from dossiercheck.substances import Identity, Substance, attribute, identities, key_of
+
+THREONINE = "C[C@@H](O)[C@H](N)C(=O)O"
+ALLO = "C[C@H](O)[C@H](N)C(=O)O"
+
+
+def say(number: int, text: str, *, group: str = "", label: str = "") -> Evidence:
+    return Evidence(f"e{number}", Role.SMILES, text, Place("a.txt", line=number), group, label)
+
+
+def survey(substances: Sequence[Substance]) -> list[frozenset[Identity]]:
+    return [
+        identities([Reading(said, from_smiles(said.text)) for said in one.evidence])
+        for one in substances
+    ]
+
+
+def nobody(_: Sequence[Substance]) -> list[frozenset[Identity]]:
+    raise AssertionError("everything has a label; nothing is to be surveyed")
+
+
+@pytest.mark.parametrize(
+    ("one", "two", "same"),
+    [
+        ("Impurity B", "impurity-b", True),
+        ("Impurity B", "IMPURITY\u00a0B", True),
+        ("ABC-123", "ABC 123", True),
+        ("ABC‑123", "abc123", True),
+        ("Impurity B", "Impurity C", False),
+        ("β-form", "α-form", False),
+    ],
+)
+def test_what_makes_two_labels_the_same(one: str, two: str, same: bool) -> None:
+    assert (key_of(one) == key_of(two)) is same
+
+
+def test_the_same_label_is_one_substance_however_it_is_written() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="Impurity B"),
+        say(2, ALLO, group="b", label="impurity-B"),
+        say(3, THREONINE, group="c", label="Impurity C"),
+    ]
+    substances, unread = attribute(said, (), nobody)
+    assert [(s.id, s.label, [e.id for e in s.evidence]) for s in substances] == [
+        ("s1", "Impurity B", ["e1", "e2"]),
+        ("s2", "Impurity C", ["e3"]),
+    ]
+    assert unread == []
+    assert substances[0].attribution["e1"] == "called “Impurity B”"
+
+
+def test_a_label_speaks_for_its_whole_group() -> None:
+    said = [say(1, THREONINE, group="a"), say(2, THREONINE, group="a", label="X")]
+    (substance,), _ = attribute(said, (), nobody)
+    assert "stands together with" in substance.attribution["e1"]
+
+
+def test_the_register_makes_aliases_one_substance() -> None:
+    register = (RegisterEntry("Drug", aliases=("DRG-1", "drug substance"), role="drug substance"),)
+    said = [
+        say(1, THREONINE, group="a", label="DRG 1"),
+        say(2, THREONINE, group="b", label="Drug Substance"),
+    ]
+    (substance,), _ = attribute(said, register, nobody)
+    assert (substance.label, substance.role) == ("Drug", "drug substance")
+    assert "in the register “Drug”" in substance.attribution["e1"]
+
+
+def test_a_lone_structure_joins_the_one_substance_that_it_is() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="X"),
+        say(2, ALLO, group="b", label="Y"),
+        say(3, "OC(=O)[C@@H](N)[C@@H](C)O"),
+    ]
+    substances, unread = attribute(said, (), survey)
+    assert [[e.id for e in s.evidence] for s in substances] == [["e1", "e3"], ["e2"]]
+    assert unread == []
+
+
+def test_a_lone_structure_that_contradicts_is_nobodys() -> None:
+    # It may be a misprint of X or the name of something else: no alarm, but listed.
+    said = [say(1, THREONINE, group="a", label="X"), say(2, ALLO)]
+    (substance,), (unread,) = attribute(said, (), survey)
+    assert [e.id for e in substance.evidence] == ["e1"]
+    assert unread.reason == "not-attributed"
+    assert unread.text == ALLO
+    assert unread.place.line == 2
+    assert "“X”" in unread.detail
+
+
+def test_a_lone_structure_of_another_constitution_stands_for_itself() -> None:
+    said = [say(1, THREONINE, group="a", label="X"), say(2, "CCO")]
+    substances, unread = attribute(said, (), survey)
+    assert [s.label for s in substances] == ["X", "CCO"]
+    assert unread == []
+
+
+def test_a_record_without_a_label_is_a_substance_of_its_own() -> None:
+    # In a record the pieces stand together, so that they can be held against each other.
+    said = [
+        say(1, THREONINE, group="a", label="X"),
+        say(2, THREONINE, group="b"),
+        say(3, ALLO, group="b"),
+    ]
+    substances, unread = attribute(said, (), survey)
+    assert [[e.id for e in s.evidence] for s in substances] == [["e1"], ["e2", "e3"]]
+    assert unread == []
+
+
+def test_nothing_is_lost_and_the_order_is_the_dossiers() -> None:
+    said = [
+        say(1, "CCO"),
+        say(2, THREONINE, group="a", label="X"),
+        say(3, "CCO", group="b", label="Y"),
+        say(4, ALLO),
+        say(5, THREONINE),
+    ]
+    substances, unread = attribute(said, (), survey)
+    kept = [e.id for s in substances for e in s.evidence] + [f"e{u.place.line}" for u in unread]
+    assert sorted(kept) == ["e1", "e2", "e3", "e4", "e5"]
+    assert [s.id for s in substances] == [f"s{n}" for n in range(1, len(substances) + 1)]
+    firsts = [int(s.evidence[0].id[1:]) for s in substances]
+    assert firsts == sorted(firsts)
