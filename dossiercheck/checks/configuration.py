@@ -213,7 +213,11 @@ def _axes(case: Case) -> Iterator[Observation]:
     """Descriptors of an axis, which nothing here can confirm or contradict."""
     for reading in case.readings:
         for fault in reading.name.faults if reading.name else ():
-            if reading.name is None or fault.descriptor is None or not of_axis(reading, fault):
+            if (
+                reading.name is None
+                or fault.descriptor is None
+                or not of_axis(case, reading, fault)
+            ):
                 continue
             printed = reading.name.descriptors[fault.descriptor]
             yield Observation(
@@ -228,15 +232,19 @@ def _axes(case: Case) -> Iterator[Observation]:
             )
 
 
-def of_axis(reading: Reading, fault: Fault) -> bool:
+def of_axis(case: Case, reading: Reading, fault: Fault) -> bool:
     """Whether a descriptor that the name parser did not place speaks of a chiral axis: M, P and
-    the like always, R and S at an axis's atom or, without a locant, where there is an axis."""
+    the like always, R and S at an axis's atom or, without a locant, where there is an axis; but
+    not while a centre of the reference waits for its descriptor."""
     if reading.name is None or reading.structure is None or fault.descriptor is None:
         return False
     printed = reading.name.descriptors[fault.descriptor]
     if printed.family == "axis":
         return fault.slug == "descriptor-stripped"
     if fault.slug != "locant-not-stereogenic" or printed.family != "centre":
+        return False
+    pair = next((pair for pair in case.pairs if pair.reading is reading), None)
+    if pair is not None and any(v.kind == "centre" for v in silent_views(case, pair)):
         return False
     axis = reading.structure.axis_atoms
     return bool(axis & set(fault.atoms) if fault.atoms else axis and not printed.locant)

@@ -24,6 +24,7 @@ from dossiercheck.stereo.notation import (
     key_difference,
     key_of,
     possible_inchis,
+    units_of_key,
 )
 
 _REGISTRY = re.compile(r"(?<!\d)(\d{2,7})-(\d{2})-(\d)(?!\d)")
@@ -85,13 +86,24 @@ def inchikey_differs(case: Case, params: Params) -> Iterator[Observation]:
         keys = [key_of(inchi) for inchi in possible_inchis(case.structure)]
         if not keys or stated in keys:
             continue
+        units = units_of_key(case.structure, stated) if stated[:14] == keys[0][:14] else ()
+        where = ", ".join("–".join(str(a + 1) for a in unit.atoms) for unit in units)
+        why = key_difference(stated, keys[0])
         yield Observation(
             {
                 "stated": stated,
                 "computed": keys[0],
-                "difference": key_difference(stated, keys[0]),
+                "difference": f"{why} (opposite at atom {where})" if units else why,
             },
-            (exhibit(reading), exhibit(case.reference, note=f"InChIKey computed: {keys[0]}")),
+            (
+                exhibit(reading),
+                exhibit(
+                    case.reference,
+                    atoms={unit.atoms[0]: unit.descriptor for unit in units},
+                    note=f"InChIKey computed: {keys[0]}",
+                ),
+            ),
+            ", ".join(case.unit_ids[frozenset(unit.atoms)] for unit in units),
         )
 
 

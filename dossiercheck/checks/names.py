@@ -73,7 +73,7 @@ def _printed(reading: Reading, index: int | None) -> tuple[str, str]:
 def locant_not_stereogenic(case: Case, params: Params) -> Iterator[Observation]:
     """A descriptor stands at a locant that carries no stereogenic unit."""
     for reading, fault in _faults(case, "locant-not-stereogenic"):
-        if _is_unit(case, reading, fault) or of_axis(reading, fault):
+        if _is_unit(case, reading, fault) or of_axis(case, reading, fault):
             continue
         text, locant = _printed(reading, fault.descriptor)
         values = {"printed": text, "locant": locant or "(none)", "detail": fault.detail}

@@ -7,9 +7,11 @@ import re
 from rdkit import Chem
 
 from dossiercheck.stereo.perception import quiet
-from dossiercheck.stereo.structure import Structure
+from dossiercheck.stereo.structure import Structure, Unit, invert
 
 KEY = re.compile(r"[A-Z]{14}-[A-Z]{8}[SN][A-Z]-[A-Z]")
+
+_MOST_TRIES = 24
 
 _LAYERS = {
     "c": "connections",
@@ -63,6 +65,27 @@ def possible_inchis(structure: Structure) -> list[str]:
 def key_of(inchi: str) -> str:
     """The InChIKey of an InChI, "" for none."""
     return str(Chem.InchiToInchiKey(inchi)) if inchi else ""
+
+
+def units_of_key(structure: Structure, key: str) -> tuple[Unit, ...]:
+    """The units that must be inverted for the structure to have a stated InChIKey: one, or all
+    centres together; () where neither gives it.
+
+    A key cannot be read backwards, so the likely errors are tried.
+    """
+    units = structure.units
+    centres = tuple(unit for unit in units if unit.kind == "centre")
+    tries = [(unit,) for unit in units[:_MOST_TRIES]]
+    if len(centres) > 1:
+        tries.append(centres)
+    with quiet():
+        for inverted in tries:
+            mol = Chem.Mol(structure.mol)
+            for unit in inverted:
+                invert(mol, unit)
+            if key_of(str(Chem.MolToInchi(mol))) == key:
+                return inverted
+    return ()
 
 
 def inchi_difference(stated: str, computed: str) -> str:

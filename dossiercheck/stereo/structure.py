@@ -309,6 +309,16 @@ def set_geometry(mol: Chem.Mol, atoms: tuple[int, ...], near: tuple[int, int], s
     bond.SetStereo(Chem.BondStereo.STEREOCIS if sign > 0 else Chem.BondStereo.STEREOTRANS)
 
 
+def invert(mol: Chem.Mol, unit: Unit) -> None:
+    """Give one specified unit the opposite configuration, in place."""
+    if unit.kind == "centre":
+        mol.GetAtomWithIdx(unit.atoms[0]).InvertChirality()
+        return
+    shown = geometry(mol, unit.atoms)
+    if shown:
+        set_geometry(mol, unit.atoms, shown[:2], -shown[2])
+
+
 def _set(
     mol: Chem.Mol, kind: str, atoms: tuple[int, ...], near: tuple[int, int], sign: int
 ) -> None:

@@ -62,8 +62,10 @@ def measure(size: int, seed: int, jobs: int = 1) -> Outcome:
 
 def summary(outcome: Outcome) -> dict[str, Any]:
     """The figures, as printed and as JSON."""
-    kinds = {kind: _of_kind([s for s in outcome.scores if s.mutant.kind == kind]) for kind in
-             dict.fromkeys(s.mutant.kind for s in outcome.scores)}
+    kinds = {
+        kind: _of_kind([s for s in outcome.scores if s.mutant.kind == kind])
+        for kind in dict.fromkeys(s.mutant.kind for s in outcome.scores)
+    }
     grave = [(record, said) for record, said in outcome.sound if said.grave()]
     judged = flagged.verdicts()
     verdicts = Counter(
@@ -117,7 +119,9 @@ def _share(truths: Sequence[bool]) -> float:
 
 def table(figures: dict[str, Any]) -> str:
     """The figures for a person."""
-    lines = [f"{'kind of error':<26}{'errors':>8}{'found':>8}{'unread':>8}{'unit right':>12}{'wrong':>7}"]
+    lines = [
+        f"{'kind of error':<26}{'errors':>8}{'found':>8}{'unread':>8}{'unit right':>12}{'wrong':>7}"
+    ]
     for kind, row in figures["kinds"].items():
         unit = row["unit"]
         lines.append(
