@@ -75,7 +75,7 @@ def units_of_key(structure: Structure, key: str) -> tuple[Unit, ...]:
     """
     units = structure.units
     centres = tuple(unit for unit in units if unit.kind == "centre")
-    tries = [(unit,) for unit in units[:_MOST_TRIES]]
+    tries: list[tuple[Unit, ...]] = [(unit,) for unit in units[:_MOST_TRIES]]
     if len(centres) > 1:
         tries.append(centres)
     with quiet():

@@ -10,12 +10,10 @@ from collections import Counter
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
-from rdkit import Chem, RDLogger
+from rdkit import Chem
 from rdkit.Chem import rdCIPLabeler, rdDepictor
 
 from tests.benchmarks.dictionary import Component
-
-RDLogger.DisableLog("rdApp.*")
 
 Unit = tuple[int, ...]
 _ORDERS = {1: Chem.BondType.SINGLE, 2: Chem.BondType.DOUBLE, 3: Chem.BondType.TRIPLE}

@@ -111,7 +111,8 @@ _FAMILIES: dict[str, tuple[str, ...]] = {
     "wrong mass": ("identity/mass-differs",),
     "wrong check digit": ("identity/registry-check-digit",),
     **dict.fromkeys(NAME_KINDS, ("name-and-drawing/", "name/")),
-    **dict.fromkeys(DRAWING_KINDS, ("name-and-drawing/", "drawing/")),
+    # A changed drawing also parts from the InChIKey, the only witness where no name is read.
+    **dict.fromkeys(DRAWING_KINDS, ("name-and-drawing/", "drawing/", "identity/inchikey-differs")),
 }
 
 

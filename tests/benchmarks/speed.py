@@ -18,6 +18,7 @@ import subprocess
 import sys
 import tempfile
 from collections.abc import Sequence
+from contextlib import suppress
 from dataclasses import replace
 from itertools import cycle, islice
 from pathlib import Path
@@ -43,10 +44,8 @@ def bare(path: Path) -> None:
         if mol is None:
             continue
         names.append(mol.GetProp("IUPAC name"))
-        try:
+        with suppress(RuntimeError):
             rdCIPLabeler.AssignCIPLabels(mol, maxRecursiveIterations=LABELLER_ITERATIONS)
-        except RuntimeError:
-            pass
         Chem.MolToInchi(mol)
     with NameParser(remember=0) as parser:
         for first in range(0, len(names), 100):

