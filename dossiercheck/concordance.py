@@ -319,8 +319,15 @@ def _loose_bonds(
         if d.text in ("E", "Z") and not d.locant and d.span not in settled
     }
     possible = [atoms for kind, atoms, _ in reference.possible if kind != "centre"]
-    if len(possible) == 1:
-        return tuple(views)
+    if len(possible) == 1 and len(loose) == 1:
+        # There is no other double bond that it could speak of.
+        span, letter = next(iter(loose.items()))
+        return tuple(
+            _by_letter(replace(view, shows=letter, span=span))
+            if view.kind == "double bond" and view.silent_side == "other"
+            else view
+            for view in views
+        )
     note = "the descriptor has no locant and may speak of another double bond"
     return tuple(
         replace(view, state=State.UNDETERMINED, silent_side="", note=note)
@@ -346,11 +353,16 @@ def _by_locant(
         if fault.slug not in LEFT_OUT or fault.descriptor is None:
             continue
         printed = name.descriptors[fault.descriptor]
-        loose = not printed.locant and not fault.atoms and printed.text == view.descriptor
+        meant = [v for v in views if v.kind == view.kind and set(v.other) & set(fault.atoms)]
+        # The parser takes no r or s, and its labels do not reach every atom (a spiro atom has
+        # but one): such a letter with no unit at its locant may speak of the silent one.
+        nowhere = not printed.locant and not fault.atoms
+        loose = printed.text == view.descriptor and (
+            nowhere or (not meant and printed.text in ("r", "s"))
+        )
         if not loose and not set(view.other) & set(fault.atoms):
             continue
         shown = replace(view, shows=printed.text, locant=printed.locant, span=printed.span)
-        meant = [v for v in views if v.kind == view.kind and set(v.other) & set(fault.atoms)]
         several = len(fault.atoms) > len(view.other) if open_units else len(meant) > 1
         if loose or several:
             note = "the descriptor could not be tied to one unit"
