@@ -13,7 +13,7 @@ from dataclasses import replace
 from dossiercheck.names import assumed, implied, leftout, misplaced, spacing
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
-from dossiercheck.names.notation import NotationError, read_extended
+from dossiercheck.names.notation import NotationError, read_extended, read_notation
 from dossiercheck.names.parser import NameParser, Parse
 from dossiercheck.names.refused import (
     Rest,
@@ -110,6 +110,10 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         everything = range(len(descriptors))
         bare = rewritten(text, descriptors, drop=everything, spaces=reading.respaced)
         skeleton = _structure(parser.parse([bare])[0])
+        if skeleton is not None and not _one_constitution(structure, skeleton):
+            # Refused one way, the parser falls back on another way to split the name.
+            said = "with and without its descriptors the name parser reads two different compounds"
+            return replace(reading, refusal=Refusal("ambiguous", said))
     reading = replace(
         reading,
         structure=structure,
@@ -134,6 +138,14 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         *assumed.faults(reading),
     ]
     return replace(reading, faults=tuple(found))
+
+
+def _one_constitution(one: NamedStructure, two: NamedStructure) -> bool:
+    """Whether two answers for one name are of one constitution, written in one order."""
+    try:
+        return read_notation(one.smiles).constitution == read_notation(two.smiles).constitution
+    except NotationError:
+        return False
 
 
 def _structure(parse: Parse) -> NamedStructure | None:
