@@ -101,10 +101,10 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         rest = least_left_out(text, descriptors, rest, parser, reading.respaced)
     rest = misplaced.left_out(reading, rest, parser)
     messages = tuple(dict.fromkeys((*first.parse.messages, *rest.parse.messages)))
-    reading = replace(reading, messages=messages)
     structure = _structure(rest.parse)
     if structure is None:
-        return replace(reading, refusal=_refusal(reading.cleaned, rest.parse))
+        refusal = _refusal(reading.cleaned, rest.parse)
+        return replace(reading, messages=messages, refusal=refusal)
     skeleton = None
     if rest.dropped:
         everything = range(len(descriptors))
@@ -113,9 +113,10 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         if skeleton is not None and not _one_constitution(structure, skeleton):
             # Refused one way, the parser falls back on another way to split the name.
             said = "with and without its descriptors the name parser reads two different compounds"
-            return replace(reading, refusal=Refusal("ambiguous", said))
+            return replace(reading, messages=messages, refusal=Refusal("ambiguous", said))
     reading = replace(
         reading,
+        messages=messages,
         structure=structure,
         skeleton=skeleton,
         dropped=rest.dropped,
@@ -137,7 +138,7 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         *implied.faults(reading, parser),
         *assumed.faults(reading),
     ]
-    return replace(reading, faults=tuple(found))
+    return replace(reading, faults=tuple(found)) if found else reading
 
 
 def _one_constitution(one: NamedStructure, two: NamedStructure) -> bool:
