@@ -104,7 +104,10 @@ def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], 
         if isinstance(entry, Unread):
             unread.append(entry)
         else:
-            evidence.append(replace(entry, id=f"e{len(evidence) + 1}"))
+            number = f"e{len(evidence) + 1}"
+            evidence.append(
+                Evidence(number, entry.role, entry.text, entry.place, entry.group, entry.label)
+            )
     return evidence, unread
 
 

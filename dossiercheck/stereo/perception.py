@@ -96,7 +96,7 @@ def from_molblock(text: str) -> Structure:
         mol,
         text,
         dimension=2 if flat else 3,
-        groups=tuple(_groups(mol)),
+        groups=tuple(_groups(mol)) if "MDLV30/STE" in text else (),
         marks=marks,
     )
     vague = {frozenset((m.begin, m.end)) for m in marks if m.style == "crossed"}
@@ -130,7 +130,8 @@ def from_smiles(
     if ":" in text:
         _refuse_odd_bonds(mol)
     Chem.SetBondStereoFromDirections(mol)
-    return Structure(mol, text, groups=(*_groups(mol), *groups), locants=tuple(locants))
+    own = tuple(_groups(mol)) if "|" in text else ()
+    return Structure(mol, text, groups=(*own, *groups), locants=tuple(locants))
 
 
 def from_inchi(text: str) -> Structure:
