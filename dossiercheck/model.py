@@ -93,7 +93,8 @@ class Source:
 @dataclass(frozen=True, slots=True)
 class Place:
     """Where in a source. Numbers are 1-based as a person counts; `span` is 0-based characters
-    of the paragraph, line, cell or field value, end excluded."""
+    of the paragraph, line, cell or field value, end excluded. `path` is an XPath of local names in
+    an XML source ("/document/component[2]"), a JSONPath in a JSON source ("$.entry[0]")."""
 
     source: str
     section: str | None = None
@@ -106,6 +107,7 @@ class Place:
     record: int | None = None
     field: str | None = None
     span: tuple[int, int] | None = None
+    path: str | None = None
 
     def __str__(self) -> str:
         """The place as one phrase, without the source's path."""
@@ -119,6 +121,7 @@ class Place:
             f"column {self.column}" if self.column else "",
             f"paragraph {self.paragraph}" if self.paragraph else "",
             f"line {self.line}" if self.line else "",
+            f"at {self.path}" if self.path else "",
             f"characters {self.span[0] + 1}–{self.span[1]}" if self.span else "",
         ]
         return ", ".join(part for part in parts if part) or "whole file"

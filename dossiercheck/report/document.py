@@ -179,6 +179,8 @@ def _place(place: Place) -> Json:
         found["field"] = place.field
     if place.span is not None:
         found["span"] = list(place.span)
+    if place.path is not None:
+        found["path"] = place.path
     return found
 
 
