@@ -141,6 +141,17 @@ class Unread:
 
 
 @dataclass(frozen=True, slots=True)
+class Pending:
+    """A tracked change that nobody has accepted or rejected yet. `start`, `end` are 0-based
+    characters of the text as it reads now: what was put in stands there; what was taken out
+    (`removed`) stood there."""
+
+    start: int
+    end: int
+    removed: str = ""
+
+
+@dataclass(frozen=True, slots=True)
 class Field:
     """A named value of a record."""
 
@@ -165,6 +176,7 @@ class Cell:
 
     text: str
     place: Place
+    pending: tuple[Pending, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -184,6 +196,7 @@ class Passage:
     text: str
     place: Place
     headings: tuple[str, ...] = ()
+    pending: tuple[Pending, ...] = ()
 
 
 Item = Record | Table | Passage | Unread
@@ -198,7 +211,8 @@ class Evidence:
 
     `text` is verbatim. `group` is the same for evidence that stands together (a record, a row,
     a block of labelled fields), "" for a name that stands alone in running text. `label` is what
-    the place calls the substance, "" where it gives none.
+    the place calls the substance, "" where it gives none. `pending` are the tracked changes that
+    touch it, their characters counted in `text`.
     """
 
     id: str
@@ -207,6 +221,7 @@ class Evidence:
     place: Place
     group: str = ""
     label: str = ""
+    pending: tuple[Pending, ...] = ()
 
     @property
     def kind(self) -> Kind:

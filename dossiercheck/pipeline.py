@@ -104,10 +104,7 @@ def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], 
         if isinstance(entry, Unread):
             unread.append(entry)
         else:
-            number = f"e{len(evidence) + 1}"
-            evidence.append(
-                Evidence(number, entry.role, entry.text, entry.place, entry.group, entry.label)
-            )
+            evidence.append(replace(entry, id=f"e{len(evidence) + 1}"))
     return evidence, unread
 
 
