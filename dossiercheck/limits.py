@@ -28,7 +28,11 @@ class Refused(Exception):
 
 @dataclass(frozen=True, slots=True)
 class Limits:
-    """Budgets of one source. Bytes are inflated bytes; `ratio` is inflated over stored."""
+    """Budgets of one source. Bytes are inflated bytes; `ratio` is inflated over stored.
+
+    The last four are of an archive of sources, with all the archives in it: how deep one may lie
+    in another, how many members, and what they may come to.
+    """
 
     source_bytes: int = 1 << 30
     member_bytes: int = 256 << 20
@@ -40,12 +44,16 @@ class Limits:
     rows: int = 200_000
     columns: int = 512
     cells: int = 4_000_000
+    depth: int = 5
+    entries: int = 100_000
+    unpacked_bytes: int = 64 << 30
+    unpacked_floor: int = 256 << 20
 
 
 DEFAULT = Limits()
 
 # Below this many inflated bytes a high ratio harms nobody: small parts full of repeats are normal.
-_RATIO_FLOOR = 1 << 20
+RATIO_FLOOR = 1 << 20
 _CHUNK = 1 << 16
 
 
@@ -154,7 +162,7 @@ class Archive:
     def _weigh(self, name: str, taken: int, stored: int) -> None:
         if taken > self._limits.member_bytes or self._spent > self._limits.archive_bytes:
             raise Refused("size-budget", f"Part {name} inflates past the size budget.")
-        if taken > _RATIO_FLOOR and taken > self._limits.ratio * max(stored, 1):
+        if taken > RATIO_FLOOR and taken > self._limits.ratio * max(stored, 1):
             raise Refused("inflation-ratio", f"Part {name} inflates far beyond its stored size.")
 
 
@@ -181,17 +189,18 @@ def open_zip(data: bytes, limits: Limits = DEFAULT) -> Archive:
         seen.add(name.casefold())
         if info.flag_bits & 0x1:
             raise Refused("encrypted", f"Part {name} of the archive is encrypted.")
-        if _leaves_the_archive(info.orig_filename):
+        if leaves_the_archive(info.orig_filename):
             raise Refused("unsafe-path", f"Part {name} has a path that leaves the archive.")
         total += info.file_size
         if info.file_size > limits.member_bytes or total > limits.archive_bytes:
             raise Refused("size-budget", f"Part {name} inflates past the size budget.")
-        if info.file_size > max(_RATIO_FLOOR, limits.ratio * max(info.compress_size, 1)):
+        if info.file_size > max(RATIO_FLOOR, limits.ratio * max(info.compress_size, 1)):
             raise Refused("inflation-ratio", f"Part {name} inflates far beyond its stored size.")
     return Archive(archive, limits)
 
 
-def _leaves_the_archive(name: str) -> bool:
+def leaves_the_archive(name: str) -> bool:
+    """True for a path in an archive that is absolute, climbs out, or hides an end in itself."""
     unified = name.replace("\\", "/")
     return (
         "\0" in name

@@ -9,12 +9,13 @@ from pathlib import Path
 
 from dossiercheck import find
 from dossiercheck.language import gather
-from dossiercheck.limits import DEFAULT
+from dossiercheck.limits import DEFAULT, Refused
 from dossiercheck.method import CAUTION, method
 from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, Unread
 from dossiercheck.readers import reader_for
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.settings import Settings
+from dossiercheck.shelf import Shelf
 from dossiercheck.substances import attribute, registered
 from dossiercheck.work import Judged, Workers
 
@@ -28,9 +29,10 @@ def review(
     progress: Progress | None = None,
 ) -> Review:
     """Check the files and folders given. `progress` is told (stage, done, of)."""
-    found = list(find.find(paths))
-    sources = tuple(entry.source for entry in found if isinstance(entry, find.Found))
-    return _review(_read(found, progress), sources, settings, rulebook, progress)
+    with Shelf() as shelf:
+        found = list(find.find(paths, shelf))
+        sources = tuple(entry.source for entry in found if isinstance(entry, find.Found))
+        return _review(_read(found, progress), sources, settings, rulebook, progress)
 
 
 def review_items(items: Iterable[Item], settings: Settings, rulebook: Rulebook) -> Review:
@@ -69,17 +71,18 @@ def _read(found: Iterable[find.Found | Unread], progress: Progress | None) -> It
             progress("reading", number, len(entries))
         if isinstance(entry, Unread):
             yield entry
-            continue
-        yield from _read_one(entry.source, entry.path)
+        elif not entry.archive:
+            yield from _read_one(entry)
 
 
-def _read_one(source: Source, path: Path) -> Iterator[Item]:
+def _read_one(found: find.Found) -> Iterator[Item]:
+    source = found.source
     place = Place(source.path)
     if source.size > DEFAULT.source_bytes:
         yield Unread(place, "too-large", f"{source.size} bytes, more than the budget")
         return
     try:
-        data = path.read_bytes()
+        data = found.read()
         reader = reader_for(source.path, data[:512])
         if reader is None:
             yield Unread(place, "no-reader", f"no reader for files of the kind “{source.format}”")
@@ -90,6 +93,8 @@ def _read_one(source: Source, path: Path) -> Iterator[Item]:
             yield item
         if not count:
             yield Unread(place, "empty", "nothing was found in the file")
+    except Refused as refused:
+        yield Unread(place, refused.reason, refused.detail)
     except OSError as error:
         yield Unread(place, "cannot-open", error.strerror or str(error))
     except Exception as error:
