@@ -7,8 +7,9 @@ Everything here is frozen: a stage receives values and yields new ones. The last
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from enum import StrEnum
+from typing import NamedTuple
 
 
 class Kind(StrEnum):
@@ -94,7 +95,8 @@ class Source:
 class Place:
     """Where in a source. Numbers are 1-based as a person counts; `span` is 0-based characters
     of the paragraph, line, cell or field value, end excluded. `path` is an XPath of local names in
-    an XML source ("/document/component[2]"), a JSONPath in a JSON source ("$.entry[0]")."""
+    an XML source ("/document/component[2]"), a JSONPath in a JSON source ("$.entry[0]"). `box` is
+    left, top, right and bottom in points from the top left corner of the page as it is shown."""
 
     source: str
     section: str | None = None
@@ -108,10 +110,13 @@ class Place:
     field: str | None = None
     span: tuple[int, int] | None = None
     path: str | None = None
+    page: int | None = None
+    box: tuple[float, float, float, float] | None = None
 
     def __str__(self) -> str:
         """The place as one phrase, without the source's path."""
         parts = [
+            f"page {self.page}" if self.page else "",
             f"section {self.section}" if self.section else "",
             f"sheet {self.sheet}" if self.sheet else "",
             f"table {self.table}" if self.table else "",
@@ -170,13 +175,29 @@ class Record:
     place: Place
 
 
+class Stretch(NamedTuple):
+    """Where on a page the characters `start` to `end` of a text stand, in one line."""
+
+    start: int
+    end: int
+    page: int
+    box: tuple[float, float, float, float]
+
+
 @dataclass(frozen=True, slots=True)
 class Cell:
-    """One table cell. A merged cell is repeated where it reaches, with the same place."""
+    """One table cell. A merged cell is repeated where it reaches, with the same place.
+    `breaks` and `stretches` as in a passage."""
 
     text: str
     place: Place
     pending: tuple[Pending, ...] = ()
+    breaks: tuple[int, ...] = ()
+    stretches: tuple[Stretch, ...] = ()
+
+    def at(self, start: int, end: int) -> Place:
+        """The place of the characters from `start` to `end`."""
+        return _at(self.place, self.stretches, start, end)
 
 
 @dataclass(frozen=True, slots=True)
@@ -191,15 +212,52 @@ class Table:
 
 @dataclass(frozen=True, slots=True)
 class Passage:
-    """One paragraph or line of running text under its headings (outermost first)."""
+    """One paragraph or line of running text under its headings (outermost first).
+
+    `breaks` are the offsets of those line feeds in `text` at which the layout ended a line and
+    not the author: what stands on both sides may be one word, cut with a hyphen or without. Any
+    other line feed ends what stands before it. `stretches` say where on the pages the text is.
+    """
 
     text: str
     place: Place
     headings: tuple[str, ...] = ()
     pending: tuple[Pending, ...] = ()
+    breaks: tuple[int, ...] = ()
+    stretches: tuple[Stretch, ...] = ()
+
+    def at(self, start: int, end: int) -> Place:
+        """The place of the characters from `start` to `end`."""
+        return _at(self.place, self.stretches, start, end)
 
 
 Item = Record | Table | Passage | Unread
+
+
+def _at(place: Place, stretches: tuple[Stretch, ...], start: int, end: int) -> Place:
+    """With the span, and with the page and box of its beginning where these are known; inside a
+    stretch its characters count as equally wide."""
+    place = replace(place, span=(start, end))
+    boxes = []
+    page = None
+    for one in stretches:
+        if one.end <= start or one.start >= end or page not in (None, one.page):
+            continue
+        page = one.page
+        left, top, right, bottom = one.box
+        width = (right - left) / (one.end - one.start)
+        boxes.append(
+            (
+                left + width * max(start - one.start, 0),
+                top,
+                right - width * max(one.end - end, 0),
+                bottom,
+            )
+        )
+    if not boxes:
+        return place
+    lefts, tops, rights, bottoms = zip(*boxes, strict=True)
+    return replace(place, page=page, box=(min(lefts), min(tops), max(rights), max(bottoms)))
 
 
 # --- evidence -----------------------------------------------------------------------------

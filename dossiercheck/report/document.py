@@ -136,6 +136,7 @@ def _unread_order(unread: Unread) -> tuple[Any, ...]:
     place = unread.place
     return (
         place.source,
+        place.page or 0,
         place.sheet or "",
         place.table or 0,
         place.record or 0,
@@ -181,6 +182,10 @@ def _place(place: Place) -> Json:
         found["span"] = list(place.span)
     if place.path is not None:
         found["path"] = place.path
+    if place.page is not None:
+        found["page"] = place.page
+    if place.box is not None:
+        found["box"] = [round(edge, 1) for edge in place.box]
     return found
 
 
