@@ -26,7 +26,7 @@ def statement_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
         return
     for reading in case.of_role(Role.STEREO):
         stated = reading.statement.kind if reading.statement else ""
-        if not stated or stated == found or found in ("silent", "") or found.startswith("partly"):
+        if not stated or not _contradicts(stated, found, case.structure):
             continue
         yield Observation(
             {"stated": reading.evidence.text.strip(), "found": found},
@@ -51,6 +51,18 @@ def statement_count_differs(case: Case, params: Params) -> Iterator[Observation]
             {"stated": str(stated), "found": str(len(atoms))},
             (exhibit(reading), exhibit(case.reference, atoms=dict.fromkeys(sorted(atoms), ""))),
         )
+
+
+def _contradicts(stated: str, found: str, structure: Structure) -> bool:
+    """A mixture of stereoisomers is contradicted by one that is wholly specified and by a
+    structure that has none; optical activity by a racemate and by what is achiral."""
+    if found in ("silent", "") or found.startswith("partly"):
+        return False
+    if stated == "mixture":
+        return found == "achiral" or (found == "absolute" and not structure.undefined)
+    if stated == "active":
+        return found in ("racemic", "achiral")
+    return stated != found
 
 
 def _kind(structure: Structure) -> str:

@@ -17,6 +17,8 @@ from dossiercheck.model import Evidence, Field, Record, Role, Unread
 
 _ONE_LINE = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.FORMULA, Role.MASS, Role.REGISTRY)
 
+_OPEN = {"unknown", "not known", "not determined"}
+
 
 def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evidence | Unread]:
     """The molfile, then the fields in their order; all of one group.
@@ -30,7 +32,7 @@ def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evid
         yield Evidence("", Role.MOLFILE, record.molblock, record.place, group, label)
     for field, meaning in fields:
         value = field.value.strip()
-        if is_nothing(value) or not isinstance(meaning, Role | Aside):
+        if not isinstance(meaning, Role | Aside) or (is_nothing(value) and not _is_open(field)):
             continue
         if meaning is Aside.COUNT:
             # The number says nothing without its heading.
@@ -45,10 +47,17 @@ def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evid
                 yield Evidence("", meaning, text, field.place, group, label)
 
 
+def _is_open(field: Field) -> bool:
+    """True where the value says that the stereochemistry is not known: that is something said,
+    and a drawing beside it may say otherwise."""
+    said = field.value.strip().casefold()
+    return said in _OPEN and meaning_of(field.name) is Role.STEREO
+
+
 def _meaning(field: Field, columns: Mapping[str, str]) -> Meaning | None:
     meaning = meaning_of(field.name, columns)
     if is_nothing(field.value):
-        return None
+        return Role.STEREO if _is_open(field) else None
     itself = says_itself(field.value)
     if (
         itself

@@ -91,6 +91,7 @@ _SYNONYMS: Mapping[Meaning, str] = {
         absolute configuration | stereo | stereochemical form | stereoisomeric form
         stereochemical configuration | isomeric form | isomer type | stereo type
         stereochemical type | chirality statement | chiral form | stereochemical purity
+        stereochemistry type | optical activity | optical activity type
         """,
     Role.MOLFILE: "molfile | mol file | molblock | mol block | connection table",
     Aside.COUNT: """
@@ -152,6 +153,7 @@ _NOTHING |= {
     "?",
 }
 _NOTHING |= {"not determined", "to be determined", "not stated", "see structure", "null", "nan"}
+_NOTHING |= {"unspecified", "not specified"}
 
 
 def plain(heading: str) -> str:

@@ -21,6 +21,29 @@ _COUNT = re.compile(
     r"(?:cent(?:er|re)s?|carbons?(?:\s+atoms?)?)\b",
     re.IGNORECASE,
 )
+# A count field with its heading before it, as `records` and `tables` put the two together.
+_COUNTED = re.compile(
+    r"(?:number\s+of\s+|no\.?\s+of\s+)?(?:stereo(?:genic\s+|chemical\s+)?|chiral\s+|asymmetric\s+)"
+    r"(?:cent(?:er|re)s?|carbon\s+atoms?)\s*[:=]?\s*(\d+|" + "|".join(_NUMBERS) + r")",
+    re.IGNORECASE,
+)
+# Codes that structured exports use whole; inside a sentence the words mean other things.
+_CODES = {
+    "mixed": "mixture",
+    "epimeric": "mixture",
+    "+": "active",
+    "-": "active",
+    "−": "active",
+    "(+)": "active",
+    "(-)": "active",
+    "(−)": "active",
+    "+/-": "racemic",
+    "(+/-)": "racemic",
+    "±": "racemic",
+    "dextrorotatory": "active",
+    "levorotatory": "active",
+    "laevorotatory": "active",
+}
 _DOUBT = re.compile(
     r"\b(?:not|non|without|neither|nor|cannot|may|might|possibly|probably|presumed|unless"
     r"|unknown|undetermined|except|if)\b|n['’]t\b",
@@ -43,8 +66,9 @@ _KINDS = (
 
 @dataclass(frozen=True, slots=True)
 class Statement:
-    """`kind` is racemic, relative, absolute, achiral or "" where none is claimed; `centres` is
-    the number claimed, None where none is."""
+    """`kind` is racemic, relative, absolute, achiral, "mixture" (of stereoisomers, in whatever
+    ratio: epimers, or several), "active" (rotates polarised light), or "" where none is claimed;
+    `centres` is the number claimed, None where none is."""
 
     kind: str = ""
     centres: int | None = None
@@ -52,6 +76,12 @@ class Statement:
 
 def read_statement(text: str) -> Statement | None:
     """The claim of a stereochemistry field, None where it is not understood for certain."""
+    counted = _COUNTED.fullmatch(text.strip())
+    if counted:
+        return Statement(centres=_number(counted[1]))
+    code = _CODES.get(re.sub(r"\s", "", text).casefold())
+    if code:
+        return Statement(code)
     counts = {_number(found) for found in _COUNT.findall(text)}
     rest = _COUNT.sub(" ", text)
     if _DOUBT.search(rest) or len(counts) > 1:
