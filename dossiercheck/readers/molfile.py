@@ -147,6 +147,13 @@ def _field_name(line: str) -> str:
     return numbered[0] if numbered else ""
 
 
+def fault_of(molblock: str) -> str:
+    """What is missing from a connection table that is to end with `M  END`, "" when it is whole."""
+    if "\nM  END" not in molblock:
+        return "The connection table has no M  END line."
+    return _fault(molblock.split("\n"))
+
+
 def _fault(lines: list[str]) -> str:
     """What is missing from a connection table, "" when it is whole."""
     if len(lines) < 5:
