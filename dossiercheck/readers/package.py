@@ -69,8 +69,11 @@ def open_package(data: bytes, limits: Limits = DEFAULT) -> Archive:
 def main_part(archive: Archive, expected: str) -> str:
     """Name of the part that holds the document; `expected` is its usual name's stem, such as
     "workbook". Raises `Refused` where the package holds another kind of document."""
-    for relation in relations(archive, ""):
-        if relation.kind == "officeDocument" and not relation.external:
+    mains = [one for one in relations(archive, "") if one.kind == "officeDocument"]
+    if len(mains) > 1:
+        raise Refused("duplicate-part", "The package names more than one part as its document.")
+    for relation in mains:
+        if not relation.external:
             if posixpath.splitext(relation.target)[1] != ".xml":
                 raise Refused("unsupported-format", f"The part {relation.target} is not XML.")
             root = local(parse_xml(archive.read(relation.target)))
@@ -81,7 +84,10 @@ def main_part(archive: Archive, expected: str) -> str:
 
 
 def relations(archive: Archive, part: str) -> tuple[Relation, ...]:
-    """Relationships of a part ("" for the package), in the order written."""
+    """Relationships of a part ("" for the package), in the order written.
+
+    Raises `Refused`, also where one id is given twice: programs differ on which one they follow.
+    """
     folder, name = posixpath.split(part)
     path = posixpath.join(folder, "_rels", name + ".rels")
     if path not in archive:
@@ -95,5 +101,8 @@ def relations(archive: Archive, part: str) -> tuple[Relation, ...]:
         if not external:
             target = posixpath.normpath(posixpath.join("/", folder, target)).lstrip("/")
         kind = attribute(node, "Type").rpartition("/")[2]
+        if any(known.id == attribute(node, "Id") for known in found):
+            detail = f"{path} gives the relationship {attribute(node, 'Id')} twice."
+            raise Refused("duplicate-part", detail)
         found.append(Relation(attribute(node, "Id"), kind, target, external))
     return tuple(found)

@@ -1,7 +1,8 @@
 """Word documents: DOCX, read from their parts (ECMA-376 part 1, clause 17).
 
-The text is the document as it reads with its tracked insertions taken and its tracked deletions
-left out. Pictures and embedded objects are listed as unread, each at its paragraph.
+The text is the document as it reads now: tracked insertions are in and marked as pending,
+tracked deletions are out and listed. What is no text of the document, or is not read (comments,
+hidden text, pictures, drawing objects), is listed at its paragraph.
 """
 
 from __future__ import annotations
@@ -14,6 +15,7 @@ from lxml import etree
 from dossiercheck.limits import DEFAULT, Archive, Limits, parse_xml
 from dossiercheck.model import Item, Passage, Place, Source, Unread
 from dossiercheck.readers.content import guarded
+from dossiercheck.readers.numbering import Numbering, read_numbering
 from dossiercheck.readers.package import (
     OLE,
     ZIP,
@@ -25,11 +27,13 @@ from dossiercheck.readers.package import (
     open_package,
     relations,
 )
-from dossiercheck.readers.runs import ParagraphText, gather_runs
+from dossiercheck.readers.paragraph import ParagraphText, continued, mark_removed
+from dossiercheck.readers.runs import Surroundings, gather_runs
 from dossiercheck.readers.sections import Heading, Outline, number_of, numbered_heading
+from dossiercheck.readers.wordstyles import Styles, outline_level, read_styles
 from dossiercheck.readers.wordtable import Grid, lay_out
 
-SUFFIXES = frozenset({".docx", ".docm", ".doc"})
+SUFFIXES = frozenset({".docx", ".docm", ".dotx", ".dotm", ".doc", ".dot"})
 
 # Parts beside the body, in the order read, with what a place in them is called.
 _BESIDE = (
@@ -38,25 +42,41 @@ _BESIDE = (
     ("footnotes", "footnotes"),
     ("endnotes", "endnotes"),
 )
+_EMBEDDED = ("oleObject", "package", "aFChunk", "subDocument")
+_NO_CONTENT = {"", "sectPr", "sdtPr", "sdtEndPr", "customXmlPr", "tblPr", "tcPr", "pPr"}
+_TEXT = ("t", "delText")
 _CONTAINERS = {"sdt", "sdtContent", "customXml", "ins", "moveTo", "smartTag", "footnote", "endnote"}
 
 
 @dataclass(slots=True)
 class _Story:
-    """One part on its way through: what has been counted and which headings stand above."""
+    """One part on its way through: what has been counted and which headings stand above. `open`
+    is a paragraph whose end a tracked change takes out, waiting for the next one."""
 
     source: str
+    around: Surroundings
     where: str = ""
-    styles: dict[str, int] = field(default_factory=dict)
     outline: Outline = field(default_factory=Outline)
     paragraphs: int = 0
     tables: int = 0
     last_text: str = ""
+    open: ParagraphText | None = None
 
     def place(self) -> Place:
         """The present paragraph."""
         section = self.where or self.outline.section
         return Place(self.source, section=section, paragraph=self.paragraphs)
+
+
+@dataclass(frozen=True, slots=True)
+class _Shared:
+    """What all parts of one document have in common."""
+
+    archive: Archive
+    source: str
+    styles: Styles
+    numbering: Numbering
+    comments: dict[str, str]
 
 
 @guarded(ZIP, OLE)
@@ -72,26 +92,72 @@ def read_within(source: Source, data: bytes, limits: Limits) -> Iterator[Item]:
         yield old
         return
     archive = open_package(data, limits)
-    part = main_part(archive, "document")
-    related = [relation for relation in relations(archive, part) if not relation.external]
-    styles = _heading_styles(archive, [r.target for r in related if r.kind == "styles"])
-    body = child(parse_xml(archive.read(part)), "body")
-    if body is not None:
-        yield from _blocks(body, _Story(source.path, styles=styles))
+    main = main_part(archive, "document")
+    related = [one for one in relations(archive, main) if not one.external]
+    styles = read_styles(archive, [one.target for one in related if one.kind == "styles"])
+    lists = [one.target for one in related if one.kind == "numbering"]
+    comments = _comments(archive, [one.target for one in related if one.kind == "comments"])
+    shared = _Shared(archive, source.path, styles, read_numbering(archive, lists, styles), comments)
+    placed: set[str] = set()
+    yield from _part(shared, main, "", placed)
     for kind, where in _BESIDE:
         for number, relation in enumerate((r for r in related if r.kind == kind), 1):
             name = f"{where} {number}" if kind in ("header", "footer") else where
             if relation.target not in archive:
                 yield Unread(Place(source.path, name), "missing-part", "The part is missing.")
                 continue
-            root = parse_xml(archive.read(relation.target))
-            yield from _blocks(root, _Story(source.path, where=name, styles=styles))
-    for relation in related:
-        if relation.kind == "comments":
-            yield Unread(Place(source.path), "comment", "The document has comments: not read.")
-        elif relation.kind == "aFChunk":
-            detail = f"The document embeds {relation.target}, which is not read."
-            yield Unread(Place(source.path), "embedded-document", detail)
+            yield from _part(shared, relation.target, name, placed)
+    for identity, text in comments.items():
+        if identity not in placed:
+            detail = "A comment that is anchored nowhere in the text."
+            yield Unread(Place(source.path), "comment", detail, text)
+
+
+def _part(shared: _Shared, part: str, where: str, placed: set[str]) -> Iterator[Item]:
+    """A part from its first paragraph to its last, and what it refers to and nowhere shows."""
+    related = {one.id: one for one in relations(shared.archive, part)}
+    root = parse_xml(shared.archive.read(part))
+    around = Surroundings(
+        shared.styles,
+        related,
+        shared.comments,
+        shared.numbering.labels(_counted(root)),
+        frozenset(_prompts(root)),
+        placed=placed,
+    )
+    story = _Story(shared.source, around, where)
+    main = root if where else child(root, "body")
+    if main is not None:
+        yield from _blocks(main, story)
+        yield from _flush(story)
+    for one in related.values():
+        if one.target in around.parts or one.kind == "hyperlink":
+            continue
+        place = Place(shared.source, where or None)
+        if one.external:
+            detail = f"The document points to {one.target}, which is not fetched."
+            yield Unread(place, "external-part", detail)
+        elif one.kind in _EMBEDDED:
+            detail = f"The document carries {one.target}, which stands nowhere in its text."
+            yield Unread(place, "embedded-document", detail)
+
+
+def _counted(root: etree._Element) -> Iterator[etree._Element]:
+    """The paragraphs that lists count: not those taken out, nor the second form of text boxes."""
+    for paragraph in root.iter("{*}p"):
+        if mark_removed(paragraph):
+            continue
+        if not any(local(above) == "Fallback" for above in paragraph.iterancestors()):
+            yield paragraph
+
+
+def _prompts(root: etree._Element) -> Iterator[etree._Element]:
+    """The controls that still show their prompt."""
+    for control in root.iter("{*}sdt"):
+        properties = child(control, "sdtPr")
+        mark = child(properties, "showingPlcHdr") if properties is not None else None
+        if mark is not None and attribute(mark, "val", "1") not in ("0", "false", "off"):
+            yield control
 
 
 def _blocks(parent: etree._Element, story: _Story) -> Iterator[Item]:
@@ -100,23 +166,57 @@ def _blocks(parent: etree._Element, story: _Story) -> Iterator[Item]:
         if name == "p":
             yield from _paragraph(node, story)
         elif name == "tbl":
+            yield from _flush(story)
             yield from _table(node, story)
         elif name in _CONTAINERS:
             yield from _blocks(node, story)
+        elif name == "AlternateContent":
+            chosen = child(node, "Choice")
+            chosen = child(node, "Fallback") if chosen is None else chosen
+            if chosen is not None:
+                yield from _blocks(chosen, story)
+        elif name == "altChunk":
+            relation = story.around.relations.get(attribute(node, "id"))
+            target = relation.target if relation else "a part"
+            story.around.parts.add(target)
+            detail = f"The document embeds {target}, which is not read."
+            yield Unread(story.place(), "embedded-document", detail)
+        elif name not in _NO_CONTENT:
+            text = "".join(one.text or "" for one in node.iter() if local(one) in _TEXT)
+            if text.strip():
+                detail = f"Text in an element “{name}” where none is expected is not read."
+                yield Unread(story.place(), "unexpected-content", detail, text)
 
 
 def _paragraph(node: etree._Element, story: _Story) -> Iterator[Item]:
+    content = gather_runs(node, story.around)
+    if story.open is not None:
+        content = continued(story.open, content)
+        story.open = None
+    if content.joins:
+        story.open = content
+        return
+    yield from _said(content, story, node)
+
+
+def _flush(story: _Story) -> Iterator[Item]:
+    """A paragraph that waits for one to join, where none comes."""
+    if story.open is not None:
+        content, story.open = story.open, None
+        yield from _said(content, story, None)
+
+
+def _said(content: ParagraphText, story: _Story, node: etree._Element | None) -> Iterator[Item]:
     story.paragraphs += 1
-    content = gather_runs(node)
     text = content.text
-    heading = None if story.where else _heading(node, text, story.styles)
+    heading = None if story.where or node is None else _heading(node, text, story.around.styles)
     above = story.outline.headings
     if heading:
         story.outline.enter(heading)
         above = story.outline.headings[:-1]
     place = story.place()
     if text.strip():
-        yield Passage(text, place, above)
+        yield Passage(text, place, above, content.pending)
         story.last_text = text.strip()
     yield from _beside_text(content, story, place)
 
@@ -127,23 +227,23 @@ def _beside_text(content: ParagraphText, story: _Story, place: Place) -> Iterato
         yield Unread(place, reason, detail, text)
     for box in content.boxes:
         yield from _blocks(box, story)
+        yield from _flush(story)
 
 
 def _table(node: etree._Element, story: _Story) -> Iterator[Item]:
     story.tables += 1
     caption = story.last_text if story.last_text.lower().startswith("table") else ""
     place = Place(story.source, section=story.where or story.outline.section, table=story.tables)
-    grid: Grid = lay_out(node, place, story.outline.headings, caption)
+    grid: Grid = lay_out(node, place, story.outline.headings, caption, story.around)
     if grid.table.rows:
         yield grid.table
     for where, content in grid.contents:
-        story_place = where
-        yield from _beside_text(content, story, story_place)
+        yield from _beside_text(content, story, where)
     for nested in grid.nested:
         yield from _table(nested, story)
 
 
-def _heading(node: etree._Element, text: str, styles: dict[str, int]) -> Heading | None:
+def _heading(node: etree._Element, text: str, styles: Styles) -> Heading | None:
     if not text.strip():
         return None
     properties = child(node, "pPr")
@@ -152,53 +252,21 @@ def _heading(node: etree._Element, text: str, styles: dict[str, int]) -> Heading
         direct = child(properties, "outlineLvl")
         style = child(properties, "pStyle")
         if direct is not None:
-            level = _level(attribute(direct, "val"))
+            level = outline_level(attribute(direct, "val"))
         elif style is not None:
-            level = styles.get(attribute(style, "val"))
+            level = styles.levels.get(attribute(style, "val"))
     shown = " ".join(text.split())
     if level is not None:
         return Heading(shown, level, number_of(shown))
     return numbered_heading(shown)
 
 
-def _level(value: str) -> int | None:
-    """Outline levels count from 0; 9 is body text."""
-    return int(value) + 1 if value.isdigit() and int(value) < 9 else None
-
-
-def _heading_styles(archive: Archive, parts: list[str]) -> dict[str, int]:
-    """Style id -> heading level, through the styles that a style is based on."""
-    levels: dict[str, int] = {}
-    based: dict[str, str] = {}
+def _comments(archive: Archive, parts: list[str]) -> dict[str, str]:
+    """The text of each comment by its id."""
+    found: dict[str, str] = {}
     for part in parts:
-        if part not in archive:
-            continue
-        for style in parse_xml(archive.read(part)):
-            if local(style) != "style" or attribute(style, "type") != "paragraph":
-                continue
-            identity = attribute(style, "styleId")
-            level = _style_level(style)
-            if level is not None:
-                levels[identity] = level
-            parent = child(style, "basedOn")
-            if parent is not None:
-                based[identity] = attribute(parent, "val")
-    for identity in list(based):
-        ancestor, steps = identity, 0
-        while ancestor not in levels and ancestor in based and steps < 50:
-            ancestor, steps = based[ancestor], steps + 1
-        if ancestor in levels:
-            levels.setdefault(identity, levels[ancestor])
-    return levels
-
-
-def _style_level(style: etree._Element) -> int | None:
-    properties = child(style, "pPr")
-    outline = child(properties, "outlineLvl") if properties is not None else None
-    if outline is not None:
-        return _level(attribute(outline, "val"))
-    name_node = child(style, "name")
-    name = attribute(name_node, "val").lower() if name_node is not None else ""
-    if name.startswith("heading ") and name[8:].isdigit():
-        return int(name[8:])
-    return 1 if name == "title" else None
+        if part in archive:
+            for node in parse_xml(archive.read(part)):
+                lines = [gather_runs(one).text for one in node.iter("{*}p")]
+                found[attribute(node, "id")] = "\n".join(line for line in lines if line.strip())
+    return found
