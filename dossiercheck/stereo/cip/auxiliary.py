@@ -1,0 +1,166 @@
+"""Ranking by stereogenic units in the branches: Rules 3 to 6 and auxiliary descriptors.
+
+Hanson et al. 2018 and IUPAC 2013, P-92.4 to P-92.6. A unit within a branch gets its auxiliary
+descriptor from the tree as it hangs from that unit, the outermost sphere first.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Sequence
+from itertools import groupby
+
+from dossiercheck.stereo.cip.molecule import LONE_PAIR
+from dossiercheck.stereo.cip.ranking import BEFORE, Key, Keys, Order, Property, by_constitution
+from dossiercheck.stereo.cip.tree import MULTIPLE, REAL, Branch, Node, Tree
+from dossiercheck.stereo.cip.units import Marked
+
+# What Rule 4b and 5 call like: the chiral descriptors in their two classes.
+_CLASS = {"R": 1, "M": 1, "z": 1, "S": -1, "P": -1, "e": -1}
+_GEOMETRY = {"Z": 2.0, "E": 1.0}
+_CHIRAL = {**dict.fromkeys("RSMPez", 2.0), **dict.fromkeys("rsmpEZ", 1.0)}
+_PSEUDO = {**dict.fromkeys("rm", 2.0), **dict.fromkeys("sp", 1.0)}
+
+def _of(table: dict[str, float]) -> Property:
+    return lambda branch: table.get(branch.node.aux, 0.0)
+
+
+_PROPERTIES: dict[str, Property] = {"3": _of(_GEOMETRY), "4a": _of(_CHIRAL), "4c": _of(_PSEUDO)}
+
+
+def by_everything(order: Order, hand: int = 1, favoured: int | None = None) -> Order:
+    """The order after Rules 3 to 5, and Rule 6 where `favoured` names the atom whose first
+    occurrence counts. `hand` -1 ranks as the mirror image would be ranked by Rule 5."""
+    order = Order([list(group) for group in order.groups], list(order.steps))
+    keys = Keys(_PROPERTIES)
+    for rule in ("3", "4a"):
+        order.split(lambda branch, rule=rule: keys.of(branch, rule), rule)  # type: ignore[misc]
+    if not order.unique:
+        order.split(lambda branch: _pairs(branch, keys), "4b")
+    if not order.unique:
+        pseudo = _PROPERTIES["4c"]
+        order.split(lambda branch: keys.spheres(branch, pseudo, BEFORE["4b"], "4c"), "4c")
+    if not order.unique:
+        order.split(lambda branch: _likeness(branch, keys, hand), "5")
+    if favoured is not None and not order.unique:
+        first: Property = lambda branch: float(branch.node.atom == favoured)  # noqa: E731
+        order.split(lambda branch: keys.spheres(branch, first, BEFORE["4b"], "6"), "6")
+    return order
+
+
+def _pairs(branch: Branch, keys: Keys) -> list[Key]:
+    """Rule 4b: the descriptors of the branch as like or unlike its reference descriptor; both
+    readings, the better first, where the reference could be either."""
+    found = (_likeness(branch, keys, reference) for reference in _references(branch, keys))
+    return sorted(found, reverse=True)
+
+
+def _likeness(branch: Branch, keys: Keys, reference: int) -> Key:
+    like: Property = lambda inner: float(  # noqa: E731
+        (_CLASS.get(inner.node.aux, 0) == reference) - (_CLASS.get(inner.node.aux, 0) == -reference)
+    )
+    return keys.spheres(branch, like, BEFORE["4b"], f"like {reference}")
+
+
+def _references(branch: Branch, keys: Keys) -> tuple[int, ...]:
+    """The reference descriptor: that of the highest node that has one; where several share that
+    rank, the one that is there more often, or both (Hanson et al. 2018, Rule 4b)."""
+    ranks: list[list[Branch]] = [[branch]]
+    while ranks:
+        onward: list[list[Branch]] = []
+        for rank in ranks:
+            balance = [_CLASS[one.node.aux] for one in rank if one.node.aux in _CLASS]
+            if balance:
+                total = sum(balance)
+                return (1,) if total > 0 else (-1,) if total < 0 else (1, -1)
+            kids = [kid for one in rank for kid in one.below()]
+            keyed = sorted(
+                ([keys.of(kid, rule) for rule in BEFORE["4b"]], number)
+                for number, kid in enumerate(kids)
+            )
+            keyed.reverse()
+            onward.extend(
+                [kids[number] for _, number in group] for _, group in groupby(keyed, lambda k: k[0])
+            )
+        ranks = onward
+    return ()
+
+
+def label_branches(
+    tree: Tree,
+    marked: Iterable[Marked],
+    letter: Callable[[Marked, Sequence[Order]], str],
+) -> None:
+    """Set the auxiliary descriptor of every unit within the tree, outermost sphere first.
+
+    `letter` reads the descriptor from the ligands of each end as constitution ranks them. Raises
+    `TooLarge`.
+    """
+    places: dict[int, list[Node]] = {}
+    for node in tree.unfold_all():
+        places.setdefault(node.atom, []).append(node)
+    waiting: list[tuple[int, Node, Marked, tuple[Node, ...]]] = []
+    for unit in marked:
+        directions = (unit.chain,) if len(unit.chain) == 1 else (unit.chain, unit.chain[::-1])
+        for chain in directions:
+            for node in places.get(chain[0], ()):
+                nodes = _follow(node, chain)
+                if nodes and node is not tree.root:
+                    waiting.append((node.sphere, node, unit, nodes))
+    waiting.sort(key=lambda entry: -entry[0])
+    for _, batch in groupby(waiting, lambda entry: entry[0]):
+        decided = []
+        for _, node, unit, nodes in batch:
+            ends = {end.atom: end for end in nodes}
+            orders = []
+            for end in unit.ends:
+                ligands = ligand_branches(ends[end], unit.at(end))
+                if ligands is None:
+                    break
+                orders.append(by_constitution(ligands))
+            else:
+                decided.append((node, letter(unit, orders)))
+        for node, descriptor in decided:
+            if descriptor:
+                node.aux = descriptor
+
+
+def _follow(node: Node, chain: Sequence[int]) -> tuple[Node, ...]:
+    """The nodes of a unit that begins at `node` and goes outward; () where it does not."""
+    nodes = [node]
+    for atom in chain[1:]:
+        step = next(
+            (
+                kid
+                for kid in nodes[-1].below()
+                if isinstance(kid, Node) and kid.atom == atom and kid.kind == REAL
+            ),
+            None,
+        )
+        if step is None:
+            return ()
+        nodes.append(step)
+    return tuple(nodes)
+
+
+def ligand_branches(node: Node, ligands: Sequence[int]) -> list[Branch] | None:
+    """The branch of each ligand, seen from a node; None where one is not there. A lone pair has
+    no branch and is left out: it always ranks lowest."""
+    branches: list[Branch] = []
+    for ligand in ligands:
+        if ligand == LONE_PAIR:
+            continue
+        if node.parent is not None and node.parent.atom == ligand:
+            branches.append(node.up())
+            continue
+        found = next(
+            (
+                kid
+                for kid in node.below()
+                if isinstance(kid, Node) and kid.atom == ligand and kid.kind != MULTIPLE
+            ),
+            None,
+        )
+        if found is None:
+            return None
+        branches.append(found)
+    return branches

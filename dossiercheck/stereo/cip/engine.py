@@ -1,0 +1,121 @@
+"""Descriptors of all marked units of a molecule, by the engine's own computation."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, field
+
+from dossiercheck.stereo.cip.auxiliary import by_everything, label_branches, ligand_branches
+from dossiercheck.stereo.cip.molecule import LONE_PAIR, Molecule
+from dossiercheck.stereo.cip.ranking import Order, by_constitution
+from dossiercheck.stereo.cip.tree import TooLarge, Tree
+from dossiercheck.stereo.cip.units import CENTRE, DOUBLE_BOND, Marked, parity
+
+# Nodes of one tree. About a second; a larger one is given up and its unit left undetermined.
+BUDGET = 200_000
+
+@dataclass(slots=True)
+class Ranked:
+    """A unit with its letter ("" where it is not stereogenic) and the ranking that gives it.
+
+    `orders` has one order for a centre, one for each end of another unit; `doubt` says why there
+    is no letter where the computation was given up.
+    """
+
+    unit: Marked
+    descriptor: str = ""
+    orders: list[Order] = field(default_factory=list)
+    trees: list[Tree] = field(default_factory=list)
+    doubt: str = ""
+
+
+def rank_all(molecule: Molecule, marked: Sequence[Marked], budget: int = BUDGET) -> list[Ranked]:
+    """The descriptor of each unit, by Rules 1 and 2 where they suffice, else by all."""
+    return [_rank(molecule, unit, marked, budget) for unit in marked]
+
+
+def _rank(molecule: Molecule, unit: Marked, marked: Sequence[Marked], budget: int) -> Ranked:
+    result = Ranked(unit)
+    try:
+        for end in unit.ends:
+            tree = Tree(molecule, end, budget)
+            ligands = ligand_branches(tree.root, unit.at(end))
+            if ligands is None:
+                return result
+            result.trees.append(tree)
+            result.orders.append(by_constitution(ligands))
+        if _unique(result.orders):
+            result.descriptor = letter(unit, result.orders)
+        else:
+            _rank_further(result, marked)
+    except (TooLarge, RecursionError):
+        result.doubt = "the digraph is larger than the budget"
+    return result
+
+
+def _unique(orders: Sequence[Order]) -> bool:
+    return all(order.unique for order in orders)
+
+
+def _rank_further(result: Ranked, marked: Sequence[Marked]) -> None:
+    """Rules 3 to 6."""
+    if len(marked) > 1:
+        for tree, order in zip(result.trees, result.orders, strict=True):
+            if not order.unique:
+                label_branches(tree, marked, _auxiliary)
+    result.descriptor, result.orders = _by_stereo(result.unit, result.orders)
+    if not _unique(result.orders):
+        _by_choice(result)
+
+
+def _by_choice(result: Ranked) -> None:
+    """Rule 6: one of the ligands still tied is favoured; the letter counts only where every
+    choice among them gives the same one (Hanson et al. 2018, Rule 6)."""
+    tied = next(group for order in result.orders for group in order.groups if len(group) > 1)
+    outcomes = [_by_stereo(result.unit, result.orders, each.node.atom) for each in tied]
+    if len({descriptor for descriptor, _ in outcomes}) == 1:
+        result.descriptor, result.orders = outcomes[0]
+
+
+def _by_stereo(
+    unit: Marked, orders: Sequence[Order], favoured: int | None = None
+) -> tuple[str, list[Order]]:
+    """Letter and ranking by Rules 3 to 6 on top of `orders`; "" where two ligands still tie.
+
+    Where Rule 5 had a say, the mirror image is ranked as well: a unit that is its own mirror image
+    gets a small letter, and so does a double bond that is not (IUPAC 2013, P-92.6, P-93.4.2.1.3).
+    """
+    ranked = [by_everything(order, favoured=favoured) for order in orders]
+    found = letter(unit, ranked)
+    if found and any(step.rule == "5" for order in ranked for step in order.steps):
+        mirrored = [by_everything(order, hand=-1, favoured=favoured) for order in orders]
+        image = letter(unit, mirrored, mirror=unit.kind != DOUBLE_BOND)
+        if (image == found) != (unit.kind == DOUBLE_BOND):
+            found = found.lower()
+    return found, ranked
+
+
+def _auxiliary(unit: Marked, orders: Sequence[Order]) -> str:
+    return letter(unit, orders) if _unique(orders) else _by_stereo(unit, orders)[0]
+
+
+def letter(unit: Marked, orders: Sequence[Order], mirror: bool = False) -> str:
+    """The capital letter that the ranks give the unit, or its mirror image; "" where two tie."""
+    if not _unique(orders):
+        return ""
+    ranked: list[int] = []
+    for end, order in zip(unit.ends, orders, strict=True):
+        present = unit.at(end)
+        ranks = [branch.node.atom for branch in order.ranked]
+        ranked += [*ranks, LONE_PAIR] if LONE_PAIR in present else ranks
+    sign = -unit.sign if mirror else unit.sign
+    if unit.kind == CENTRE:
+        return "S" if sign * parity(ranked, unit.ligands) > 0 else "R"
+    for number in (0, 2):
+        if ranked[number] != unit.ligands[number]:
+            sign = -sign
+    if unit.kind == DOUBLE_BOND:
+        return "Z" if sign > 0 else "E"
+    return "P" if sign > 0 else "M"
+
+

@@ -1,0 +1,107 @@
+"""The molecule as the engine sees it: plain lists, Kekulé bond orders, averaged duplicates."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from rdkit import Chem
+
+from dossiercheck.stereo.cip.mancude import averaged
+
+HYDROGEN = -1  # a hydrogen that is counted and not an atom of its own
+LONE_PAIR = -2
+
+_AROMATIC = Chem.BondType.AROMATIC
+_ORDERS = {
+    Chem.BondType.SINGLE: 1,
+    Chem.BondType.DOUBLE: 2,
+    Chem.BondType.TRIPLE: 3,
+    Chem.BondType.QUADRUPLE: 4,
+}
+_WEIGHTS = Chem.GetPeriodicTable()
+
+
+@dataclass(frozen=True, slots=True)
+class Molecule:
+    """Atoms are 0-based; `near[a]` maps each neighbour of a to the bond's order (1 to 4).
+
+    `duplicate[a]` is the averaged atomic number of a's one duplicate atom where a is part of a
+    mancude ring whose double bonds can be placed in more than one way, 0 elsewhere
+    (IUPAC 2013, P-92.1.4.4). A multiple bond at an atom of the third period or below that has
+    three ligands or more counts as single: d orbitals are left out (IUPAC 2013, P-92.1.4.2).
+    """
+
+    symbol: list[str]
+    number: list[int]
+    isotope: list[int]
+    charge: list[int]
+    hydrogens: list[int]
+    near: list[dict[int, int]]
+    ring: frozenset[tuple[int, int]]
+    duplicate: list[float]
+
+    def mass(self, atom: int) -> float:
+        """Mass of the isotope of a labelled atom, standard atomic weight of another, in daltons."""
+        if atom < 0:
+            return float(_WEIGHTS.GetAtomicWeight(1)) if atom == HYDROGEN else 0.0
+        number, isotope = self.number[atom], self.isotope[atom]
+        if isotope:
+            return float(_WEIGHTS.GetMassForIsotope(number, isotope) or isotope)
+        return float(_WEIGHTS.GetAtomicWeight(number))
+
+    def in_ring(self, one: int, two: int) -> bool:
+        """Whether the bond between two atoms is a ring bond."""
+        return (min(one, two), max(one, two)) in self.ring
+
+    def name(self, atom: int) -> str:
+        """Element symbol, with the mass number of an isotope."""
+        if atom < 0:
+            return "H" if atom == HYDROGEN else "lone pair"
+        return f"{self.isotope[atom] or ''}{self.symbol[atom]}"
+
+
+def molecule_of(mol: Chem.Mol) -> Molecule:
+    """The library's molecule in the engine's terms; its stereo marks are left behind."""
+    atoms = list(mol.GetAtoms())
+    bonds = [
+        (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx(), bond.GetBondType(), bond.IsInRing())
+        for bond in mol.GetBonds()
+    ]
+    kekule: dict[tuple[int, int], int] = {}
+    if any(bond[2] == _AROMATIC for bond in bonds):
+        copy = Chem.Mol(mol)
+        Chem.Kekulize(copy)
+        kekule = {
+            (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx()): _ORDERS.get(bond.GetBondType(), 1)
+            for bond in copy.GetBonds()
+        }
+    number = [atom.GetAtomicNum() for atom in atoms]
+    near: list[dict[int, int]] = [{} for _ in atoms]
+    ring = set()
+    crowded = {
+        atom.GetIdx() for atom in atoms if atom.GetAtomicNum() > 13 and atom.GetDegree() > 2
+    }
+    for begin, end, kind, cyclic in bonds:
+        order = kekule[begin, end] if kekule else _ORDERS.get(kind, 1)
+        if begin in crowded or end in crowded:
+            order = 1
+        near[begin][end] = near[end][begin] = order
+        if cyclic:
+            ring.add((min(begin, end), max(begin, end)))
+    frozen = frozenset(ring)
+    return Molecule(
+        symbol=[atom.GetSymbol() for atom in atoms],
+        number=number,
+        isotope=[atom.GetIsotope() for atom in atoms],
+        charge=[atom.GetFormalCharge() for atom in atoms],
+        hydrogens=[atom.GetTotalNumHs() for atom in atoms],
+        near=near,
+        ring=frozen,
+        duplicate=averaged(number, near, frozen),
+    )
+
+
+def others(near: Iterable[int], *taken: int) -> list[int]:
+    """Neighbours without those already taken."""
+    return [atom for atom in near if atom not in taken]
