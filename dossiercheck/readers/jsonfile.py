@@ -13,7 +13,7 @@ from typing import Any
 
 from dossiercheck.limits import DEFAULT, Refused, decode
 from dossiercheck.model import Item, Place, Source, Unread
-from dossiercheck.readers import gsrs
+from dossiercheck.readers import fhir, gsrs
 from dossiercheck.readers.content import guarded, whole
 from dossiercheck.readers.jsontext import parse_json
 
@@ -34,6 +34,7 @@ class Shape:
 
 # The first row that fits is taken.
 SHAPES: tuple[Shape, ...] = (
+    Shape(frozenset({"resourceType"}), fhir.read_object),
     Shape(frozenset({"substanceClass"}), gsrs.read_object),
     Shape(frozenset({"molfile", "names", "stereochemistry"}), gsrs.read_object),
 )

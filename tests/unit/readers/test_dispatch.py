@@ -7,7 +7,7 @@ import pytest
 from dossiercheck.limits import Refused, parse_xml
 from dossiercheck.model import Place
 from dossiercheck.readers.jsontext import parse_json
-from dossiercheck.readers.xmlfile import path_of
+from dossiercheck.readers.xmlpath import path_of
 from tests.unit.readers.reading import read, reasons, unread
 
 
