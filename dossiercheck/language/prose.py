@@ -6,6 +6,7 @@ import re
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
+from dossiercheck.language.changes import touched
 from dossiercheck.language.fields import (
     Block,
     Labelled,
@@ -149,7 +150,7 @@ def _take(
             continue
         for said in value_evidence(line.passage.text, start, end, one.meaning, place, one.heading):
             if isinstance(said, Evidence):
-                block.said.append(said)
+                block.said.append(touched(said, line.passage.pending, line.passage.text))
             else:
                 yield said
 
@@ -176,7 +177,8 @@ def _names(
             yield _broken(place, span, name)
             continue
         label = beside(text, candidate.start, candidate.end)
-        yield Evidence("", Role.NAME, name, replace(place, span=span), label=label)
+        said = Evidence("", Role.NAME, name, replace(place, span=span), label=label)
+        yield touched(said, line.passage.pending, line.passage.text)
 
 
 def _broken(place: Place, span: tuple[int, int], text: str) -> Unread:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 
+from dossiercheck.language.changes import touched
 from dossiercheck.language.fields import Met, starts_next
 from dossiercheck.language.labels import beside, in_heading, in_title
 from dossiercheck.language.roles import (
@@ -271,6 +272,14 @@ def _named_field(sheet: _Sheet, cell: Cell, heading: str) -> Cell:
 def _cell(
     sheet: _Sheet, cell: Cell, heading: str, role: Meaning | None, group: str, label: str
 ) -> Iterator[Evidence | Unread]:
+    """What one cell says, with the tracked changes that touch it."""
+    for said in _said(sheet, cell, heading, role, group, label):
+        yield touched(said, cell.pending, cell.text) if isinstance(said, Evidence) else said
+
+
+def _said(
+    sheet: _Sheet, cell: Cell, heading: str, role: Meaning | None, group: str, label: str
+) -> Iterator[Evidence | Unread]:
     """What one cell says, under a heading of a known meaning or of none."""
     text = cell.text
     itself = says_itself(text)
@@ -300,10 +309,7 @@ def _from_cells(sheet: _Sheet) -> Iterator[Evidence | Unread]:
                 continue
             seen.add(id(cell))
             itself = says_itself(cell.text)
-            if itself:
-                yield Evidence("", itself, cell.text, cell.place, group)
-            else:
-                yield from _loose_names(cell)
+            yield from _cell(sheet, cell, "", itself, group if itself else "", "")
 
 
 def _loose_names(cell: Cell) -> Iterator[Evidence | Unread]:

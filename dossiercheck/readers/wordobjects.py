@@ -65,7 +65,7 @@ def examine(node: etree._Element, name: str, relations: Mapping[str, Relation]) 
             text = attribute(one, "string") or _drawn_text(one) or told
             found.unread.append(("picture", detail, text))
         bare = [one for one in inner if local(one) in _SHAPES and not _holds(one)]
-        if (bare and not pictures) or not (pictures or found.boxes or _is_rule(inner)):
+        if not pictures and not _is_rule(inner) and (bare or not found.boxes):
             found.unread.append(("picture", "Shapes drawn in place, which are not read.", told))
     found.unread.extend(
         ("external-part", f"The document points to {one.target}, which is not fetched.", "")

@@ -62,4 +62,5 @@ def test_titles_are_unique() -> None:
 def test_every_check_has_a_case() -> None:
     told = {rule for case in CASES for rule in (*case.expected, *case.remarks)}
     asked = {rule.check for rule in BOOK.rules if rule.id in told}
-    assert set(registry.CHECKS) == asked
+    elsewhere = {"pending_change"}  # needs a document: test_changes.py
+    assert set(registry.CHECKS) - elsewhere == asked
