@@ -13,9 +13,10 @@ from lxml import etree
 
 from dossiercheck.limits import DEFAULT, Refused, parse_xml
 from dossiercheck.model import Item, Source
-from dossiercheck.readers import fhir
+from dossiercheck.readers import fhir, spl
 from dossiercheck.readers.content import guarded
 from dossiercheck.readers.fhirnode import FHIR
+from dossiercheck.readers.splbody import HL7
 
 SUFFIXES = frozenset({".xml"})
 
@@ -26,6 +27,7 @@ FromRoot = Callable[[Source, etree._Element], Iterator[Item]]
 ROOTS: Mapping[tuple[str, str], FromRoot] = MappingProxyType(
     {
         (FHIR, ""): fhir.read_root,
+        (HL7, "document"): spl.read_root,
     }
 )
 
