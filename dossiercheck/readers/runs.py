@@ -41,6 +41,7 @@ class _Field:
     code: list[str] = field(default_factory=list)
     in_code: bool = True
     shown: bool = False
+    passed_over: list[str] = field(default_factory=list)
 
 
 @dataclass(slots=True)
@@ -83,6 +84,14 @@ def gather_runs(paragraph: etree._Element, around: Surroundings | None = None) -
     return ParagraphText(text, walk.unread, walk.boxes, pending, mark_removed(paragraph))
 
 
+def unclosed(around: Surroundings) -> tuple[str, str, str] | None:
+    """A field that is open at the end of its part, as (reason, detail, text passed over)."""
+    if not any(one.in_code for one in around.fields):
+        return None
+    text = "".join(text for one in around.fields for text in one.passed_over)
+    return "field", "A field is never closed: the text after it is not read.", text
+
+
 def _style(paragraph: etree._Element) -> str:
     properties = child(paragraph, "pPr")
     style = child(properties, "pStyle") if properties is not None else None
@@ -100,6 +109,7 @@ class _Walk:
         self.unread: list[tuple[str, str, str]] = []
         self.boxes: list[etree._Element] = []
         self.pending: list[Pending] = []
+        self.unknown: set[tuple[str, str]] = set()
 
     def through(self, node: etree._Element, change: str, form: Run) -> None:
         """Take in the content of a paragraph, a run, or what stands around runs."""
@@ -159,9 +169,13 @@ class _Walk:
             self.unread.append((reason, detail, text))
 
     def _say(self, text: str, change: str, form: Run) -> None:
-        if not text or (self.around.fields and any(one.in_code for one in self.around.fields)):
+        fields = self.around.fields
+        if not text:
             return
-        for one in self.around.fields:
+        if any(one.in_code for one in fields):
+            fields[0].passed_over.append(text)
+            return
+        for one in fields:
             one.shown = True
         text = self._shown(text, form)
         if change == "out":
@@ -219,8 +233,9 @@ class _Walk:
         self._say(shown, change, {name: value for name, value in form.items() if name != "font"})
 
     def _no_meaning(self, code: str, font: str) -> None:
-        detail = f"Character {code} of the font {font} has no known meaning."
-        if ("symbol-character", detail, "") not in self.unread:
+        if (code, font) not in self.unknown:
+            self.unknown.add((code, font))
+            detail = f"Character {code} of the font “{font}” has no known meaning."
             self.unread.append(("symbol-character", detail, ""))
 
     def _field(self, node: etree._Element, change: str) -> None:

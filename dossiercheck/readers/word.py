@@ -12,7 +12,7 @@ from dataclasses import dataclass, field
 
 from lxml import etree
 
-from dossiercheck.limits import DEFAULT, Archive, Limits, parse_xml
+from dossiercheck.limits import DEFAULT, Archive, Limits, Refused, parse_xml
 from dossiercheck.model import Item, Passage, Place, Source, Unread
 from dossiercheck.readers.content import guarded
 from dossiercheck.readers.numbering import Numbering, read_numbering
@@ -28,7 +28,7 @@ from dossiercheck.readers.package import (
     relations,
 )
 from dossiercheck.readers.paragraph import ParagraphText, continued, mark_removed
-from dossiercheck.readers.runs import Surroundings, gather_runs
+from dossiercheck.readers.runs import Surroundings, gather_runs, unclosed
 from dossiercheck.readers.sections import Heading, Outline, number_of, numbered_heading
 from dossiercheck.readers.wordstyles import Styles, outline_level, read_styles
 from dossiercheck.readers.wordtable import Grid, lay_out
@@ -106,7 +106,10 @@ def read_within(source: Source, data: bytes, limits: Limits) -> Iterator[Item]:
             if relation.target not in archive:
                 yield Unread(Place(source.path, name), "missing-part", "The part is missing.")
                 continue
-            yield from _part(shared, relation.target, name, placed)
+            try:
+                yield from _part(shared, relation.target, name, placed)
+            except Refused as refused:
+                yield Unread(Place(source.path, name), refused.reason, refused.detail)
     for identity, text in comments.items():
         if identity not in placed:
             detail = "A comment that is anchored nowhere in the text."
@@ -130,6 +133,9 @@ def _part(shared: _Shared, part: str, where: str, placed: set[str]) -> Iterator[
     if main is not None:
         yield from _blocks(main, story)
         yield from _flush(story)
+    left_open = unclosed(around)
+    if left_open:
+        yield Unread(story.place(), *left_open)
     for one in related.values():
         if one.target in around.parts or one.kind == "hyperlink":
             continue
@@ -234,7 +240,11 @@ def _table(node: etree._Element, story: _Story) -> Iterator[Item]:
     story.tables += 1
     caption = story.last_text if story.last_text.lower().startswith("table") else ""
     place = Place(story.source, section=story.where or story.outline.section, table=story.tables)
-    grid: Grid = lay_out(node, place, story.outline.headings, caption, story.around)
+    try:
+        grid: Grid = lay_out(node, place, story.outline.headings, caption, story.around)
+    except Refused as refused:
+        yield Unread(place, refused.reason, refused.detail)
+        return
     if grid.table.rows:
         yield grid.table
     for where, content in grid.contents:
@@ -268,5 +278,6 @@ def _comments(archive: Archive, parts: list[str]) -> dict[str, str]:
         if part in archive:
             for node in parse_xml(archive.read(part)):
                 lines = [gather_runs(one).text for one in node.iter("{*}p")]
-                found[attribute(node, "id")] = "\n".join(line for line in lines if line.strip())
+                told = [found.get(attribute(node, "id"), ""), *lines]
+                found[attribute(node, "id")] = "\n".join(line for line in told if line.strip())
     return found

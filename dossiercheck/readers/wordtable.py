@@ -7,6 +7,7 @@ from dataclasses import dataclass, field, replace
 
 from lxml import etree
 
+from dossiercheck.limits import DEFAULT, Refused
 from dossiercheck.model import Cell, Pending, Place, Table
 from dossiercheck.readers.grid import column_letter
 from dossiercheck.readers.package import attribute, child, local
@@ -42,7 +43,10 @@ def lay_out(
     caption: str,
     around: Surroundings,
 ) -> Grid:
-    """The grid of a `tbl` element. Rows and cells of tracked deletion are left out and listed."""
+    """The grid of a `tbl` element. Rows and cells of tracked deletion are left out and listed.
+
+    Raises `Refused` past the budget of cells.
+    """
     made = _Layout(around, place)
     for row in _inner(node, "tr"):
         properties = child(row, "trPr")
@@ -51,7 +55,11 @@ def lay_out(
             made.contents.append((where, _gone(row, "row")))
             continue
         _row(row, properties, made)
+        if len(made.rows[-1]) > DEFAULT.columns or len(made.rows) > DEFAULT.rows:
+            raise Refused("cell-budget", "The table has more cells than are read.")
     width = max((len(row) for row in made.rows), default=0)
+    if width * len(made.rows) > DEFAULT.cells:
+        raise Refused("cell-budget", "The table has more cells than are read.")
     padded = tuple(_pad(row, width, replace(place, row=n)) for n, row in enumerate(made.rows, 1))
     return Grid(Table(padded, place, headings, caption), tuple(made.contents), tuple(made.nested))
 
