@@ -6,6 +6,7 @@ import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from dossiercheck.language.crystal import CLAIMS, Measured, measured
 from dossiercheck.language.statements import Statement, read_statement
 from dossiercheck.model import Evidence, Kind, Role, Unread
 from dossiercheck.names.parser import NameParser
@@ -13,6 +14,7 @@ from dossiercheck.names.reading import NamedStructure, NameReading, read_names
 from dossiercheck.stereo import notation
 from dossiercheck.stereo.formula import Formula, parse_formula
 from dossiercheck.stereo.perception import from_inchi, from_molblock, from_smiles
+from dossiercheck.stereo.spacegroup import SpaceGroup, space_group
 from dossiercheck.stereo.structure import StereoGroup, Structure, Unreadable
 
 _NUMBER = re.compile(
@@ -27,7 +29,8 @@ class Reading:
     """One evidence with what was understood of it.
 
     `structure` is what a drawing, notation or name says; `name` the details of a name;
-    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim.
+    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim;
+    `flack`, `space_group` and `claim` (a code of `CLAIMS`) come from a crystal structure.
     `refusal` says why nothing was understood, "" where something was; `reason` is its slug.
     `like` is the drawing it was laid on and the mapping from there, so that both can be shown in
     one orientation.
@@ -39,6 +42,9 @@ class Reading:
     formula: Formula | None = None
     mass: tuple[float, int] | None = None
     statement: Statement | None = None
+    flack: Measured | None = None
+    space_group: SpaceGroup | None = None
+    claim: str = ""
     reason: str = ""
     refusal: str = ""
     like: tuple[Structure, Mapping[int, int]] | None = None
@@ -130,6 +136,8 @@ def _other(said: Evidence) -> Reading:
             if mass is None:
                 return Reading(said, reason="malformed", refusal="not read as one number")
             return Reading(said, mass=mass)
+        case Role.ABSOLUTE | Role.FLACK | Role.SPACE_GROUP:
+            return _of_crystal(said, text)
         case Role.STEREO:
             statement = read_statement(text)
             if statement is None:
@@ -137,6 +145,20 @@ def _other(said: Evidence) -> Reading:
                 return Reading(said, reason="statement-not-understood", refusal=refusal)
             return Reading(said, statement=statement)
     return Reading(said)
+
+
+def _of_crystal(said: Evidence, text: str) -> Reading:
+    if said.role is Role.FLACK and (value := measured(text)):
+        return Reading(said, flack=value)
+    if said.role is Role.SPACE_GROUP and (group := space_group(text)):
+        return Reading(said, space_group=group)
+    if said.role is Role.ABSOLUTE and text.casefold() in CLAIMS:
+        return Reading(said, claim=text.casefold())
+    wanted = {
+        Role.FLACK: "a number with its standard uncertainty",
+        Role.SPACE_GROUP: "a known space group",
+    }.get(said.role, "one of the codes " + ", ".join(CLAIMS))
+    return Reading(said, reason="malformed", refusal=f"not read as {wanted}")
 
 
 def printed_number(text: str) -> tuple[float, int] | None:

@@ -35,6 +35,9 @@ class Role(StrEnum):
     MASS = "relative molecular mass"
     REGISTRY = "registry number"
     STEREO = "stereochemistry statement"
+    ABSOLUTE = "claim of absolute configuration"
+    FLACK = "Flack parameter"
+    SPACE_GROUP = "space group"
 
     @property
     def kind(self) -> Kind:
@@ -52,6 +55,9 @@ _KINDS = {
     Role.MASS: Kind.PROPERTY,
     Role.REGISTRY: Kind.PROPERTY,
     Role.STEREO: Kind.STATEMENT,
+    Role.ABSOLUTE: Kind.STATEMENT,
+    Role.FLACK: Kind.PROPERTY,
+    Role.SPACE_GROUP: Kind.PROPERTY,
 }
 
 

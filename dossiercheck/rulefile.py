@@ -44,6 +44,8 @@ _KEYS = (
     "why",
 )
 EVIDENCE_KEYS = (
+    "absolute",
+    "flack",
     "formula",
     "inchi",
     "inchikey",
@@ -53,6 +55,7 @@ EVIDENCE_KEYS = (
     "name",
     "registry",
     "smiles",
+    "space_group",
     "stereo",
 )
 _OUTCOMES = ("finding", "nothing")

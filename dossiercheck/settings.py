@@ -27,6 +27,9 @@ COLUMN_ROLES = (
     "registry",
     "label",
     "stereo",
+    "absolute",
+    "flack",
+    "space_group",
     "molfile",
     "ignore",
 )

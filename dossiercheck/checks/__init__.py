@@ -1,6 +1,7 @@
 """The checks: pure functions from a case to observations. Importing this registers them all."""
 
 from dossiercheck.checks import (  # noqa: F401
+    absolute,
     changes,
     configuration,
     constitution,

@@ -11,7 +11,7 @@ from dossiercheck.interpretation import Reading
 from dossiercheck.model import Kind, Role, State
 from dossiercheck.names.reading import Fault
 from dossiercheck.stereo import constitution as con
-from dossiercheck.stereo.structure import is_pyramidal_nitrogen
+from dossiercheck.stereo.structure import Structure, is_pyramidal_nitrogen
 
 # A fault of the name that leaves a unit without its descriptor explains the silence there; the
 # silence is then part of that finding and not one of its own.
@@ -261,7 +261,7 @@ def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
         if pair.alignment.constitution.verdict not in _LAID:
             continue
         kinds = mine.kind, theirs.kind
-        if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds):
+        if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds) or hand_open(mine):
             continue
         assert case.reference is not None
         yield Observation(
@@ -297,7 +297,13 @@ def describe(case: Case, pair: Pair) -> tuple[str, list[UnitView]]:
         return f"the components differ ({found.detail})", []
     mine, theirs = case.structure, pair.reading.structure
     kinds = {mine.kind, theirs.kind} if mine and theirs else set()
-    if mine and theirs and len(kinds) > 1 and not {"silent", "achiral"} & kinds:
+    if (
+        mine
+        and theirs
+        and len(kinds) > 1
+        and not {"silent", "achiral"} & kinds
+        and not (hand_open(mine) or hand_open(theirs))
+    ):
         return f"the one is {mine.kind}, the other {theirs.kind}", []
     views = different(pair)
     if views:
@@ -311,6 +317,12 @@ def describe(case: Case, pair: Pair) -> tuple[str, list[UnitView]]:
     if silent:
         return f"the configuration is left open at {cite(silent)}", silent
     return "", []
+
+
+def hand_open(structure: Structure) -> bool:
+    """Coordinates of a crystal that does not tell the hand of the molecule: what that means for
+    a claim is for the rules on absolute structure."""
+    return structure.dimension == 3 and bool(structure.groups)
 
 
 def silent_views(case: Case, pair: Pair) -> list[UnitView]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from dossiercheck.checks.configuration import hand_open
 from dossiercheck.checks.exhibits import exhibit
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
@@ -21,12 +22,14 @@ def statement_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
     """
     if case.structure is None or case.reference is None:
         return
-    found = _kind(case.structure)
+    found = stereo_kind(case.structure)
     if case.structure.doubt or (found == "achiral" and case.structure.axis_atoms):
         return
     for reading in case.of_role(Role.STEREO):
         stated = reading.statement.kind if reading.statement else ""
         if not stated or not _contradicts(stated, found, case.structure):
+            continue
+        if hand_open(case.structure) and stated in ("absolute", "racemic", "relative", "active"):
             continue
         yield Observation(
             {"stated": reading.evidence.text.strip(), "found": found},
@@ -65,7 +68,7 @@ def _contradicts(stated: str, found: str, structure: Structure) -> bool:
     return stated != found
 
 
-def _kind(structure: Structure) -> str:
+def stereo_kind(structure: Structure) -> str:
     """The kind of stereo, a meso compound counted as achiral."""
     if structure.kind == "absolute" and mirror_smiles(structure) == structure.smiles:
         return "achiral"

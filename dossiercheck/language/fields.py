@@ -16,6 +16,15 @@ from dossiercheck.language.roles import Aside, Meaning, could_be, is_nothing, me
 from dossiercheck.language.running import candidates
 from dossiercheck.model import Evidence, Passage, Place, Role, Unread
 
+_TRIMMED = (
+    Role.FORMULA,
+    Role.MASS,
+    Role.REGISTRY,
+    Role.INCHIKEY,
+    Role.SMILES,
+    Role.FLACK,
+    Role.SPACE_GROUP,
+)
 _SEPARATOR = re.compile(r"\s*[:：=\t]\s*|\s+[-–—|]\s+|\s*[–—]\s+")
 _BULLET = re.compile(r"\s*(?:[-*•·‣▪–]\s+|\(?\d{1,2}[.)]\s+)?")
 _NEXT_FIELD = re.compile(r"\s*[;,|\t]\s*(?=[A-Z][^:;=]{1,50}[:=])")
@@ -116,7 +125,7 @@ def value_evidence(
         yield from _name(text, start, end, place)
         return
     trimmed = end
-    if meaning in (Role.FORMULA, Role.MASS, Role.REGISTRY, Role.INCHIKEY, Role.SMILES):
+    if meaning in _TRIMMED:
         trimmed = start + len(value.rstrip(" .,;"))
     if isinstance(meaning, Role):
         yield Evidence("", meaning, text[start:trimmed], replace(place, span=(start, trimmed)))

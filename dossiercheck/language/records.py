@@ -15,7 +15,17 @@ from dossiercheck.language.roles import (
 )
 from dossiercheck.model import Evidence, Field, Record, Role, Unread
 
-_ONE_LINE = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.FORMULA, Role.MASS, Role.REGISTRY)
+_ONE_LINE = (
+    Role.SMILES,
+    Role.INCHI,
+    Role.INCHIKEY,
+    Role.FORMULA,
+    Role.MASS,
+    Role.REGISTRY,
+    Role.ABSOLUTE,
+    Role.FLACK,
+    Role.SPACE_GROUP,
+)
 
 _OPEN = {"unknown", "not known", "not determined"}
 

@@ -14,7 +14,9 @@ from collections.abc import Mapping
 from enum import StrEnum
 from types import MappingProxyType
 
+from dossiercheck.language.crystal import measured
 from dossiercheck.model import Role
+from dossiercheck.stereo.spacegroup import space_group
 
 
 class Aside(StrEnum):
@@ -39,6 +41,9 @@ KEYS: Mapping[str, Meaning] = MappingProxyType(
         "mass": Role.MASS,
         "registry": Role.REGISTRY,
         "stereo": Role.STEREO,
+        "absolute": Role.ABSOLUTE,
+        "flack": Role.FLACK,
+        "space_group": Role.SPACE_GROUP,
         "molfile": Role.MOLFILE,
         "label": Aside.LABEL,
         "ignore": Aside.IGNORED,
@@ -55,6 +60,7 @@ _SYNONYMS: Mapping[Meaning, str] = {
         other chemical name | alternative chemical name | alternative systematic name
         CAS name | CAS index name | name (CAS) | CAS chemical name | index name
         semi-systematic name | preferred IUPAC name | IUPAC names | chemical IUPAC name
+        _chemical_name_systematic
         """,
     Role.SMILES: """
         SMILES | isomeric SMILES | canonical SMILES | canonical isomeric SMILES | SMILES string
@@ -71,13 +77,14 @@ _SYNONYMS: Mapping[Meaning, str] = {
     Role.FORMULA: """
         molecular formula | empirical formula | mol formula | mol. formula | formula | MF | M.F.
         sum formula | chemical formula | gross formula | Hill formula | molecular formula (Hill)
-        total formula | elemental formula
+        total formula | elemental formula | _chemical_formula_sum
         """,
     Role.MASS: """
         relative molecular mass | molecular weight | molecular mass | molar mass | MW | M.W. | Mr
         mol weight | mol. weight | mol wt | mol. wt. | mol mass | formula weight | FW | RMM | MWt
         average molecular weight | average molecular mass | average mass | relative molar mass
         molecular weight (average) | rel. molecular mass | rel. mol. mass | M_r
+        _chemical_formula_weight
         """,
     Role.REGISTRY: """
         CAS number | CAS No | CAS no. | CAS RN | CASRN | CAS | CAS registry number
@@ -92,6 +99,17 @@ _SYNONYMS: Mapping[Meaning, str] = {
         stereochemical configuration | isomeric form | isomer type | stereo type
         stereochemical type | chirality statement | chiral form | stereochemical purity
         stereochemistry type | optical activity | optical activity type
+        """,
+    Role.ABSOLUTE: "_chemical_absolute_configuration",
+    Role.FLACK: """
+        Flack parameter | Flack parameter x | Flack x | Flack x parameter | Flack
+        absolute structure parameter | _refine_ls_abs_structure_Flack
+        """,
+    Role.SPACE_GROUP: """
+        space group | space group symbol | space group (No.) | crystal space group
+        Hermann-Mauguin symbol | _space_group_name_H-M_alt | _symmetry_space_group_name_H-M
+        _space_group_name_Hall | _symmetry_space_group_name_Hall | _space_group_IT_number
+        _symmetry_Int_Tables_number | _space_group_symop_operation_xyz
         """,
     Role.MOLFILE: "molfile | mol file | molblock | mol block | connection table",
     Aside.COUNT: """
@@ -109,6 +127,7 @@ _SYNONYMS: Mapping[Meaning, str] = {
         substance name | compound name | trivial name | common name | INN | INN name
         international non-proprietary name | recommended INN | name of substance
         impurity code | impurity name | material name | designation | identifier | internal code
+        _chemical_name_common
         abbreviation | reference standard | analyte | related substance | degradation product
         """,
     Aside.NAME_OR_LABEL: "name | names",
@@ -237,6 +256,10 @@ def could_be(role: Meaning, value: str) -> bool:
             return bool(
                 re.fullmatch(r"[A-Za-z0-9@+\-\[\]()\\/=#$%.:*~]+(?:\s*\|.*\|)?", value)
             ) and (not re.fullmatch(r"[A-Z]?[a-z]{3,}", value))
+        case Role.FLACK:
+            return measured(value) is not None
+        case Role.SPACE_GROUP:
+            return space_group(value) is not None
         case Role.STEREO:
             return bool(re.search(r"enantiomer|rac|isomer|chiral|meso|\([RSEZ\d]", value))
     return False

@@ -22,7 +22,8 @@ Point = tuple[float, float, float]
 RELATIVE = "relative"  # the hand of the whole model is open
 BOTH = "both"  # each molecule is there with its mirror image
 # A second arrangement of charges must be this much less usual, in the units of `Lewis.cost`.
-_CLEAR = 1.5
+_CLEAR = 5.0
+_MOST_EXTRA = 60.0
 _MOST_ATOMS = 2_000
 _APART = 60.0  # ångström between copies of one species in the table
 _OUT_OF_PLANE = 0.28  # ångström; a carbon further out is tetrahedral and lacks a hydrogen
@@ -74,7 +75,7 @@ def content(species: Sequence[Species], hand: str = "") -> Content:
     unit = [(species[number], electrons[number]) for number in kept]
     read = _read(_molblock(unit))
     groups = list(_groups(read, hand))
-    molblock = _molblock(unit, groups)
+    molblock = _molblock(unit, groups, "RAC" if hand == BOTH else "REL")
     return Content(molblock, _read(molblock) if groups else read)
 
 
@@ -94,7 +95,7 @@ def _neutral(species: Sequence[Species], bonds: Sequence[Sequence[Bond]]) -> lis
                 " hydrogen is missing or too many, or the bonding is unusual.",
             )
         least = min(lew.cost for lew in found.values())
-        options.append([(q, lew) for q, lew in found.items() if lew.cost <= least + 12])
+        options.append([(q, lew) for q, lew in found.items() if lew.cost <= least + _MOST_EXTRA])
     # Equal sites of one species would only multiply the ways: they are added up as they come.
     ways: dict[int, list[tuple[float, tuple[Lewis, ...]]]] = {0: [(0.0, ())]}
     for one, choices in zip(species, options, strict=True):
@@ -201,7 +202,9 @@ def _groups(structure: Structure, hand: str) -> Iterator[tuple[int, ...]]:
             yield inside
 
 
-def _molblock(unit: Sequence[tuple[Species, Lewis]], groups: Sequence[tuple[int, ...]] = ()) -> str:
+def _molblock(
+    unit: Sequence[tuple[Species, Lewis]], groups: Sequence[tuple[int, ...]] = (), kind: str = ""
+) -> str:
     """A V3000 connection table (CTfile formats), copies of a species set apart."""
     atoms: list[str] = []
     bonds: list[str] = []
@@ -229,7 +232,7 @@ def _molblock(unit: Sequence[tuple[Species, Lewis]], groups: Sequence[tuple[int,
         body.append("BEGIN COLLECTION")
         for number, group in enumerate(groups, 1):
             members = " ".join(str(atom + 1) for atom in group)
-            body.append(f"MDLV30/STEREL{number} ATOMS=({len(group)} {members})")
+            body.append(f"MDLV30/STE{kind}{number} ATOMS=({len(group)} {members})")
         body.append("END COLLECTION")
     lines = [piece for line in (*body, "END CTAB") for piece in _wrapped(f"M  V30 {line}")]
     head = ["", "                    3D", "", "  0  0  0     0  0            999 V3000"]

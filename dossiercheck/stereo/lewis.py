@@ -18,7 +18,8 @@ from dossiercheck.limits import Refused
 @dataclass(frozen=True, slots=True)
 class Lewis:
     """`orders` in the order of the bonds, `charges` in that of the atoms; a lower `cost` is a
-    more usual arrangement (a charge costs about 1, a bond 0.1 Å from its usual length 1)."""
+    more usual arrangement (a bond 0.1 Å from its usual length costs 1, a charge about 8: a length
+    decides between arrangements with equally many charges)."""
 
     orders: tuple[int, ...]
     charges: tuple[int, ...]
@@ -32,7 +33,10 @@ IONS = {
     **dict.fromkeys(("Mg", "Ca", "Sr", "Ba"), 2),
 }
 
-# Valence, charge, cost. Usual valences and charges: common practice; the costs are our own.
+_CHARGE = 8.0
+
+# Valence, charge, cost over `_CHARGE`. Usual valences and charges: common practice; the costs are
+# our own.
 _CHALCOGEN = ((2, 0, 0.0), (1, -1, 1.0), (4, 0, 0.5), (6, 0, 0.5), (3, 1, 1.5))
 _PNICTOGEN = ((3, 0, 0.0), (5, 0, 0.2), (4, 1, 1.5), (6, -1, 0.5))
 _HALOGEN = ((1, 0, 0.0), (0, -1, 0.5), (7, 0, 0.5), (5, 0, 0.5), (2, -1, 0.5))
@@ -157,7 +161,7 @@ def pair_of(elements: Sequence[str], bond: Bond) -> tuple[str, str]:
 @cache
 def _states(element: str, degree: int) -> tuple[tuple[int, int, float], ...]:
     return tuple(
-        (valence, charge, cost)
+        (valence, charge, _CHARGE * cost)
         for valence, charge, cost in _STATES.get(element, ())
         if valence >= degree
         and degree in _LIGANDS.get((element, valence), (degree,))

@@ -39,6 +39,10 @@ WAVY = "drawing/wavy-bond"
 STATED_KIND = "statement/kind-differs"
 STATED_COUNT = "statement/centre-count-differs"
 ACROSS = "across-documents/structures-differ"
+FLACK = "absolute-structure/flack-not-conclusive"
+NO_FLACK = "absolute-structure/flack-missing"
+INVERTED = "absolute-structure/inverted"
+BOTH_HANDS = "absolute-structure/racemic-space-group"
 
 
 @dataclass(frozen=True, slots=True)
@@ -590,5 +594,77 @@ CASES = [
         "a name in one, the drawing in another",
         ({"molfile": v2000(THREONINE)}, {"name": THR.replace("2S", "2R")}),
         (CONFIGURATION,),
+    ),
+    # --- absolute structure (H. D. Flack and G. Bernardinelli, J. Appl. Cryst. 2000, 33, 1143) ----
+    one("Flack sound", molfile=in_space(THREONINE), absolute="ad", flack="0.01(3)"),
+    one("Flack u of 0.04", FLACK, molfile=in_space(THREONINE), absolute="ad", flack="0.01(4)"),
+    one("Flack three u", molfile=in_space(THREONINE), absolute="ad", flack="-0.09(3)"),
+    one("Flack past three u", FLACK, molfile=in_space(THREONINE), absolute="ad", flack="0.10(3)"),
+    one("Flack without u", FLACK, molfile=in_space(THREONINE), absolute="ad", flack="0.01"),
+    one("Flack twinned", FLACK, molfile=in_space(THREONINE), absolute="rmad", flack="0.51(2)"),
+    one("Flack u of 0.3, not claimed", molfile=in_space(THREONINE), flack="0.1(3)"),
+    one("Flack u of 0.3, unknown", molfile=in_space(THREONINE), absolute="unk", flack="0.1(3)"),
+    one("Flack u of 0.3, reference", molfile=in_space(THREONINE), absolute="rm", flack="0.1(3)"),
+    one(
+        "Flack of an enantiopure compound",
+        molfile=in_space(THREONINE),
+        absolute="ad",
+        flack="0.01(9)",
+        stereo="enantiopure",
+    ),
+    one(
+        "Flack u of 0.10, enantiopure",
+        FLACK,
+        molfile=in_space(THREONINE),
+        absolute="ad",
+        flack="0.01(10)",
+        stereo="enantiopure",
+    ),
+    one(
+        "Flack under a statement",
+        FLACK,
+        molfile=in_space(THREONINE),
+        flack="0.2(3)",
+        stereo="absolute configuration by single-crystal X-ray diffraction",
+    ),
+    one("Flack of 1", INVERTED, molfile=in_space(THREONINE), absolute="ad", flack="0.98(2)"),
+    one("Flack of 1, not claimed", INVERTED, molfile=in_space(THREONINE), flack="1.02(4)"),
+    one("Flack of 1, vague", FLACK, molfile=in_space(THREONINE), absolute="ad", flack="0.9(4)"),
+    Case(
+        "Flack not a number",
+        ({"molfile": in_space(THREONINE), "flack": "see table 3"},),
+        unread=("malformed",),
+    ),
+    one(
+        "no Flack",
+        NO_FLACK,
+        molfile=in_space(THREONINE),
+        absolute="ad",
+        space_group="P 21 21 21",
+    ),
+    one("no Flack, no group", molfile=in_space(THREONINE), absolute="ad"),
+    one(
+        "no Flack, reference molecule",
+        molfile=in_space(THREONINE),
+        absolute="rm",
+        space_group="P 21 21 21",
+    ),
+    one("both hands, one drawn", BOTH_HANDS, molfile=v2000(THREONINE), space_group="P2(1)/c"),
+    one("both hands, one named", BOTH_HANDS, name=THR, space_group="P -1"),
+    one(
+        "both hands, claimed",
+        BOTH_HANDS,
+        molfile=v2000("CC(O)CC"),
+        stereo="racemate",
+        absolute="ad",
+        space_group="P b c a",
+    ),
+    one("both hands, racemate drawn", molfile=v3000(f"{PEA} |&1:1|"), space_group="P 21/c"),
+    one("both hands, achiral", molfile=v2000("NCCO"), space_group="P 21/c"),
+    one("one hand", molfile=v2000(THREONINE), space_group="P 21 21 21"),
+    Case(
+        "space group not known",
+        ({"molfile": v2000(THREONINE), "space_group": "orthorhombic"},),
+        unread=("malformed",),
     ),
 ]
