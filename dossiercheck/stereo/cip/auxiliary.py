@@ -37,28 +37,27 @@ def by_everything(order: Order, hand: int = 1, favoured: int | None = None) -> O
     if not order.unique:
         order.split(lambda branch: _pairs(branch, keys), "4b")
     if not order.unique:
-        pseudo = _PROPERTIES["4c"]
-        order.split(lambda branch: keys.spheres(branch, pseudo, BEFORE["4b"], "4c"), "4c")
+        order.split(lambda branch: keys.of(branch, "4c"), "4c")
     if not order.unique:
-        order.split(lambda branch: _likeness(branch, keys, hand), "5")
+        order.split(lambda branch: _likeness(branch, keys, hand, "5"), "5")
     if favoured is not None and not order.unique:
         first: Property = lambda branch: float(branch.node.atom == favoured)  # noqa: E731
-        order.split(lambda branch: keys.spheres(branch, first, BEFORE["4b"], "6"), "6")
+        order.split(lambda branch: keys.spheres(branch, first, BEFORE["6"], "6"), "6")
     return order
 
 
 def _pairs(branch: Branch, keys: Keys) -> list[Key]:
     """Rule 4b: the descriptors of the branch as like or unlike its reference descriptor; both
     readings, the better first, where the reference could be either."""
-    found = (_likeness(branch, keys, reference) for reference in _references(branch, keys))
+    found = (_likeness(branch, keys, reference, "4b") for reference in _references(branch, keys))
     return sorted(found, reverse=True)
 
 
-def _likeness(branch: Branch, keys: Keys, reference: int) -> Key:
+def _likeness(branch: Branch, keys: Keys, reference: int, rule: str) -> Key:
     like: Property = lambda inner: float(  # noqa: E731
         (_CLASS.get(inner.node.aux, 0) == reference) - (_CLASS.get(inner.node.aux, 0) == -reference)
     )
-    return keys.spheres(branch, like, BEFORE["4b"], f"like {reference}")
+    return keys.spheres(branch, like, BEFORE[rule], f"{rule} {reference}")
 
 
 def _references(branch: Branch, keys: Keys) -> tuple[int, ...]:

@@ -9,7 +9,7 @@ from dossiercheck.stereo.cip.auxiliary import by_everything, label_branches, lig
 from dossiercheck.stereo.cip.molecule import LONE_PAIR, Molecule
 from dossiercheck.stereo.cip.ranking import Order, by_constitution
 from dossiercheck.stereo.cip.tree import TooLarge, Tree
-from dossiercheck.stereo.cip.units import CENTRE, DOUBLE_BOND, Marked, parity
+from dossiercheck.stereo.cip.units import CENTRE, DOUBLE_BOND, HELIX, Marked, parity
 
 # Nodes of one tree. About a second; a larger one is given up and its unit left undetermined.
 BUDGET = 200_000
@@ -36,6 +36,9 @@ def rank_all(molecule: Molecule, marked: Sequence[Marked], budget: int = BUDGET)
 
 def _rank(molecule: Molecule, unit: Marked, marked: Sequence[Marked], budget: int) -> Ranked:
     result = Ranked(unit)
+    if unit.kind == HELIX:
+        result.descriptor = "P" if unit.sign > 0 else "M"
+        return result
     try:
         for end in unit.ends:
             tree = Tree(molecule, end, budget)
@@ -63,18 +66,21 @@ def _rank_further(result: Ranked, marked: Sequence[Marked]) -> None:
         for tree, order in zip(result.trees, result.orders, strict=True):
             if not order.unique:
                 label_branches(tree, marked, _auxiliary)
-    result.descriptor, result.orders = _by_stereo(result.unit, result.orders)
-    if not _unique(result.orders):
-        _by_choice(result)
+    result.descriptor, result.orders = _by_all(result.unit, result.orders)
 
 
-def _by_choice(result: Ranked) -> None:
-    """Rule 6: one of the ligands still tied is favoured; the letter counts only where every
-    choice among them gives the same one (Hanson et al. 2018, Rule 6)."""
-    tied = next(group for order in result.orders for group in order.groups if len(group) > 1)
-    outcomes = [_by_stereo(result.unit, result.orders, each.node.atom) for each in tied]
+def _by_all(unit: Marked, orders: Sequence[Order]) -> tuple[str, list[Order]]:
+    """Letter and ranking by Rules 3 to 5, and where ligands still tie by Rule 6: one of them is
+    favoured, and the letter counts where every choice among them gives the same one (Hanson et
+    al. 2018, Rule 6)."""
+    found, ranked = _by_stereo(unit, orders)
+    if _unique(ranked):
+        return found, ranked
+    tied = next(group for order in ranked for group in order.groups if len(group) > 1)
+    outcomes = [_by_stereo(unit, ranked, each.node.atom) for each in tied]
     if len({descriptor for descriptor, _ in outcomes}) == 1:
-        result.descriptor, result.orders = outcomes[0]
+        return outcomes[0]
+    return found, ranked
 
 
 def _by_stereo(
@@ -96,7 +102,7 @@ def _by_stereo(
 
 
 def _auxiliary(unit: Marked, orders: Sequence[Order]) -> str:
-    return letter(unit, orders) if _unique(orders) else _by_stereo(unit, orders)[0]
+    return letter(unit, orders) if _unique(orders) else _by_all(unit, orders)[0]
 
 
 def letter(unit: Marked, orders: Sequence[Order], mirror: bool = False) -> str:
@@ -117,5 +123,3 @@ def letter(unit: Marked, orders: Sequence[Order], mirror: bool = False) -> str:
     if unit.kind == DOUBLE_BOND:
         return "Z" if sign > 0 else "E"
     return "P" if sign > 0 else "M"
-
-

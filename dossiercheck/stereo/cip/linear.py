@@ -139,7 +139,7 @@ def cumulated(molecule: Molecule, atom: int) -> tuple[int, ...]:
             if len(onward) != 1 or len(molecule.near[here]) != 2 or onward[0] in chain:
                 break
             before, here = here, onward[0]
-    return tuple(chain)
+    return tuple(chain if chain[0] < chain[-1] else reversed(chain))
 
 
 def _axis(
@@ -171,16 +171,34 @@ def end_ligands(written: list[int], molecule: Molecule, atom: int, inward: int) 
 
 
 def double_chains(molecule: Molecule) -> Iterator[tuple[int, ...]]:
-    """Every double bond, and every row of an odd number of them, from end to end."""
+    """Every double bond, and every row of an odd number of them, from end to end; not in rings of
+    fewer than eight atoms, which hold them Z (IUPAC 2013, P-93.5.1.4.1)."""
     for begin, near in enumerate(molecule.near):
         for end, order in near.items():
             if begin < end and order == 2:
-                rows = {cumulated(molecule, begin), cumulated(molecule, end)}
-                longer = [row for row in rows if len(row) > 1]
-                if not longer:
-                    yield (begin, end)
-                elif len(longer[0]) % 2 == 0 and {begin, end} == set(longer[0][:2]):
-                    yield longer[0]
+                row = max(cumulated(molecule, begin), cumulated(molecule, end), key=len)
+                if len(row) == 1:
+                    row = (begin, end)
+                elif len(row) % 2 or (begin, end) != tuple(sorted(row[:2])):
+                    continue
+                if not molecule.in_ring(begin, end) or _ring_size(molecule, begin, end) >= 8:
+                    yield row
+
+
+def _ring_size(molecule: Molecule, begin: int, end: int) -> int:
+    """Atoms in the smallest ring through a ring bond; 8 stands for that many or more."""
+    front, seen = {begin}, {begin}
+    for size in range(1, 8):
+        onward = {
+            other
+            for at in front
+            for other in molecule.near[at]
+            if other not in seen and (at, other) != (begin, end)
+        }
+        if end in onward:
+            return size + 1
+        front, seen = onward, seen | onward
+    return 8
 
 
 def _planes(found: Written, molecule: Molecule) -> Iterator[Marked]:

@@ -75,7 +75,12 @@ def first_difference(high: object, low: object) -> int:
 
 
 RULES = ("1a", "1b", "2", "3", "4a", "4b", "4c", "5", "6")
-BEFORE = {rule: RULES[:number] for number, rule in enumerate(RULES)}
+# What siblings are in order of when a rule is applied. Rule 4b parts whole ligands, by a reference
+# that belongs to the ligand; within one it has none.
+BEFORE = {
+    rule: tuple(earlier for earlier in RULES[:number] if earlier not in ("4b", "5"))
+    for number, rule in enumerate(RULES)
+}
 
 
 def by_constitution(ligands: Iterable[Branch], rules: tuple[str, ...] = ("1a", "1b", "2")) -> Order:
