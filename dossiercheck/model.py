@@ -388,7 +388,7 @@ class Exhibit:
 
 @dataclass(frozen=True, slots=True)
 class Finding:
-    """What a rule says of a substance."""
+    """What a rule says of a substance, or with `substance` "" of the dossier as a whole."""
 
     id: str
     rule: str

@@ -2,22 +2,26 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Iterator, Sequence
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 from pathlib import Path
 
 from dossiercheck import find
 from dossiercheck.language import gather
+from dossiercheck.lifecycle import Lifecycle, lifecycle, not_current, sections
 from dossiercheck.limits import DEFAULT, Refused
 from dossiercheck.method import CAUTION, method
 from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, Unread
 from dossiercheck.readers import reader_for
 from dossiercheck.rulebook import Rulebook
+from dossiercheck.sequences import itself_and_above, submission
 from dossiercheck.settings import Settings
 from dossiercheck.shelf import Shelf
 from dossiercheck.substances import attribute, registered
-from dossiercheck.work import Judged, Workers
+from dossiercheck.work import Workers
+
+NO_SUBMISSION = lifecycle(submission(()))
 
 Progress = Callable[[str, int, int], None]
 
@@ -31,8 +35,12 @@ def review(
     """Check the files and folders given. `progress` is told (stage, done, of)."""
     with Shelf() as shelf:
         found = list(find.find(paths, shelf))
-        sources = tuple(entry.source for entry in found if isinstance(entry, find.Found))
-        return _review(_read(found, progress), sources, settings, rulebook, progress)
+        files = [entry for entry in found if isinstance(entry, find.Found)]
+        unopened = [entry.place.source for entry in found if isinstance(entry, Unread)]
+        cycle = lifecycle(submission(files, unopened))
+        items = chain(cycle.unread, _read(_current(found, cycle), progress))
+        sources = tuple(entry.source for entry in files)
+        return _review(items, sources, settings, rulebook, progress, cycle)
 
 
 def review_items(items: Iterable[Item], settings: Settings, rulebook: Rulebook) -> Review:
@@ -46,22 +54,35 @@ def _review(
     settings: Settings,
     rulebook: Rulebook,
     progress: Progress | None,
+    cycle: Lifecycle = NO_SUBMISSION,
 ) -> Review:
-    evidence, unread = _gather(items, settings)
+    evidence, unread = _gather(items, settings, sections(cycle.submission))
+    whole = rulebook.judge_submission(cycle)
     with Workers(settings.jobs, rulebook, progress) as workers:
         substances, unattributed = attribute(evidence, settings.register, workers.survey)
         judged = workers.judge(substances)
     return Review(
         sources=sources,
         unread=_in_order(
-            sources, [*unread, *unattributed, *(u for one in judged for u in one.unread)]
+            sources,
+            [*unread, *whole.unread, *unattributed, *(u for one in judged for u in one.unread)],
         ),
         substances=tuple(one.entry for one in judged),
-        findings=tuple(_numbered(judged)),
+        findings=tuple(_numbered([*(one.findings for one in judged), whole.findings])),
         rules=rulebook.entries(),
         method=method(settings),
         caution=CAUTION,
     )
+
+
+def _current(
+    found: Iterable[find.Found | Unread], cycle: Lifecycle
+) -> Iterator[find.Found | Unread]:
+    """Without what only orders a submission's files, and what later sequences put an end to."""
+    left_out = cycle.submission.structure | not_current(cycle)
+    for entry in found:
+        if isinstance(entry, Unread) or left_out.isdisjoint(itself_and_above(entry.source.path)):
+            yield entry
 
 
 def _read(found: Iterable[find.Found | Unread], progress: Progress | None) -> Iterator[Item]:
@@ -102,14 +123,19 @@ def _read_one(found: find.Found) -> Iterator[Item]:
         yield Unread(place, "reader-failed", detail.splitlines()[0])
 
 
-def _gather(items: Iterable[Item], settings: Settings) -> tuple[list[Evidence], list[Unread]]:
+def _gather(
+    items: Iterable[Item], settings: Settings, filed: Mapping[str, str]
+) -> tuple[list[Evidence], list[Unread]]:
+    """Number the evidence; a place that names no section has that of its leaf, if any."""
     evidence: list[Evidence] = []
     unread: list[Unread] = []
     for entry in chain(gather(items, settings.columns), registered(settings)):
         if isinstance(entry, Unread):
             unread.append(entry)
         else:
-            evidence.append(replace(entry, id=f"e{len(evidence) + 1}"))
+            section = entry.place.section or filed.get(entry.place.source)
+            place = replace(entry.place, section=section)
+            evidence.append(replace(entry, id=f"e{len(evidence) + 1}", place=place))
     return evidence, unread
 
 
@@ -119,10 +145,10 @@ def _in_order(sources: Sequence[Source], unread: Iterable[Unread]) -> tuple[Unre
     return tuple(sorted(unread, key=lambda entry: order.get(entry.place.source, -1)))
 
 
-def _numbered(judged: Iterable[Judged]) -> Iterator[Finding]:
+def _numbered(groups: Iterable[Sequence[Finding]]) -> Iterator[Finding]:
     """Number the findings, per substance gravest first."""
     number = 0
-    for one in judged:
-        for finding in sorted(one.findings, key=lambda f: (f.grade.gravity, f.rule)):
+    for group in groups:
+        for finding in sorted(group, key=lambda f: (f.grade.gravity, f.rule)):
             number += 1
             yield replace(finding, id=f"f{number}")

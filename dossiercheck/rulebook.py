@@ -5,19 +5,22 @@ The catalogue, the user's own folders of rules and the settings' overrides come 
 
 from __future__ import annotations
 
+import posixpath
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 from dossiercheck import assets, rulefile, tomlfile
 from dossiercheck.checks import registry
-from dossiercheck.model import Finding, RuleEntry, Unread
+from dossiercheck.model import Finding, Place, RuleEntry, Unread
 from dossiercheck.rulefile import Rule
+from dossiercheck.sequences import INDEX
 from dossiercheck.settings import RuleOverride, Settings, SettingsError
 
 if TYPE_CHECKING:
     from dossiercheck.concordance import Case
+    from dossiercheck.lifecycle import Lifecycle
 
 
 @dataclass(frozen=True, slots=True)
@@ -52,13 +55,25 @@ class Rulebook:
         `case_needs` are the kinds of evidence that the case has; a rule that needs others is not
         asked. Findings carry no number yet. Whatever a check raises becomes an unread entry.
         """
+        substance = case.substance
+        return self._judge(case, case_needs, substance.id, substance.evidence[0].place)
+
+    def judge_submission(self, case: Lifecycle) -> Outcome:
+        """Apply the rules that need "sequence"; their findings are of no substance ("")."""
+        sequences = case.submission.sequences
+        if not sequences:
+            return Outcome((), ())
+        place = Place(posixpath.join(sequences[0].folder, INDEX))
+        return self._judge(case, frozenset({rulefile.SEQUENCE}), "", place)
+
+    def _judge(self, case: Any, needs: frozenset[str] | None, about: str, at: Place) -> Outcome:
         findings: list[Finding] = []
         unread: list[Unread] = []
-        for rule in self._asked(case_needs):
+        for rule in self._asked(needs):
             try:
-                findings.extend(_findings(rule, case))
+                findings.extend(_findings(rule, case, about))
             except Exception as trouble:
-                unread.append(_breakdown(rule, case, trouble))
+                unread.append(_breakdown(rule, about, at, trouble))
         return Outcome(tuple(findings), tuple(unread))
 
     def _asked(self, kinds: frozenset[str] | None) -> tuple[Rule, ...]:
@@ -101,13 +116,13 @@ def _overridden(rule: Rule, override: RuleOverride, where: Path) -> Rule:
     )
 
 
-def _findings(rule: Rule, case: Case) -> Iterator[Finding]:
+def _findings(rule: Rule, case: Any, substance: str) -> Iterator[Finding]:
     for seen in registry.CHECKS[rule.check].function(case, rule.params):
         yield Finding(
             id="",
             rule=rule.id,
             grade=rule.grade,
-            substance=case.substance.id,
+            substance=substance,
             message=rule.message.format(**seen.values),
             remedy=rule.remedy,
             exhibits=seen.exhibits,
@@ -117,12 +132,13 @@ def _findings(rule: Rule, case: Case) -> Iterator[Finding]:
         )
 
 
-def _breakdown(rule: Rule, case: Case, trouble: Exception) -> Unread:
+def _breakdown(rule: Rule, substance: str, place: Place, trouble: Exception) -> Unread:
+    about = f"the substance {substance}" if substance else "the submission"
     return Unread(
-        place=case.substance.evidence[0].place,
+        place=place,
         reason="check-failed",
         detail=(
-            f"The rule {rule.id} could not be applied to the substance {case.substance.id}: its"
+            f"The rule {rule.id} could not be applied to {about}: its"
             f" check '{rule.check}' stopped with {type(trouble).__name__}: {trouble}"
         ),
     )

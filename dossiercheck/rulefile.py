@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from pathlib import Path
 from string import Formatter
 from typing import Any
@@ -30,6 +30,7 @@ FAMILIES = (
     "coverage",
 )
 STRUCTURE = "structure"  # a need that any evidence meets from which a structure can be had
+SEQUENCE = "sequence"  # a need that only a submission as a whole meets
 _GIVES_STRUCTURE = frozenset({Kind.DRAWING, Kind.NOTATION, Kind.COORDINATES, Kind.NAME})
 _KEYS = (
     "basis",
@@ -69,11 +70,13 @@ class RuleError(TomlError):
 @dataclass(frozen=True, slots=True)
 class Example:
     """Evidence under which a rule must speak or be silent. Each record is what one place of the
-    dossier says, by EVIDENCE_KEYS; `note` tells a reader what to look at."""
+    dossier says, by EVIDENCE_KEYS; `files` are texts by their names in the dossier, for what
+    records cannot say; `note` tells a reader what to look at."""
 
     finding: bool
     records: tuple[Mapping[str, str], ...]
     note: str = ""
+    files: Mapping[str, str] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -179,7 +182,7 @@ def _check(file: TomlFile) -> Check:
 
 def _needs(file: TomlFile) -> tuple[str, ...]:
     needs = file.texts("needs")
-    known = (*Kind, STRUCTURE)
+    known = (*Kind, STRUCTURE, SEQUENCE)
     for need in needs:
         if need not in known:
             hint = tomlfile.suggestion(need, known)
@@ -226,14 +229,16 @@ def _examples(file: TomlFile) -> Iterator[Example]:
         raise file.mistake("a rule has at least one [[example]]")
     for number in range(count):
         at = ("example", number)
-        file.keys_among((*EVIDENCE_KEYS, "elsewhere", "expect", "note"), *at)
+        said = ("files",) if "files" in file.table(*at) else (*EVIDENCE_KEYS, "elsewhere")
+        file.keys_among((*said, "expect", "note"), *at)
         outcome = file.one_of(_OUTCOMES, *at, "expect")
-        records = [_record(file, *at)]
+        files = {name: file.text(*at, "files", name) for name in file.table(*at, "files")}
+        records = [] if files else [_record(file, *at)]
         for other in range(file.entries("elsewhere", *at)):
             file.keys_among(EVIDENCE_KEYS, *at, "elsewhere", other)
             records.append(_record(file, *at, "elsewhere", other))
         note = _flowing(file.text(*at, "note", default=""))
-        yield Example(outcome == "finding", tuple(records), note)
+        yield Example(outcome == "finding", tuple(records), note, files)
 
 
 def _record(file: TomlFile, *at: str | int) -> Mapping[str, str]:

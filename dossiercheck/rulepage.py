@@ -73,6 +73,9 @@ def _example(number: int, example: Example) -> Iterator[str]:
                 yield from (f"    {line}" for line in value.rstrip("\n").split("\n"))
             else:
                 yield f"  {key}: {value}"
+    for name, text in example.files.items():
+        yield f"  file {name}:"
+        yield from (f"    {line}" for line in text.rstrip("\n").split("\n"))
 
 
 def _fields(rule: Rule) -> dict[str, Any]:
@@ -93,6 +96,7 @@ def _fields(rule: Rule) -> dict[str, Any]:
                 "expect": "finding" if example.finding else "nothing",
                 "note": example.note,
                 "records": [dict(record) for record in example.records],
+                "files": dict(example.files),
             }
             for example in rule.examples
         ],

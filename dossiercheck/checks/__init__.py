@@ -9,4 +9,5 @@ from dossiercheck.checks import (  # noqa: F401
     identity,
     names,
     statements,
+    submission,
 )

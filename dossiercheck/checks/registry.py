@@ -4,12 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from dossiercheck.model import Exhibit
-
-if TYPE_CHECKING:
-    from dossiercheck.concordance import Case
 
 Params = Mapping[str, Any]
 
@@ -28,7 +25,8 @@ class Observation:
     derivation: tuple[str, ...] = ()
 
 
-Function = Callable[["Case", Params], Iterator[Observation]]
+# What a check is given: a substance's case, or for a check that needs "sequence" the submission.
+Function = Callable[[Any, Params], Iterator[Observation]]
 
 
 @dataclass(frozen=True, slots=True)

@@ -88,7 +88,7 @@ def count(review: Review) -> Json:
         "evidence": evidence,
         "substances": len(review.substances),
         "substances_compared": compared,
-        "substances_with_findings": len({finding.substance for finding in review.findings}),
+        "substances_with_findings": len({f.substance for f in review.findings} - {""}),
         "findings": len(review.findings),
         "grades": grades,
         "unread": len(review.unread),

@@ -6,14 +6,14 @@ No wrapping, no colour, nothing that depends on the screen; control characters a
 from __future__ import annotations
 
 from dossiercheck.report.document import Json
-from dossiercheck.report.verdict import number_of
+from dossiercheck.report.verdict import WHOLE, number_of
 from dossiercheck.report.visible import one_line
 
 
 def summary(document: Json) -> str:
     """The document in lines: grade, substance, sentence, then each exhibit's place below."""
     lines = []
-    labels = {one["id"]: one["label"] or one["id"] for one in document["substances"]}
+    labels = {"": WHOLE, **{s["id"]: s["label"] or s["id"] for s in document["substances"]}}
     findings: dict[str, list[Json]] = {}
     for finding in document["findings"]:
         findings.setdefault(finding["id"], []).append(finding)

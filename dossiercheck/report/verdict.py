@@ -5,6 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+WHOLE = "The dossier as a whole"  # heading of findings that are of no substance
+
 
 def verdict(counts: Mapping[str, Any]) -> str:
     """The result in plain words from a document's counts. Never says that a dossier is sound."""
@@ -15,8 +17,10 @@ def _found(counts: Mapping[str, Any]) -> str:
     total = counts["findings"]
     if total:
         grades = [f"{number} {name}" for name, number in counts["grades"].items() if number]
-        substances = number_of(counts["substances_with_findings"], "substance")
-        return f"{number_of(total, 'finding')} on {substances}: {', '.join(grades)}."
+        # A finding may be of no substance: then it speaks of the dossier as a whole.
+        about = counts["substances_with_findings"]
+        on = f" on {number_of(about, 'substance')}" if about else ""
+        return f"{number_of(total, 'finding')}{on}: {', '.join(grades)}."
     if not counts["evidence"]:
         return "Nothing could be compared: no place of the dossier gave evidence."
     return "No discrepancy was found in what could be read and compared."

@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from dossiercheck.report.document import Json
+from dossiercheck.report.verdict import WHOLE
 
 FULL_FINDINGS = 400
 FULL_SUBSTANCES = 200
@@ -77,7 +78,7 @@ def page(
     without a finding are written out when they are `full_substances` or fewer.
     """
     findings = _by_id(document["findings"])
-    labels = {one["id"]: one["label"] or one["id"] for one in document["substances"]}
+    labels = {"": WHOLE, **{s["id"]: s["label"] or s["id"] for s in document["substances"]}}
     anchors = {one["id"]: f"s{at}" for at, one in enumerate(document["substances"], 1)}
     groups: list[Group] = []
     brief: list[Json] = []

@@ -2,12 +2,13 @@
 
 An example is the rule's documentation; here it is held to what it says. All run as one dossier,
 each example in files and under labels of its own, so that the examples also show that substances
-are kept apart.
+are kept apart. An example that gives whole files is a dossier of its own.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
+from pathlib import Path
 
 import pytest
 
@@ -49,16 +50,30 @@ def review() -> Review:
     return pipeline.review_items(items, SETTINGS, BOOK)
 
 
+def review_of_files(files: Mapping[str, str], folder: Path) -> Review:
+    for name, text in files.items():
+        (folder / name).parent.mkdir(parents=True, exist_ok=True)
+        (folder / name).write_bytes(text.encode())
+    return pipeline.review([folder], SETTINGS, BOOK)
+
+
 @pytest.mark.parametrize(("rule", "example", "title"), EXAMPLES)
-def test_example(rule: Rule, example: Example, title: str, review: Review) -> None:
+def test_example(rule: Rule, example: Example, title: str, review: Review, tmp_path: Path) -> None:
+    if example.files:
+        review = review_of_files(example.files, tmp_path)
     found = [
         finding
         for finding in review.findings
         if finding.rule == rule.id
-        and any(one.place.source.startswith(f"{title}/") for one in finding.exhibits)
+        and (
+            example.files
+            or any(one.place.source.startswith(f"{title}/") for one in finding.exhibits)
+        )
     ]
     assert bool(found) is example.finding
+    assert not [unread for unread in review.unread if unread.reason == "check-failed"]
     for finding in found:
+        assert finding.exhibits
         assert finding.grade is rule.grade
         assert not set("{}") & set(finding.message)
 
