@@ -60,10 +60,15 @@ def registered(settings: Settings) -> Iterator[Evidence]:
 
 Survey = Callable[[Sequence[Substance]], Sequence[frozenset[Identity]]]
 
+_SIGN = re.compile(r"\(\s*(\+\s*/\s*[-−–]|±|[-+−–])\s*\)")
+_SIGNS = {"+": "plus", "-": "minus", "−": "minus", "–": "minus"}
+
 
 def key_of(label: str) -> str:
-    """What makes two labels the same: letters and digits, without case, spaces or hyphens."""
+    """What makes two labels the same: letters and digits, without case, spaces or hyphens. A sign
+    of rotation counts: "(+)-…" and "(−)-…" are two substances, and "(±)-…" is a third."""
     plain = unicodedata.normalize("NFKC", label).casefold()
+    plain = _SIGN.sub(lambda found: _SIGNS.get(found[1], "plusminus"), plain)
     return re.sub(r"[\W_]+", "", plain)
 
 

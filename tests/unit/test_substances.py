@@ -40,6 +40,11 @@ def nobody(_: Sequence[Substance]) -> list[frozenset[Identity]]:
         ("ABC‑123", "abc123", True),
         ("Impurity B", "Impurity C", False),
         ("β-form", "α-form", False),
+        ("Lavorin, (+)-", "Lavorin, (-)-", False),
+        ("(±)-Lavorin", "(+)-Lavorin", False),
+        ("(−)-Lavorin", "( - )-lavorin", True),
+        ("(+/-)-Lavorin", "(±)-Lavorin", True),
+        ("Lavorin (B)", "Lavorin-B", True),
     ],
 )
 def test_what_makes_two_labels_the_same(one: str, two: str, same: bool) -> None:
