@@ -52,6 +52,11 @@ def compare_constitution(one: Structure, two: Structure) -> Constitution:
         parts = [Counter(_neutral(s.flat).split(".")) for s in (one, two)]
         if parts[0] == parts[1]:
             return Constitution(CHARGE, "drawn with other charges")
+        # A zwitterion beside a charge that no proton balances (a sulfonium, a quaternary amine)
+        # stays one above; with every proton put back it is the same as the cation it comes from.
+        protonated = [Counter(_neutral(s.flat, force=True).split(".")) for s in (one, two)]
+        if protonated[0] == protonated[1]:
+            return Constitution(CHARGE, "drawn with a proton more or less")
         # Part by part, so that an acid is found in its sodium salt.
         alone = [Counter(_neutral(p) for p in s.flat.split(".")) for s in (one, two)]
         largest = [max(part, key=_weight) for part in alone]
@@ -69,12 +74,12 @@ def compare_constitution(one: Structure, two: Structure) -> Constitution:
     return Constitution(DIFFERENT, difference(*formulas))
 
 
-def _neutral(smiles: str) -> str:
+def _neutral(smiles: str, force: bool = False) -> str:
     mol = Chem.MolFromSmiles(smiles)
     if mol is None:
         return smiles
     try:
-        neutral = rdMolStandardize.Uncharger().uncharge(mol)
+        neutral = rdMolStandardize.Uncharger(True, force).uncharge(mol)
     except (RuntimeError, ValueError):
         return smiles
     return str(Chem.MolToSmiles(neutral))
