@@ -12,6 +12,8 @@ from dossiercheck.model import Kind
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.formula import molecular_formula
 
+_AMBIGUOUS = "APPEARS_AMBIGUOUS:"
+
 
 def _named(case: Case, verdict: str) -> Iterator[Pair]:
     return (
@@ -30,8 +32,11 @@ def _plain(case: Case, verdict: str) -> Iterator[Observation]:
 
 @check(needs=("name",), fields=("difference", "reference", "name_formula", "reference_formula"))
 def constitution_differs(case: Case, params: Params) -> Iterator[Observation]:
-    """The name stands for another compound."""
+    """The name stands for another compound. Where the name leaves a position open, the compound
+    that the name parser chose is one of several; that is `position_open`."""
     for pair in _named(case, con.DIFFERENT):
+        if _open(pair):
+            continue
         assert case.reference is not None
         assert case.structure is not None
         assert pair.reading.structure is not None
@@ -44,6 +49,27 @@ def constitution_differs(case: Case, params: Params) -> Iterator[Observation]:
             },
             (exhibit(pair.reading), exhibit(case.reference)),
         )
+
+
+@check(needs=("name",), fields=("detail",))
+def position_open(case: Case, params: Params) -> Iterator[Observation]:
+    """The name leaves open where something is attached, and the name parser's choice is not the
+    reference: whether the name means the reference cannot be told."""
+    for pair in _named(case, con.DIFFERENT):
+        where = _open(pair)
+        if where:
+            assert case.reference is not None
+            yield Observation(
+                {"detail": "; ".join(where)}, (exhibit(pair.reading), exhibit(case.reference))
+            )
+
+
+def _open(pair: Pair) -> list[str]:
+    """What the name parser says it had to choose: "connection of phenyl to lact"."""
+    messages = pair.reading.name.messages if pair.reading.name else ()
+    found = [text for text in messages if text.startswith(_AMBIGUOUS)]
+    said = [text.removeprefix(_AMBIGUOUS).strip() for text in found]
+    return [text[:1].lower() + text[1:] for text in said]
 
 
 @check(needs=("name",), fields=("difference",))

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 
 from dossiercheck.checks.configuration import hand_open
@@ -31,10 +32,58 @@ def statement_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
             continue
         if hand_open(case.structure) and stated in ("absolute", "racemic", "relative", "active"):
             continue
+        if _drawn_for_both(case, stated):
+            continue
         yield Observation(
             {"stated": reading.evidence.text.strip(), "found": found},
             (exhibit(reading), exhibit(case.reference)),
         )
+
+
+@check(needs=("statement",), fields=("stated", "centres"))
+def racemate_not_marked(case: Case, params: Params) -> Iterator[Observation]:
+    """A racemate drawn as one enantiomer whose connection table does not say that it is only that.
+
+    The wedges on two centres or more are then needed to say which diastereomer it is.
+    """
+    for reading in case.of_role(Role.STEREO):
+        stated = reading.statement.kind if reading.statement else ""
+        if not _drawn_for_both(case, stated):
+            continue
+        assert case.structure is not None
+        assert case.reference is not None
+        yield Observation(
+            {
+                "stated": reading.evidence.text.strip(),
+                "centres": str(sum(unit.kind == "centre" for unit in case.structure.units)),
+            },
+            (exhibit(reading), exhibit(case.reference)),
+        )
+
+
+def _drawn_for_both(case: Case, stated: str) -> bool:
+    """True for a stated racemate whose drawing has two centres or more and a chiral flag of 0:
+    by the published CTfile description the drawing then stands for both enantiomers."""
+    structure, reference = case.structure, case.reference
+    if stated != "racemic" or structure is None or reference is None:
+        return False
+    centres = sum(unit.kind == "centre" for unit in structure.units)
+    return (
+        reference.evidence.role is Role.MOLFILE
+        and structure.kind == "absolute"
+        and centres > 1
+        and _flag(reference.evidence.text) == "0"
+    )
+
+
+def _flag(molblock: str) -> str:
+    """The chiral flag of a connection table, V2000 or V3000; "" where there is none."""
+    counts = re.search(r"^M  V30 COUNTS(?: +\d+){4} +(\d)", molblock, re.MULTILINE)
+    if counts:
+        return counts[1]
+    lines = molblock.split("\n")
+    old = len(lines) > 3 and lines[3].rstrip().endswith("V2000")
+    return lines[3][12:15].strip() if old else ""
 
 
 @check(needs=("statement",), fields=("stated", "found"))

@@ -28,6 +28,7 @@ CONTRADICTORY = "name/contradictory-descriptors"
 OVERRIDES = "name/overrides-implied"
 LOST_SPACE = "name/lost-space"
 NOT_INTERPRETABLE = "name/not-interpretable"
+OPEN = "name/position-open"
 NOTATION = "identity/notation-differs"
 INCHIKEY = "identity/inchikey-differs"
 FORMULA = "identity/formula-differs"
@@ -37,6 +38,7 @@ WEDGE = "drawing/wedge-not-stereogenic"
 UNDEFINED = "drawing/undefined-centre"
 WAVY = "drawing/wavy-bond"
 STATED_KIND = "statement/kind-differs"
+UNMARKED = "statement/racemate-not-marked"
 STATED_COUNT = "statement/centre-count-differs"
 ACROSS = "across-documents/structures-differ"
 FLACK = "absolute-structure/flack-not-conclusive"
@@ -502,8 +504,18 @@ CASES = [
     one("open centre of a stated racemate", molfile=v2000("CC(O)CC"), stereo="racemate"),
     one("open centre of a racemate by name", name="rac-butan-2-ol", molfile=v2000("CC(O)CC")),
     Case("wavy bond", ({"molfile": wavy("C[C@H](O)CC")},), (), (WAVY,)),
+    Case(
+        "name without a locant",
+        ({"name": "chlorobenzoic acid", "molfile": v2000("OC(=O)c1ccc(Cl)cc1")},),
+        (),
+        (OPEN,),
+    ),
     # --- statements ------------------------------------------------------------------------
-    one("stated racemate, one drawn", STATED_KIND, molfile=v2000(THREONINE), stereo="racemate"),
+    one("stated racemate, one drawn", UNMARKED, molfile=v2000(THREONINE), stereo="racemate"),
+    one("stated racemate, one centre drawn", STATED_KIND, molfile=v2000(PEA), stereo="racemate"),
+    one("stated racemate, one written", STATED_KIND, smiles=THREONINE, stereo="racemate"),
+    one("mixture stated, all drawn", STATED_KIND, molfile=v2000(THREONINE), stereo="MIXED"),
+    one("epimers stated, one centre open", smiles="C[C@@H](O)C(N)C(=O)O", stereo="EPIMERIC"),
     one(
         "stated single, racemate drawn",
         STATED_KIND,
