@@ -108,8 +108,7 @@ _SYNONYMS: Mapping[Meaning, str] = {
     Role.SPACE_GROUP: """
         space group | space group symbol | space group (No.) | crystal space group
         Hermann-Mauguin symbol | _space_group_name_H-M_alt | _symmetry_space_group_name_H-M
-        _space_group_name_Hall | _symmetry_space_group_name_Hall | _space_group_IT_number
-        _symmetry_Int_Tables_number | _space_group_symop_operation_xyz
+        _space_group_IT_number | _symmetry_Int_Tables_number | _space_group_symop_operation_xyz
         """,
     Role.MOLFILE: "molfile | mol file | molblock | mol block | connection table",
     Aside.COUNT: """

@@ -14,7 +14,12 @@ from gemmi import cif
 
 from dossiercheck.limits import Refused
 from dossiercheck.readers.packing import Crystal, Site
-from dossiercheck.stereo.spacegroup import group_of_operations, parse_operations, space_group
+from dossiercheck.stereo.spacegroup import (
+    group_of_operations,
+    hall_group,
+    parse_operations,
+    space_group,
+)
 
 MOST_SITES = 2_000
 
@@ -30,11 +35,10 @@ _OPERATIONS = ("_space_group_symop_operation_xyz", "_symmetry_equiv_pos_as_xyz")
 SYMBOLS = (
     "_space_group_name_H-M_alt",
     "_symmetry_space_group_name_H-M",
-    "_space_group_name_Hall",
-    "_symmetry_space_group_name_Hall",
     "_space_group_IT_number",
     "_symmetry_Int_Tables_number",
 )
+_HALL = ("_space_group_name_Hall", "_symmetry_space_group_name_Hall")
 _SITE = "_atom_site_"
 _COLUMNS = ("label", "fract_x", "fract_y", "fract_z")
 _OPTIONAL = ("type_symbol", "occupancy", "disorder_assembly", "disorder_group", "calc_flag")
@@ -66,7 +70,9 @@ def operations(block: cif.Block) -> tuple[gemmi.Op, ...]:
     Raises `Refused`: "space-group-not-known" where none are given and the symbol leaves the
     setting open, "space-group-contradictory" where operations and symbol part.
     """
+    by_hall = next((found for tag in _HALL if (found := hall_group(value(block, tag)))), None)
     stated = [found for tag in SYMBOLS if (found := space_group(value(block, tag)))]
+    stated = [by_hall, *stated] if by_hall else stated
     listed = listed_operations(block)
     if not listed:
         if not stated:

@@ -34,8 +34,8 @@ class SpaceGroup:
 
 
 def space_group(text: str) -> SpaceGroup | None:
-    """A space group by its Hermann–Mauguin or Hall symbol, its number in International Tables,
-    or its list of operations, separated by semicolons; None where it is not known."""
+    """A space group by its Hermann–Mauguin symbol, its number in International Tables, or its
+    list of operations, separated by semicolons; None where it is not known."""
     if ";" in text or re.fullmatch(r"\s*x\s*,\s*y\s*,\s*z\s*", text, re.IGNORECASE):
         ops = parse_operations(text.split(";"))
         return group_of_operations(ops) if ops else None
@@ -63,13 +63,19 @@ def _known(symbol: str) -> SpaceGroup | None:
             same = [g for g in gemmi.spacegroup_table() if g.hm == named.hm]
             open_settings = len(same)
         return SpaceGroup(named.number, named.xhm(), named.is_sohncke(), open_settings)
+    return None
+
+
+@cache
+def hall_group(symbol: str) -> SpaceGroup | None:
+    """A space group by its Hall symbol. The two notations must not be mixed up: "P 4 2" is
+    P 4 2 2 after Hall and P 4₂ after Hermann and Mauguin."""
+    if not symbol or len(symbol) > 60:
+        return None
     try:
-        by_hall = gemmi.find_spacegroup_by_ops(gemmi.symops_from_hall(symbol))
+        return group_of_operations(list(gemmi.symops_from_hall(symbol)))
     except (RuntimeError, ValueError):
         return None
-    if by_hall is None:
-        return None
-    return SpaceGroup(by_hall.number, by_hall.xhm(), by_hall.is_sohncke())
 
 
 def parse_operations(texts: Sequence[str]) -> tuple[gemmi.Op, ...] | None:

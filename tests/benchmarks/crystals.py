@@ -56,6 +56,22 @@ def key(smiles: str) -> str:
     return standard_inchi(mol) if mol else ""
 
 
+def nuclei(smiles: str) -> str:
+    """Which atoms are bonded, hydrogens included, and how centres are configured; what the bonds'
+    orders are is left out. The text itself where double bonds have a geometry."""
+    mol = Chem.MolFromSmiles(smiles)
+    if mol is None or "/" in smiles:
+        return smiles
+    bare = Chem.RWMol(Chem.AddHs(mol))
+    Chem.Kekulize(bare, clearAromaticFlags=True)
+    for atom in bare.GetAtoms():
+        atom.SetFormalCharge(0)
+        atom.SetNoImplicit(True)
+    for bond in bare.GetBonds():
+        bond.SetBondType(Chem.BondType.SINGLE)
+    return str(Chem.MolToSmiles(bare))
+
+
 def structures(size: int, chance: random.Random) -> Iterator[str]:
     """SMILES of dictionary components of covered elements, in random order, ions made neutral."""
     dictionary = Dictionary()
@@ -107,7 +123,8 @@ def measured(made: crystals.Made, chance: random.Random) -> None:
 
 def outcome(text: str, smiles: str) -> tuple[str, str]:
     """("right" | "other form" | "wrong" | "refused", what was read or why not). Another form has
-    the same nuclei and configuration and the charge drawn elsewhere: the same standard InChI."""
+    the same nuclei and configuration and the charge or the double bonds drawn
+    elsewhere: the same standard InChI, or the same bonds between the same atoms and no E or Z."""
     data = text.encode()
     items = list(read(Source("a.cif", "", len(data), "cif"), data))
     for item in items:
@@ -116,7 +133,7 @@ def outcome(text: str, smiles: str) -> tuple[str, str]:
             again = canonical(Chem.MolToSmiles(without_hydrogens(found, keep_imine=True)))
             if again == canonical(smiles):
                 return "right", again
-            same = key(again) == key(smiles) != ""
+            same = key(again) == key(smiles) != "" or nuclei(again) == nuclei(smiles)
             return ("other form" if same else "wrong"), again
     reasons = [item for item in items if isinstance(item, Unread)]
     return "refused", f"{reasons[0].reason}: {reasons[0].detail}" if reasons else "nothing said"
