@@ -10,7 +10,7 @@ import re
 from collections.abc import Sequence
 from dataclasses import replace
 
-from dossiercheck.names import assumed, implied, leftout, misplaced, spacing
+from dossiercheck.names import assumed, capitals, implied, leftout, misplaced, spacing
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
 from dossiercheck.names.notation import NotationError, read_extended, read_notation
@@ -113,6 +113,13 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
         if skeleton is not None and not _one_constitution(structure, skeleton):
             # Refused one way, the parser falls back on another way to split the name.
             said = "with and without its descriptors the name parser reads two different compounds"
+            return replace(reading, messages=messages, refusal=Refusal("ambiguous", said))
+    other = capitals.with_ortho(text)
+    if other:
+        name = rewritten(other, descriptors, drop=rest.dropped, spaces=reading.respaced)
+        ortho = _structure(parser.parse([name])[0])
+        if ortho is not None and not _one_constitution(structure, ortho):
+            said = "in capitals, “O-” may be the oxygen atom or ortho, which are two compounds here"
             return replace(reading, messages=messages, refusal=Refusal("ambiguous", said))
     reading = replace(
         reading,
