@@ -17,7 +17,18 @@ from dossiercheck.readers.content import Read as Reader
 __all__ = ["Reader", "reader_for"]
 
 GROUP = "dossiercheck.readers"
-BUILT_IN = ("cif", "delimited", "jsonfile", "molfile", "otherword", "text", "word", "workbook", "xmlfile")
+BUILT_IN = (
+    "cif",
+    "delimited",
+    "jsonfile",
+    "molfile",
+    "otherword",
+    "pdf",
+    "text",
+    "word",
+    "workbook",
+    "xmlfile",
+)
 
 
 def reader_for(name: str, head: bytes = b"") -> Reader | None:
