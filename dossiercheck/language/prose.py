@@ -19,7 +19,7 @@ from dossiercheck.language.fields import (
 )
 from dossiercheck.language.labels import beside, is_label
 from dossiercheck.language.roles import Aside, is_nothing, plain
-from dossiercheck.language.running import Candidate, candidates
+from dossiercheck.language.running import Candidate, candidates, is_substituent, substituent
 from dossiercheck.model import Evidence, Passage, Place, Role, Unread
 
 
@@ -175,6 +175,9 @@ def _names(
         name = text[candidate.start : candidate.end]
         if _runs_on(line, following, candidate) or _began_before(line, previous, candidate):
             yield _broken(place, span, name)
+            continue
+        if is_substituent(name):
+            yield substituent(replace(place, span=span), name)
             continue
         label = beside(text, candidate.start, candidate.end)
         said = Evidence("", Role.NAME, name, replace(place, span=span), label=label)

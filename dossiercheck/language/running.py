@@ -12,11 +12,14 @@ import re
 from dataclasses import dataclass
 
 from dossiercheck.language.words import ANIONS, CATIONS, PROSE_WORDS
+from dossiercheck.model import Place, Unread
 
 HYPHENS = "-‐‑‒–—−﹣－"
 PRIMES = "'′″‴`´’"
 _MARKS = r"[*\u2217]?"
-_LOCANT = rf"(?:\d+[a-z]?|[α-ω]|N\d*)(?:[{PRIMES}\"]|\^\d+|[⁰¹²³⁴-⁹])*"
+_LOCANT = (
+    rf"(?:\d+(?:[a-z]|[A-H](?=[RS][,)])|~\{{[a-z]\}})?|[α-ω]|N\d*)(?:[{PRIMES}\"]|\^\d+|[⁰¹²³⁴-⁹])*"
+)
 _LETTER = r"(?:RS|SR|[RSEZrsMP]|R[ap]|S[ap]|ξ)"
 _ONE = rf"(?:{_LOCANT}\s?)?(?:~\{{{_LETTER}\}}|{_LETTER}){_MARKS}"
 _GROUP = re.compile(rf"[(\[]\s?{_ONE}(?:\s?,\s?{_ONE})*\s?[)\]]")
@@ -24,7 +27,7 @@ _OLD_STYLE = re.compile(r"\[\d*[a-z]?[RS]\*?-$")  # [R-(R*,S*)]-, as CAS index n
 _JOINTS = "\u200b\u2060\ufeff\u00ad"
 _NAME_CHARACTER = re.compile(
     # A straight double quote is a double prime only behind a locant, and a quotation mark else.
-    rf"(?<=[\dN])\"(?=[,)\]RSEZ{re.escape(HYPHENS)}])|[A-Za-zα-ωΑ-Ω0-9,.:*+±~^()\[\]{{}}{re.escape(HYPHENS)}{re.escape(PRIMES)}"
+    rf"(?<=[\dN])\"(?=[,)\]RSEZ{re.escape(HYPHENS)}])|\$(?=l\^)|(?<=-)>(?=\d)|→|[A-Za-zα-ωΑ-Ω0-9,.:*+±~^()\[\]{{}}{re.escape(HYPHENS)}{re.escape(PRIMES)}"
     rf"⁰¹²³⁴-⁹ⁿ₀-₉&λ{_JOINTS}]"
 )
 _SPACE = " \u00a0\u2009\u202f\u2002\u2003\t"
@@ -46,9 +49,27 @@ _LONGEST = 10_000
 _AFTER = re.compile(
     rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
     rf"|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
-    rf"|\(?\d+/\d+\)?|methyl|ethyl|propyl|isopropyl|butyl|benzyl)(?![A-Za-z])"
+    rf"|\d[\d,{PRIMES}]*[{HYPHENS}](?:mono|di|tri|tetra)?oxide"
+    rf"|\d[{PRIMES}]*[{HYPHENS}](?:\((?:di|tri|tetra|penta)?hydrogen[ \u00a0][a-z]+ate\)|[a-z]*phosphate)"
+    rf"|\(?\d+/\d+\)?|methyl|ethyl|propyl|isopropyl|butyl|benzyl)(?![A-Za-z])",
+    re.IGNORECASE,
 )
-_ALKYL = re.compile(rf"(?:[^\s]*yl|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
+# A group that needs another word to be a compound: an ester's alkyl, or an acyl.
+_GROUP_END = re.compile(r"yl(?:idene|idyne|ene)?[\])}]*$", re.IGNORECASE)
+_RINGS = re.compile(r"(?:bi|bis|ter|quater)(?:phenyl|naphthyl|pyridyl|thienyl|[a-z]{3,}yl)$", re.I)
+_PREFIX_END = re.compile(r"(?:amino|oxy|imino|thio|sulfanyl)[\])}]+$", re.IGNORECASE)
+_HYDROGEN = re.compile(rf"(?:di|tri|tetra|penta)?hydrogen[{' '}\u00a0]", re.IGNORECASE)
+_ANION_WORD = re.compile(r"[a-z]{3,}(?:ate|ite|ide)", re.IGNORECASE)
+# Words of prose that end as anions do.
+_NO_ANION = re.compile(
+    r"(?:precipit|intermedi|separ|candid|templ|substr|isol|aggreg|conjug|gener|indic|st|r|accumul"
+    r"|elimin|particip|filtr|concentr|distill?|condens|duplic|altern|appropri|adequ|deriv|pl|d"
+    r"|cre|rel)ate|(?:qu|wh|desp|defin|oppos|compos|crystall|favou?r|infin|metabol|s|perm)ite"
+    r"|(?:s|w|ins|bes|outs|prov|dec|gu|res|div|coinc|h|as)ide",
+    re.IGNORECASE,
+)
+_ANION_END = re.compile(r"(?:ate|ite|ide)[\])}]*$", re.IGNORECASE)
+_ALKYL = re.compile(rf"(?:[^\s]*yl[\])}}]*|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
 _ACYL_END = re.compile(r"(?:ate|ite|ide|amate)(?:\W|$)|carboxylate|oate", re.IGNORECASE)
 _ACID_END = re.compile(r"(?:ic|ous)$", re.IGNORECASE)
 # Endings of chemical words; asked for only where a name has no locant beside its descriptor.
@@ -57,6 +78,8 @@ _STEM_END = re.compile(
     r"|idene|thiol|nitrile|aldehyde|phenol)$",
     re.IGNORECASE,
 )
+# A short name in capitals, which a code of letters and digits is not.
+_CAPITALS = re.compile(r"\d-[A-Z]{0,5}(?:[AEY]N(?:[AO]L|E|ONE)|I[DN]E|ATE)(?![A-Za-z\d])")
 _PROSE = re.compile(PROSE_WORDS, re.IGNORECASE)
 
 
@@ -77,8 +100,32 @@ def candidates(text: str) -> list[Candidate]:
             continue
         candidate = _grow(text, group.start(), group.end(), found[-1].end if found else 0)
         if candidate:
+            if found and _is_half(text, found[-1], candidate):
+                # An ester whose halves both have descriptors and whose joint is not understood:
+                # either half alone would be another compound.
+                candidate = Candidate(found.pop().start, candidate.end)
             found.append(candidate)
     return found
+
+
+def is_substituent(name: str) -> bool:
+    """True for the name of a group, such as "(1R)-1-phenylethyl": no compound by itself.
+
+    Two like rings joined, as in "1,1'-binaphthyl", end in the same way and are compounds.
+    """
+    return bool(_GROUP_END.search(name)) and not _RINGS.search(name)
+
+
+def substituent(place: Place, text: str) -> Unread:
+    """The name of a group is no evidence of a substance."""
+    detail = "The text names a group and not a compound."
+    return Unread(place, "substituent", detail, text)
+
+
+def _is_half(text: str, first: Candidate, second: Candidate) -> bool:
+    gap = text[first.end : second.start]
+    name = text[first.start : first.end]
+    return gap in tuple(_SPACE) and (is_substituent(name) or _PREFIX_END.search(name) is not None)
 
 
 def _grow(text: str, start: int, end: int, floor: int) -> Candidate | None:
@@ -88,7 +135,7 @@ def _grow(text: str, start: int, end: int, floor: int) -> Candidate | None:
     left, right = token
     if right - left > _LONGEST:
         return Candidate(left, right)
-    acid = re.match(r"[ \u00a0]acid\b", text[right : right + 6]) is not None
+    acid = re.match(r"(?i)[ \u00a0]acid\b", text[right : right + 6]) is not None
     if not _is_chemical(text[left:right], text[start:end], acid):
         return None
     rights = _rightwards(text, left, right)
@@ -113,6 +160,8 @@ def _token(text: str, start: int, end: int, floor: int) -> tuple[int, int] | Non
             break
         if _NAME_CHARACTER.match(text, right) or _slipped_space(text, right):
             right += 1
+        elif _bracketed_acid(text, left, right):
+            right += len(" acid")
         elif (
             text[right] in _SPACE
             and (group := _GROUP.match(text, right + 1))
@@ -137,6 +186,18 @@ def _slipped_space(text: str, at: int) -> bool:
         and after.isdigit()
         and _LOCANTS_BEFORE.search(text[max(0, at - 20) : at]) is not None
         and _LOCANTS_AFTER.match(text[at + 1 : at + 40]) is not None
+    )
+
+
+def _bracketed_acid(text: str, left: int, right: int) -> bool:
+    """True at the space in "bis(phosphonic acid)"."""
+    if not re.match(r"(?i)[ \u00a0]acid[)\]}]", text[right : right + 6]):
+        return False
+    bracket = max(text.rfind(one, left, right) for one in "([{")
+    return bool(
+        bracket > left
+        and text[bracket - 1].isalpha()
+        and re.fullmatch(r"(?i)[a-z]+ic", text[bracket + 1 : right])
     )
 
 
@@ -197,14 +258,16 @@ def _is_chemical(token: str, group: str, acid: bool) -> bool:
     at = token.find(group)
     before, after = token[:at], token[at + len(group) :]
     rest = before + after
-    if not re.search(r"[a-zα-ω]{3}|[A-Z]{6}", rest):
+    if not re.search(r"[a-zα-ω]{3}|[A-Z]{6}", rest) and not _CAPITALS.search(rest):
         return False
     has_locant = any(c.isdigit() or c in "αβγ" for c in group)
     if _OLD_STYLE.search(before):
         after = after.removeprefix("]")
         before = ""
     if not has_locant:
-        if after[:1] not in HYPHENS or (before and before[-1].isalnum()):
+        # "3(R)" is prose, and so is "2-(S)-centre"; "…amido-2(R)-[…" is an old way to print.
+        inside = re.search(rf"[A-Za-z)\]][{HYPHENS}]\d+$", before) is not None
+        if after[:1] not in HYPHENS or (before and before[-1].isalnum() and not inside):
             return False
     elif not after or not re.match(rf"[{HYPHENS}A-Za-z0-9([{{]", after):
         return False
@@ -237,6 +300,7 @@ def _rightwards(text: str, left: int, right: int) -> list[int]:
 
 
 def _goes_with(core: str, word: str) -> bool:
+    word, core = word.lower(), core.lower()
     if word == "acid":
         return bool(_ACID_END.search(core))
     if word.endswith("yl"):
@@ -257,19 +321,37 @@ def _second_part(text: str, at: int, core: str) -> int | None:
         if token is None or token[0] != at:
             return None
         word = text[slice(*token)]
-        tail = re.match(r"[ \u00a0]acid\b", text[token[1] : token[1] + 6])
+        tail = re.match(r"(?i)[ \u00a0]acid\b", text[token[1] : token[1] + 6])
         if not _is_chemical(word, group[0], tail is not None):
             return None
-        if core.endswith("yl"):
+        if _GROUP_END.search(core):
+            if _GROUP_END.search(word) and text[token[1] : token[1] + 1] in tuple(_SPACE):
+                return _second_part(text, token[1] + 1, word)
             return token[1] if _ACYL_END.search(word[-12:]) else None
         if _ACID_END.search(word) and tail:
             return token[1] + tail.end()
         return token[1] if _ACYL_END.search(word[-12:]) else None
-    plain = re.compile(rf"[\w,()\[\]{re.escape(HYPHENS + PRIMES)}]*[a-z]ate(?![\w-])").match(
-        text, at
-    )
-    if plain and (core.endswith("yl") or re.search(r"\d|^[NO]-", plain[0])):
-        return plain.end()
+    return _anion(text, at) if _GROUP_END.search(core) else None
+
+
+def _anion(text: str, at: int) -> int | None:
+    """End of the anion that stands at `at` and makes an ester of the group before it, also after
+    "dihydrogen" or after the alkyl of a second ester group."""
+    hydrogen = _HYDROGEN.match(text, at)
+    if hydrogen:
+        return _anion(text, hydrogen.end())
+    token = _token(text, at, at + 1, at) if at < len(text) else None
+    if token is None or token[0] != at:
+        return None
+    word = text[slice(*token)]
+    if _ALKYL.fullmatch(word) and text[token[1] : token[1] + 1] in tuple(_SPACE):
+        return _second_part(text, token[1] + 1, word)
+    if word.isalpha():
+        if word.lower() == "phosphono" and text[token[1] : token[1] + 1] in tuple(_SPACE):
+            return _anion(text, token[1] + 1)
+        return token[1] if _ANION_WORD.fullmatch(word) and not _NO_ANION.fullmatch(word) else None
+    if _ANION_END.search(word) and re.search(r"\d|[(\[{]|^[NOS]-|-[DL]-", word):
+        return token[1]
     return None
 
 
@@ -277,7 +359,7 @@ def _leftwards(text: str, left: int, rights: list[int], floor: int) -> list[int]
     """Starts of the name, leftmost first: words before an ester or a salt."""
     starts = [left]
     name = text[left : rights[0]]
-    if not (_ACYL_END.search(name) or re.search(r"acid$|oxide$|ether$|ketone$", name)):
+    if not (_ACYL_END.search(name) or re.search(r"(?i)(?:acid|oxide|ether|ketone)$", name)):
         return starts
     while left > floor and text[left - 1] in _SPACE:
         at = left - 1
@@ -285,9 +367,8 @@ def _leftwards(text: str, left: int, rights: list[int], floor: int) -> list[int]
         while begin > floor and _NAME_CHARACTER.match(text, begin - 1):
             begin -= 1
         word = text[begin:at]
-        opened = re.match(r"[(\[{]+", word)
-        if opened and _open(word):
-            begin += len(opened[0])
+        while word[:1] in ("(", "[", "{") and _open(word):
+            begin += 1
             word = text[begin:at]
         if not word or not _ALKYL.fullmatch(word) or _open(word):
             break

@@ -19,7 +19,7 @@ from dossiercheck.language.roles import (
     plain,
     says_itself,
 )
-from dossiercheck.language.running import candidates
+from dossiercheck.language.running import candidates, is_substituent, substituent
 from dossiercheck.model import Cell, Evidence, Role, Table, Unread
 
 _Meaning = Callable[[str], Meaning | None]
@@ -320,6 +320,9 @@ def _loose_names(cell: Cell) -> Iterator[Evidence | Unread]:
             span = (at + candidate.start, at + candidate.end)
             label = beside(line, candidate.start, candidate.end)
             place = replace(cell.place, span=span)
+            if is_substituent(cell.text[slice(*span)]):
+                yield substituent(place, cell.text[slice(*span)])
+                continue
             yield Evidence("", Role.NAME, cell.text[slice(*span)], place, label=label)
         at += len(line) + 1
 

@@ -47,6 +47,24 @@ def names(text: str) -> list[str]:
         "(M)-1,1'-binaphthyl-2,2'-diol",
         "(3aR,7aS)-octahydro-1H-indene",
         "(2'R,3\"S)-x-2'-yl-benzene",
+        "[(2R,3S)-3-hydroxyoxolan-2-yl]methyl dihydrogen phosphate",
+        "(1R)-1-phenylethyl methyl butanedioate",
+        "S-(2-acetamidoethyl) (6S)-6-chlorodecanethioate",
+        "(phenylmethyl) N-[(2S)-butan-2-yl]carbamate",
+        "(2R)-2,3-dihydroxypropyl beta-D-galactopyranoside",
+        "(2R)-butan-2-yl nicotinate",
+        "[(2S)-oxiran-2-yl]methyl phosphono hydrogen phosphate",
+        "[(1R)-1-phenylethyl] [(2S)-butan-2-yl] hydrogen phosphate",
+        "{[(2R)-pyrrolidin-2-yl]methylene}bis(phosphonic acid)",
+        "(5S)-5-phenyl-1,2-thiazolidin-3-one 1,1-dioxide",
+        "(3~{a}~{R},6~{a}~{S})-hexahydro-1~{H}-pentalene",
+        "(2S)-2-(beta-D-glucopyranosyl-(1->4)-oxy)butane",
+        "(3R)-1$l^{6}-thiane-1,1-dione".replace("{6}", "6"),
+        "N-HYDROXY-2(R)-[(PHENYL)AMINO]-3-METHYLBUTANAMIDE HYDROCHLORIDE",
+        "(2S)-2-AMINO-3-PHENYLPROPANOIC ACID",
+        "(2E)-BUT-2-ENAL",
+        "(3AR,7AS)-OCTAHYDRO-1H-INDENE",
+        "2'-deoxy-N-[(2S)-butan-2-yl]adenosine 5'-(dihydrogen phosphate)",
     ],
 )
 @pytest.mark.parametrize(
@@ -80,6 +98,7 @@ def test_names_are_found_whole(name: str, sentence: str) -> None:
         "The ratio (R):(S) was 1:1 (E = 200).",
         "the (2R,3S)-isomer",
         "(S)-acidic",
+        "the amide-3(R) of Section-2(S)",
     ],
 )
 def test_prose_is_no_name(prose: str) -> None:
@@ -193,3 +212,30 @@ def test_a_name_over_a_line_end_is_not_guessed(text: str) -> None:
 def test_a_name_at_the_end_of_a_line_before_plain_words_is_read(following: str) -> None:
     found = evidence(lines("The product (2S)-butan-2-ol" + following))
     assert [one.text for one in found] == ["(2S)-butan-2-ol"]
+
+
+@pytest.mark.parametrize(
+    ("text", "found"),
+    [
+        ("the (1R)-1-phenylethyl intermediate", "(1R)-1-phenylethyl"),
+        ("the (1R)-1-phenylethyl precipitate is", "(1R)-1-phenylethyl"),
+        ("a (2S)-butan-2-yl group and", "(2S)-butan-2-yl"),
+        ("(1R)-1-phenylethyl separates inside", "(1R)-1-phenylethyl"),
+    ],
+)
+def test_the_name_of_a_group_is_no_substance(text: str, found: str) -> None:
+    assert names(text) == [found]
+    assert evidence(lines(text)) == []
+    assert [(one.reason, one.text) for one in not_read(lines(text))] == [("substituent", found)]
+
+
+def test_rings_joined_to_their_like_are_compounds() -> None:
+    for name in ("(R)-2,2'-dimethyl-1,1'-binaphthyl", "(aR)-2-iodo-6-methylbiphenyl"):
+        assert [one.text for one in evidence(lines(f"The ligand {name} was used."))] in ([name], [])
+
+
+def test_halves_of_an_ester_are_never_read_apart() -> None:
+    """Where the joint is not understood, the whole goes to the name parser."""
+    text = "gives [[(3R)-oxolan-3-ylidene]amino] [(2S)-butan-2-yl] phosphorofluoridate."
+    for one in candidates(text):
+        assert text[one.start : one.end] not in ("[(2S)-butan-2-yl] phosphorofluoridate",)
