@@ -49,7 +49,8 @@ _HEAD = re.compile(r"[A-Za-z]+")
 def value(block: cif.Block, tag: str) -> str:
     """The value of a data name, "" where it is absent, unknown or not applicable."""
     raw = block.find_value(tag)
-    return "" if raw is None or cif.is_null(raw) else cif.as_string(raw).strip()
+    text = "" if raw is None else cif.as_string(raw).strip()
+    return "" if text in ("?", ".") else text  # some programs put the sign into quotes
 
 
 def has_sites(block: cif.Block) -> bool:

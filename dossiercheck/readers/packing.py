@@ -297,8 +297,7 @@ def orthogonal(cell: tuple[float, ...]) -> Array:
         raise Refused("cell-not-possible", f"The cell {_text(cell)} is not possible.")
     unit = gemmi.UnitCell(*cell)
     orth: Array = np.array(unit.orth.mat.tolist(), float)
-    volume = float(np.linalg.det(orth))
-    if not np.isfinite(orth).all() or volume <= 1.0:
+    if not np.isfinite(orth).all() or np.linalg.det(orth) <= 1.0:
         raise Refused("cell-not-possible", f"The cell {_text(cell)} has no volume.")
     if min(1.0 / np.linalg.norm(np.linalg.inv(orth), axis=1)) < _LEAST_HEIGHT:
         raise Refused("cell-not-possible", f"The cell {_text(cell)} is too narrow for an atom.")

@@ -40,6 +40,11 @@ _STAMP = re.compile(r"^\[\d\d:\d\d:\d\d\]\s*")
 # Below this sine of the angle between substituent and double bond, the drawing does not say on
 # which side the substituent stands (about 6 degrees).
 _LEAST_SINE = 0.1
+_TETRAHEDRAL = (
+    Chem.ChiralType.CHI_UNSPECIFIED,
+    Chem.ChiralType.CHI_TETRAHEDRAL_CW,
+    Chem.ChiralType.CHI_TETRAHEDRAL_CCW,
+)
 
 
 class _Collector(logging.Handler):
@@ -91,6 +96,7 @@ def from_molblock(text: str) -> Structure:
         Chem.AssignChiralTypesFromBondDirs(mol)
     else:
         Chem.AssignAtomChiralTagsFromStructure(mol)
+        _only_tetrahedral(mol)
     marks = tuple(_marks(text))
     structure = Structure(
         mol,
@@ -107,6 +113,14 @@ def from_molblock(text: str) -> Structure:
             if sign:
                 set_geometry(mol, atoms, near, sign)
     return structure
+
+
+def _only_tetrahedral(mol: Chem.Mol) -> None:
+    """Take off the marks that the library gives to octahedra and the like, equal ligands or not:
+    PF6⁻ has no configuration."""
+    for atom in mol.GetAtoms():
+        if atom.GetChiralTag() not in _TETRAHEDRAL:
+            atom.SetChiralTag(Chem.ChiralType.CHI_UNSPECIFIED)
 
 
 def from_smiles(
