@@ -10,7 +10,7 @@ import re
 from collections.abc import Sequence
 from dataclasses import replace
 
-from dossiercheck.names import assumed, capitals, implied, leftout, misplaced, spacing
+from dossiercheck.names import apart, assumed, capitals, implied, leftout, misplaced, spacing
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
 from dossiercheck.names.notation import NotationError, read_extended, read_notation
@@ -114,6 +114,9 @@ def _read(reading: NameReading, rest: Rest, parser: NameParser) -> NameReading:
             # Refused one way, the parser falls back on another way to split the name.
             said = "with and without its descriptors the name parser reads two different compounds"
             return replace(reading, messages=messages, refusal=Refusal("ambiguous", said))
+    doubt = apart.doubt(text, structure.smiles)
+    if doubt:
+        return replace(reading, messages=messages, refusal=Refusal("ambiguous", doubt))
     other = capitals.with_ortho(text)
     if other:
         name = rewritten(other, descriptors, drop=rest.dropped, spaces=reading.respaced)
@@ -198,7 +201,10 @@ def _find(cleaned: Cleaned, part: str) -> tuple[int, int] | None:
 
 def _stereo_kind(structure: NamedStructure, descriptors: Sequence[PrintedDescriptor]) -> str:
     kinds = {group.kind for group in structure.groups}
-    if kinds & {"rac", "and"} or any(d.text in _RACEMIC for d in descriptors):
+    signs = {d.text for d in descriptors}
+    if signs & _RACEMIC and signs & {"+", "-", "(+)", "(-)"}:
+        return "silent"  # one part racemic, another not: a mixture of epimers
+    if kinds & {"rac", "and"} or signs & _RACEMIC:
         return "racemic"
     if "or" in kinds or any(d.text == "rel" for d in descriptors):
         return "relative"
