@@ -31,15 +31,18 @@ def by_everything(order: Order, hand: int = 1, favoured: int | None = None) -> O
     """The order after Rules 3 to 5, and Rule 6 where `favoured` names the atom whose first
     occurrence counts. `hand` -1 ranks as the mirror image would be ranked by Rule 5."""
     order = Order([list(group) for group in order.groups], list(order.steps))
+    if order.unique:
+        return order
     keys = Keys(_PROPERTIES)
-    for rule in ("3", "4a"):
-        order.split(lambda branch, rule=rule: keys.of(branch, rule), rule)  # type: ignore[misc]
-    if not order.unique:
-        order.split(lambda branch: _pairs(branch, keys), "4b")
-    if not order.unique:
-        order.split(lambda branch: keys.of(branch, "4c"), "4c")
-    if not order.unique:
-        order.split(lambda branch: _likeness(branch, keys, hand, "5"), "5")
+    if order.groups[0][0].node.tree.labelled:
+        for rule in ("3", "4a"):
+            order.split(lambda branch, rule=rule: keys.of(branch, rule), rule)  # type: ignore[misc]
+        if not order.unique:
+            order.split(lambda branch: _pairs(branch, keys), "4b")
+        if not order.unique:
+            order.split(lambda branch: keys.of(branch, "4c"), "4c")
+        if not order.unique:
+            order.split(lambda branch: _likeness(branch, keys, hand, "5"), "5")
     if favoured is not None and not order.unique:
         first: Property = lambda branch: float(branch.node.atom == favoured)  # noqa: E731
         order.split(lambda branch: keys.spheres(branch, first, BEFORE["6"], "6"), "6")
@@ -121,6 +124,7 @@ def label_branches(
         for node, descriptor in decided:
             if descriptor:
                 node.aux = descriptor
+                tree.labelled = True
 
 
 def _follow(node: Node, chain: Sequence[int]) -> tuple[Node, ...]:

@@ -7,7 +7,7 @@ What that recommendation calls ambiguous or contradictory gives no configuration
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 
 from dossiercheck.stereo.cip.helices import helices
 from dossiercheck.stereo.cip.linear import cumulated, double_chains
@@ -147,7 +147,7 @@ class Drawn:
         """The two ligands at one end, one that is drawn first; None where there is no choice."""
         outer = others(self.molecule.near[atom], inward)
         hydrogens = self.molecule.hydrogens[atom]
-        if len(outer) == 2 and not hydrogens:
+        if len(outer) == 2 and not hydrogens and not _twins(self.molecule, outer):
             return outer[0], outer[1]
         if len(outer) == 1:
             if hydrogens == 1:
@@ -217,33 +217,68 @@ class Drawn:
             yield Marked(AXIS, chain, (*near, *far), signs.pop())
 
 
+# Elements whose four (or three and a lone pair) ligands hold their places (IUPAC 2013, P-93.2 and
+# P-93.3); the geometries of metals are more than tetrahedral and are not read.
+_TETRAHEDRAL = frozenset((5, 6, 7, 14, 15, 16, 32, 33, 34, 50, 51, 52))
+_PYRAMIDAL = frozenset((15, 16, 33, 34, 51, 52))
+
+
 def can_be_centre(molecule: Molecule, atom: int) -> bool:
-    """Whether an atom with these ligands holds a configuration (IUPAC 2013, P-93.2, P-93.3).
+    """Whether an atom with these ligands holds a configuration.
 
     Four ligands; or three with a hydrogen; or three with a lone pair that does not swing over: on
-    sulfur, selenium, phosphorus, arsenic and heavier, and on nitrogen held in rings at all three
-    bonds or in a three-membered ring.
+    sulfur, phosphorus and heavier, and on nitrogen at the head of a bridge or in a ring of three.
     """
     near, hydrogens = molecule.near[atom], molecule.hydrogens[atom]
-    if any(order > 1 for order in near.values()):
+    number = molecule.number[atom]
+    if number not in _TETRAHEDRAL or any(order > 1 for order in near.values()):
+        return False
+    if _twins(molecule, near):
         return False
     if len(near) + hydrogens == 4:
-        return hydrogens <= 1
+        return hydrogens <= 1 and (number != 7 or molecule.charge[atom] == 1)
     if len(near) != 3 or hydrogens:
         return False
-    number = molecule.number[atom]
     if number == 7:
         return molecule.charge[atom] == 0 and holds_lone_pair(molecule, atom)
-    return number in (15, 16, 33, 34, 51, 52)
+    return number in _PYRAMIDAL
+
+
+def _twins(molecule: Molecule, ligands: Iterable[int]) -> bool:
+    """Whether two of the ligands are the same single atom."""
+    single = [
+        (molecule.number[other], molecule.isotope[other], molecule.hydrogens[other])
+        for other in ligands
+        if len(molecule.near[other]) == 1
+    ]
+    return len(single) > len(set(single))
 
 
 def holds_lone_pair(molecule: Molecule, atom: int) -> bool:
-    """Whether a nitrogen cannot invert: all its bonds are in rings and not all in one, or it is in
-    a three-membered ring."""
+    """Whether a nitrogen cannot invert: in a ring of three, or at the head of a bridge, where two
+    of its rings run on together; where two rings only share a bond it inverts freely."""
     near = list(molecule.near[atom])
-    if any(two in molecule.near[one] for one in near for two in near if one < two):
-        return True
-    return all(molecule.in_ring(atom, other) for other in near)
+    if not all(molecule.in_ring(atom, other) for other in near):
+        return any(two in molecule.near[one] for one in near for two in near if one < two)
+    ways = (_way_round(molecule, atom, one, two) for one in near for two in near if one < two)
+    smallest, next_one, _ = sorted((set(way) for way in ways), key=len)
+    return len(smallest) == 2 or len(smallest & next_one) > 1
+
+
+def _way_round(molecule: Molecule, atom: int, start: int, goal: int) -> list[int]:
+    """A shortest path between two neighbours of an atom that does not pass through it."""
+    paths, seen = [[start]], {atom, start}
+    while paths:
+        onward = []
+        for path in paths:
+            if path[-1] == goal:
+                return path
+            for other in molecule.near[path[-1]]:
+                if other not in seen:
+                    seen.add(other)
+                    onward.append([*path, other])
+        paths = onward
+    return []
 
 
 def is_trigonal(molecule: Molecule, atom: int) -> bool:

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field
 from dossiercheck.stereo.cip.auxiliary import by_everything, label_branches, ligand_branches
 from dossiercheck.stereo.cip.molecule import LONE_PAIR, Molecule
 from dossiercheck.stereo.cip.ranking import Order, by_constitution
-from dossiercheck.stereo.cip.tree import TooLarge, Tree
+from dossiercheck.stereo.cip.tree import Branch, TooLarge, Tree
 from dossiercheck.stereo.cip.units import CENTRE, DOUBLE_BOND, HELIX, Marked, parity
 
 # Nodes of one tree. About a second; a larger one is given up and its unit left undetermined.
@@ -74,13 +74,30 @@ def _by_all(unit: Marked, orders: Sequence[Order]) -> tuple[str, list[Order]]:
     favoured, and the letter counts where every choice among them gives the same one (Hanson et
     al. 2018, Rule 6)."""
     found, ranked = _by_stereo(unit, orders)
-    if _unique(ranked):
+    if _unique(ranked) or not _may_decide(ranked):
         return found, ranked
     tied = next(group for order in ranked for group in order.groups if len(group) > 1)
     outcomes = [_by_stereo(unit, ranked, each.node.atom) for each in tied]
     if len({descriptor for descriptor, _ in outcomes}) == 1:
         return outcomes[0]
     return found, ranked
+
+
+def _may_decide(orders: Sequence[Order]) -> bool:
+    """Whether Rule 6 can part the ligands: two that tie alone could be exchanged, and then every
+    choice has its mirror image; and a favoured ligand is met again only through a ring."""
+    tied = [len(group) for order in orders for group in order.groups if len(group) > 1]
+    if tied == [2]:
+        return False
+    branches = (b for order in orders for g in order.groups if len(g) > 1 for b in g)
+    return all(_in_ring(branch) for branch in branches)
+
+
+def _in_ring(branch: Branch) -> bool:
+    node = branch.node
+    if branch is not node:
+        return True
+    return node.atom >= 0 and node.tree.molecule.in_ring(node.atom, node.parent_atom)
 
 
 def _by_stereo(

@@ -171,11 +171,14 @@ def end_ligands(written: list[int], molecule: Molecule, atom: int, inward: int) 
 
 
 def double_chains(molecule: Molecule) -> Iterator[tuple[int, ...]]:
-    """Every double bond, and every row of an odd number of them, from end to end; not in rings of
-    fewer than eight atoms, which hold them Z (IUPAC 2013, P-93.5.1.4.1)."""
+    """Every double bond, and every row of an odd number of them, from end to end.
+
+    Not in rings of fewer than eight atoms, which hold them Z (IUPAC 2013, P-93.5.1.4.1), and not
+    in aromatic rings, where the bond has no fixed place.
+    """
     for begin, near in enumerate(molecule.near):
         for end, order in near.items():
-            if begin < end and order == 2:
+            if begin < end and order == 2 and not {begin, end} <= molecule.aromatic:
                 row = max(cumulated(molecule, begin), cumulated(molecule, end), key=len)
                 if len(row) == 1:
                     row = (begin, end)

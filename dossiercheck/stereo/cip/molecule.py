@@ -24,7 +24,8 @@ _WEIGHTS = Chem.GetPeriodicTable()
 
 @dataclass(frozen=True, slots=True)
 class Molecule:
-    """Atoms are 0-based; `near[a]` maps each neighbour of a to the bond's order (1 to 4).
+    """Atoms are 0-based; `near[a]` maps each neighbour of a to the bond's order (1 to 4); `ring`
+    has the ring bonds, lower atom first; `aromatic` the atoms of aromatic rings.
 
     `duplicate[a]` is the averaged atomic number of a's one duplicate atom where a is part of a
     mancude ring whose double bonds can be placed in more than one way, 0 elsewhere
@@ -39,6 +40,7 @@ class Molecule:
     hydrogens: list[int]
     near: list[dict[int, int]]
     ring: frozenset[tuple[int, int]]
+    aromatic: frozenset[int]
     duplicate: list[float]
 
     def mass(self, atom: int) -> float:
@@ -98,6 +100,7 @@ def molecule_of(mol: Chem.Mol) -> Molecule:
         hydrogens=[atom.GetTotalNumHs() for atom in atoms],
         near=near,
         ring=frozen,
+        aromatic=frozenset(atom.GetIdx() for atom in atoms if atom.GetIsAromatic()),
         duplicate=averaged(number, near, frozen),
     )
 

@@ -83,15 +83,16 @@ BEFORE = {
 }
 
 
-def by_constitution(ligands: Iterable[Branch], rules: tuple[str, ...] = ("1a", "1b", "2")) -> Order:
+def by_constitution(ligands: Iterable[Branch]) -> Order:
     """Rank by atomic number (1a), root distance of duplicates (1b) and mass (2)."""
     order = Order([list(ligands)], [])
     _by_number(order)
+    if order.unique:
+        return order
     keys = Keys({})
-    for rule in rules[1:]:
-        if order.unique:
-            break
-        order.split(lambda branch, rule=rule: keys.of(branch, rule), rule)  # type: ignore[misc]
+    order.split(lambda branch: keys.of(branch, "1b"), "1b")
+    if not order.unique and any(order.groups[0][0].node.tree.molecule.isotope):
+        order.split(lambda branch: keys.of(branch, "2"), "2")
     return order
 
 

@@ -72,6 +72,11 @@ class Node(Branch):
             self.kids = self.tree.unfold(self)
         return self.kids
 
+    @property
+    def parent_atom(self) -> int:
+        """The atom this node hangs from, -1 at the root."""
+        return self.parent.atom if self.parent else -1
+
     def up(self) -> Branch:
         """The branch that leads from here back towards the root."""
         if self.upward is None:
@@ -107,9 +112,10 @@ class Tree:
     """The digraph of one root atom, unfolded as far as it is looked at."""
 
     def __init__(self, molecule: Molecule, root: int, budget: int) -> None:
-        """`budget` bounds the nodes."""
+        """`budget` bounds the nodes; `labelled` is set once a node has an auxiliary descriptor."""
         self.molecule = molecule
         self.left = budget
+        self.labelled = False
         self.keys: dict[tuple[int, str], list[Level]] = {}
         self.root = Node(self, root, None, REAL, float(molecule.number[root]), 0)
 
