@@ -385,6 +385,24 @@ def test_a_disordered_methyl_group() -> None:
     assert plain(from_molblock(record.molblock)) == canonical("C[C@H](O)c1ccccc1")
 
 
+def test_a_solvent_over_an_inversion_centre() -> None:
+    """Half of the cells have the water here, the others its image: two molecules to one water."""
+    made = crystal(THREONINE, "P -1")
+    water = {"O": (0.3, 0.2, 0.1), "Ha": (1.1, 0.3, 0.3), "Hb": (0.0, 1.0, -0.2)}
+    for name, place in water.items():
+        made.atoms.append(Atom(name[0], np.array(place), 0.5, ".", "-1", f"{name}W"))
+    made.tags["_chemical_formula_sum"] = "C8 H20 N2 O7"
+    parts = molecule(made).split(".")
+    assert sorted(parts) == sorted([canonical(THREONINE)] * 2 + ["O"])
+
+
+def test_half_a_molecule_in_parts_over_an_inversion_centre_is_refused() -> None:
+    made = crystal(THREONINE, "P -1")
+    for atom in made.atoms[:5]:
+        atom.occupancy, atom.group = 0.5, "-1"
+    assert refusal(made) == "unresolved-disorder"
+
+
 def partial_water(made: Made) -> None:
     for atom in made.atoms[-3:]:
         atom.occupancy = 0.5
