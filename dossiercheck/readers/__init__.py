@@ -20,10 +20,12 @@ GROUP = "dossiercheck.readers"
 BUILT_IN = (
     "cif",
     "delimited",
+    "html",
     "jsonfile",
     "molfile",
     "otherword",
     "pdf",
+    "svg",
     "text",
     "word",
     "workbook",

@@ -1,7 +1,7 @@
 """XML files: which format a document is by its root element, and on to the module that knows it.
 
 The suffix is shared by many formats, so the root's namespace and local name decide. `ROOTS` holds
-the formats; a root that stands in no row of it is unread, never guessed at.
+the formats; of a root that stands in no row of it the words are read and the meaning is not.
 """
 
 from __future__ import annotations
@@ -13,7 +13,7 @@ from lxml import etree
 
 from dossiercheck.limits import DEFAULT, Refused, parse_xml
 from dossiercheck.model import Item, Source
-from dossiercheck.readers import fhir, spl
+from dossiercheck.readers import fhir, html, spl, svgtext, xmltext
 from dossiercheck.readers.content import guarded
 from dossiercheck.readers.fhirnode import FHIR
 from dossiercheck.readers.splbody import HL7
@@ -28,20 +28,19 @@ ROOTS: Mapping[tuple[str, str], FromRoot] = MappingProxyType(
     {
         (FHIR, ""): fhir.read_root,
         (HL7, "document"): spl.read_root,
+        (html.XHTML, "html"): html.read_root,
+        (svgtext.SVG, "svg"): svgtext.read_root,
     }
 )
 
 
 @guarded("")
 def read(source: Source, data: bytes) -> Iterator[Item]:
-    """Yield what the format's own module finds; an unknown root is `Refused` ("no-reader")."""
+    """Yield what the format's own module finds; an unknown root is said to be ("no-reader")."""
     if len(data) > DEFAULT.member_bytes:
         raise Refused("size-budget", f"The XML has {len(data)} bytes.")
     root = parse_xml(data, doctype=True)
     name = etree.QName(root)
     space = name.namespace or ""
-    reader = ROOTS.get((space, name.localname)) or ROOTS.get((space, ""))
-    if reader is None:
-        where = f" in the namespace {space}" if space else ""
-        raise Refused("no-reader", f"No reader for XML with the root {name.localname}{where}.")
+    reader = ROOTS.get((space, name.localname)) or ROOTS.get((space, "")) or xmltext.read_root
     yield from reader(source, root)
