@@ -275,7 +275,25 @@ def _tied(
         elif not relative and not (fault and fault.slug == "overrides-implied"):
             shown = _cross_checked(shown, view.shows)
         result.append(shown)
-    return _loose_bonds(result, name, reference)
+    return _loose_bonds(_in_any_order(result, name), name, reference)
+
+
+def _in_any_order(views: list[UnitView], name: NameReading) -> list[UnitView]:
+    """Letters without locants ("(E,Z)-", "(R,S)-") may be meant in another order than the name
+    parser takes them in: where all of them agree in some order, none differs for certain."""
+    bare = {d.span for d in name.descriptors if not d.locant}
+    loose = [v for v in views if v.span in bare and v.state in (State.AGREES, State.DIFFERS)]
+    if len(loose) < 2 or sorted(v.shows.upper() for v in loose) != sorted(
+        v.descriptor.upper() for v in loose
+    ):
+        return views
+    note = "the letters have no locants; in another order they agree"
+    return [
+        replace(view, state=State.UNDETERMINED, note=note)
+        if view in loose and view.state is State.DIFFERS
+        else view
+        for view in views
+    ]
 
 
 def _by_letter(view: UnitView) -> UnitView:

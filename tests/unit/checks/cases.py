@@ -505,6 +505,27 @@ CASES = [
     one("open centre of a racemate by name", name="rac-butan-2-ol", molfile=v2000("CC(O)CC")),
     Case("wavy bond", ({"molfile": wavy("C[C@H](O)CC")},), (), (WAVY,)),
     Case(
+        "letters without locants in another order",
+        (
+            {
+                "name": "(E,Z)-hexa-2,4-dienoic acid",
+                "molfile": v2000(r"C/C=C/C=C\C(=O)O"),
+            },
+        ),
+        (),
+        (UNDETERMINED, UNDETERMINED),
+    ),
+    Case(
+        "letters without locants, in no order",
+        (
+            {
+                "name": "(E,E)-hexa-2,4-dienoic acid",
+                "molfile": v2000(r"C/C=C/C=C\C(=O)O"),
+            },
+        ),
+        (CONFIGURATION,),
+    ),
+    Case(
         "name without a locant",
         ({"name": "chlorobenzoic acid", "molfile": v2000("OC(=O)c1ccc(Cl)cc1")},),
         (),
