@@ -6,12 +6,12 @@ import os
 import signal
 import threading
 import time
-from collections.abc import Callable
 from pathlib import Path
 
 import pytest
 
 from dossiercheck import pipeline, rulebook, work
+from dossiercheck.find import Found
 from dossiercheck.model import Place, Review, Unread
 from dossiercheck.names.parser import NameParser
 from dossiercheck.settings import Settings
@@ -167,14 +167,14 @@ def test_two_processes_say_exactly_the_same(review: Review, crowd: Path) -> None
 
 def test_a_file_that_may_not_be_read(dossier: Path, monkeypatch: pytest.MonkeyPatch) -> None:
     (dossier / "shut.txt").write_text("Name: ethanol", encoding="utf-8")
-    plain: Callable[[Path], bytes] = Path.read_bytes
+    plain = Found.read
 
-    def refusing(path: Path) -> bytes:
-        if path.name == "shut.txt":
+    def refusing(found: Found) -> bytes:
+        if found.path.name == "shut.txt":
             raise PermissionError(13, "Permission denied")
-        return plain(path)
+        return plain(found)
 
-    monkeypatch.setattr(Path, "read_bytes", refusing)
+    monkeypatch.setattr(Found, "read", refusing)
     review = reviewed(dossier)
     (entry,) = unread_of(review, "shut.txt")
     assert (entry.reason, entry.detail) == ("cannot-open", "Permission denied")
