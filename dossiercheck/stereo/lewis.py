@@ -96,7 +96,14 @@ _RADII: Mapping[str, tuple[float, ...]] = {
     "I": (1.33, 1.29),
 }
 # Pairs of which the sum of radii is far from what crystals show (common practice).
-_CORRECTED = {"NO": (1.40, 1.21), "OP": (1.58, 1.48), "OS": (1.58, 1.44)}
+_CORRECTED: Mapping[str, tuple[float, ...]] = {
+    "NO": (1.40, 1.21),
+    "OP": (1.58, 1.48),
+    "OS": (1.58, 1.44),
+    "NP": (1.68, 1.57),
+    "ClO": (1.46, 1.42),
+    "FP": (1.60,),
+}
 # The longest double bond believed, in ångström: a pair that is longer has a hydrogen missing.
 # Set so that delocalised bonds pass (common practice).
 _LONGEST = {"CC": 1.46, "CN": 1.41, "CO": 1.32, "CS": 1.77, "NN": 1.36, "NO": 1.32, "OS": 1.54}
@@ -107,7 +114,9 @@ _MOST_STATES = 60_000
 def lewis(elements: Sequence[str], bonds: Sequence[Bond]) -> dict[int, Lewis]:
     """The cheapest arrangement for each total charge; none where the valences do not come out.
 
-    Raises `Refused` ("bonds-ambiguous") where there are too many to be gone through.
+    An oxygen that is bonded to nothing stands for water, its hydrogens not located; whether they
+    are in the substance's formula is for the caller to see. Raises `Refused` ("bonds-ambiguous")
+    where there are too many arrangements to be gone through.
     """
     degree = [0] * len(elements)
     for begin, end, _ in bonds:
@@ -160,6 +169,8 @@ def pair_of(elements: Sequence[str], bond: Bond) -> tuple[str, str]:
 
 @cache
 def _states(element: str, degree: int) -> tuple[tuple[int, int, float], ...]:
+    if element == "O" and not degree:
+        return ((0, 0, 0.0),)  # water whose hydrogens were not placed
     return tuple(
         (valence, charge, _CHARGE * cost)
         for valence, charge, cost in _STATES.get(element, ())

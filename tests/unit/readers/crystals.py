@@ -15,7 +15,10 @@ import numpy as np
 from rdkit import Chem
 from rdkit.Chem import AllChem, rdMolDescriptors
 
-from dossiercheck.stereo.perception import from_smiles
+from dossiercheck.model import Item
+from dossiercheck.stereo.perception import from_molblock, from_smiles
+from dossiercheck.stereo.structure import Structure
+from tests.unit.readers.reading import read, records, unread
 
 PADDING = 7.0  # ångström between molecules; far more than any contact
 
@@ -163,3 +166,43 @@ def crystal(smiles: str, symbol: str = "P 21 21 21", seed: int = 7, **tags: str)
     given = {"_chemical_formula_sum": formula_of(mol)}
     given |= {f"_{name}": value for name, value in tags.items()}
     return put_into(atoms_of(mol), symbol, tags=given)
+
+
+def beside(one: list[Atom], other: list[Atom]) -> list[Atom]:
+    reach = max(float(atom.position[0]) for atom in one) + 4.0
+    least = min(float(atom.position[0]) for atom in other)
+    for atom in other:
+        atom.position = atom.position + np.array([reach - least, 0.0, 0.0])
+    return [*one, *other]
+
+
+def items(made: Made | str) -> list[Item]:
+    text = made if isinstance(made, str) else made.text()
+    return read("a.cif", text.encode())
+
+
+def plain(structure: Structure) -> str:
+    """Canonical isomeric SMILES without explicit hydrogens."""
+    bare = Chem.RemoveHs(structure.mol)
+    bare.RemoveAllConformers()
+    return str(Chem.CanonSmiles(Chem.MolToSmiles(bare)))
+
+
+def molecule(made: Made | str) -> str:
+    """What the one block is read as."""
+    found = items(made)
+    (record,) = records(found)
+    assert record.molblock, unread(found)
+    return plain(from_molblock(record.molblock))
+
+
+def refusal(made: Made | str) -> str:
+    """Why the one block gave no molecule."""
+    found = items(made)
+    assert not any(record.molblock for record in records(found)), "a molecule was read"
+    (entry,) = unread(found)
+    return entry.reason
+
+
+def canonical(smiles: str) -> str:
+    return plain(from_smiles(smiles))
