@@ -90,6 +90,7 @@ def count(review: Review) -> Json:
         "substances_compared": compared,
         "substances_with_findings": len({f.substance for f in review.findings} - {""}),
         "findings": len(review.findings),
+        "findings_on_the_whole": sum(not finding.substance for finding in review.findings),
         "grades": grades,
         "unread": len(review.unread),
         "cells": states,

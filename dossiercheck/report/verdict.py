@@ -17,10 +17,10 @@ def _found(counts: Mapping[str, Any]) -> str:
     total = counts["findings"]
     if total:
         grades = [f"{number} {name}" for name, number in counts["grades"].items() if number]
-        # A finding may be of no substance: then it speaks of the dossier as a whole.
         about = counts["substances_with_findings"]
-        on = f" on {number_of(about, 'substance')}" if about else ""
-        return f"{number_of(total, 'finding')}{on}: {', '.join(grades)}."
+        on = [number_of(about, "substance")] if about else []
+        on += ["the dossier as a whole"] if counts["findings_on_the_whole"] else []
+        return f"{number_of(total, 'finding')} on {' and '.join(on)}: {', '.join(grades)}."
     if not counts["evidence"]:
         return "Nothing could be compared: no place of the dossier gave evidence."
     return "No discrepancy was found in what could be read and compared."

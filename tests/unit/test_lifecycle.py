@@ -175,7 +175,7 @@ def test_the_report_shows_findings_of_the_dossier_as_a_whole(tmp_path: Path) -> 
     made = document(pipeline.review([tmp_path], SETTINGS, BOOK))
     schema = json.loads((assets.templates() / "findings.schema.json").read_text("utf-8"))
     jsonschema.validate(made, schema)
-    assert made["verdict"].startswith("2 findings: 1 minor, 1 remark.")
+    assert made["verdict"].startswith("2 findings on the dossier as a whole: 1 minor, 1 remark.")
     assert made["counts"]["substances_with_findings"] == 0
     assert "The dossier as a whole" in render(made).decode()
     assert "MINOR     The dossier as a whole: No leaf leads to" in summary(made)

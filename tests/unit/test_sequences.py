@@ -10,8 +10,10 @@ import re
 from pathlib import Path
 
 import pytest
+from lxml import etree
 
 from dossiercheck import pipeline
+from dossiercheck.limits import parse_xml
 from dossiercheck.sequences import resolve, section_of
 from tests.unit.archived import zipped
 from tests.unit.sequence import (
@@ -67,6 +69,18 @@ def test_every_heading_of_the_dtd_has_a_section() -> None:
                 break
             number.append(word.upper())
         assert section_of(tag) == ".".join(number), tag
+
+
+@pytest.mark.skipif(not DTD.exists(), reason="the ICH DTD is not at hand")
+def test_the_indexes_of_these_tests_are_such_as_the_dtd_allows() -> None:
+    made = index(
+        leaf(NAME, TEXT),
+        leaf("m3/b.txt", TEXT, operation="replace", modified_file="../0000/index.xml#a"),
+        m1=leaf("m1/xx/xx-regional.xml", TEXT),
+    )
+    with DTD.open("rb") as stream:
+        dtd = etree.DTD(stream)
+    assert dtd.validate(parse_xml(made.encode(), doctype=True)), dtd.error_log
 
 
 def test_paths_are_names_and_nothing_else() -> None:

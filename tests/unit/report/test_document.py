@@ -77,6 +77,7 @@ def test_counts_are_those_of_the_sample() -> None:
         "substances_compared": 3,
         "substances_with_findings": 2,
         "findings": 6,
+        "findings_on_the_whole": 0,
         "grades": {"critical": 2, "major": 3, "minor": 0, "remark": 1},
         "unread": 3,
         "cells": {"agrees": 19, "differs": 1, "silent": 1, "undetermined": 1},
