@@ -163,7 +163,7 @@ def laid_out(smiles: str, seed: int = 0) -> str:
         sampleSeed=seed,
         permuteDeg4Nodes=bool(seed),
     )
-    return str(Chem.MolToMolBlock(mol))
+    return _v2000(mol)
 
 
 def in_space(smiles: str, seed: int = 1) -> str:
@@ -180,7 +180,14 @@ def in_space(smiles: str, seed: int = 1) -> str:
             break
     else:
         raise NotCarried("no coordinates were found")
-    return str(Chem.MolToMolBlock(mol))
+    return _v2000(mol)
+
+
+def _v2000(mol: Chem.Mol) -> str:
+    text = str(Chem.MolToMolBlock(mol))
+    if "V3000" in text:
+        raise NotCarried("a bond that a V2000 table cannot hold")
+    return text
 
 
 def _molecule(smiles: str) -> Chem.Mol:
