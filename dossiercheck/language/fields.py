@@ -12,6 +12,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
 from dossiercheck.language.labels import in_heading, is_label
+from dossiercheck.language.lists import parts, synonyms
 from dossiercheck.language.roles import Aside, Meaning, could_be, is_nothing, meaning_of, plain
 from dossiercheck.language.running import candidates
 from dossiercheck.model import Evidence, Passage, Place, Role, Unread
@@ -89,7 +90,7 @@ def starts_next(meaning: Meaning, heading: str, met: list[Met], gap: bool = Fals
     """
     if meaning not in (known for known, _ in met):
         return False
-    if meaning is Aside.IGNORED:
+    if meaning in (Aside.IGNORED, Aside.SYNONYMS):
         return False
     if meaning is Role.NAME:
         return gap or met[-1][0] is not Role.NAME
@@ -122,7 +123,12 @@ def value_evidence(
     """What the value at `start` to `end` of `text` says; spans count in `text`."""
     value = text[start:end]
     if meaning is Role.NAME:
-        yield from _name(text, start, end, place)
+        for first, last in parts(text, start, end):
+            yield from _name(text, first, last, place)
+        return
+    if meaning is Aside.SYNONYMS:
+        for span in synonyms(text, start, end):
+            yield Evidence("", Role.NAME, text[slice(*span)], replace(place, span=span))
         return
     trimmed = end
     if meaning in _TRIMMED:

@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
+from dataclasses import replace
 
+from dossiercheck.language.lists import parts, synonyms
 from dossiercheck.language.roles import (
     Aside,
     Meaning,
@@ -27,6 +29,7 @@ _ONE_LINE = (
     Role.SPACE_GROUP,
 )
 
+_LINES = "The field has several lines; whether they are one value is not certain."
 _OPEN = {"unknown", "not known", "not determined"}
 
 
@@ -48,10 +51,20 @@ def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evid
             # The number says nothing without its heading.
             text = f"{field.name}: {value}"
             yield Evidence("", Role.STEREO, text, field.place, group, label)
+        elif meaning is Aside.SYNONYMS:
+            for span in synonyms(field.value, 0, len(field.value)):
+                place = replace(field.place, span=span)
+                yield Evidence("", Role.NAME, field.value[slice(*span)], place, group, label)
+        elif meaning is Role.NAME and len(listed := parts(field.value, 0, len(field.value))) > 1:
+            for span in listed:
+                name, place = field.value[slice(*span)], replace(field.place, span=span)
+                if "\n" in name:
+                    yield Unread(place, "several-lines", _LINES, name[:2000])
+                else:
+                    yield Evidence("", meaning, name, place, group, label)
         elif isinstance(meaning, Role):
             if "\n" in value and (meaning is Role.NAME or meaning in _ONE_LINE):
-                detail = "The field has several lines; whether they are one value is not certain."
-                yield Unread(field.place, "several-lines", detail, value[:2000])
+                yield Unread(field.place, "several-lines", _LINES, value[:2000])
             else:
                 text = field.value if meaning is Role.MOLFILE else value
                 yield Evidence("", meaning, text, field.place, group, label)

@@ -25,6 +25,7 @@ class Aside(StrEnum):
     LABEL = "label"
     COUNT = "number of stereocentres"
     NAME_OR_LABEL = "name or label"
+    SYNONYMS = "synonyms"
     IGNORED = "ignore"
 
 
@@ -130,9 +131,10 @@ _SYNONYMS: Mapping[Meaning, str] = {
         abbreviation | reference standard | analyte | related substance | degradation product
         """,
     Aside.NAME_OR_LABEL: "name | names",
+    Aside.SYNONYMS: "synonym | synonyms | other names | other name | further names | synonym(s)",
     Aside.IGNORED: """
         exact mass | monoisotopic mass | monoisotopic molecular mass | nominal mass | accurate mass
-        structure | structural formula | chemical structure | synonyms | other names
+        structure | structural formula | chemical structure
         EC number | EINECS number | UNII
         """,
 }

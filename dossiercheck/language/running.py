@@ -11,6 +11,7 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
+from dossiercheck.language.inverted import begins
 from dossiercheck.language.words import ANIONS, CATIONS, PROSE_WORDS
 from dossiercheck.model import Place, Unread
 
@@ -21,7 +22,9 @@ _LOCANT = (
     rf"(?:\d+(?:[a-z]|[A-H](?=[RS][,)])|~\{{[a-z]\}})?|[α-ω]|N\d*)(?:[{PRIMES}\"]|\^\d+|[⁰¹²³⁴-⁹])*"
 )
 _LETTER = r"(?:RS|SR|[RSEZrsMP]|R[ap]|S[ap]|ξ)"
-_ONE = rf"(?:{_LOCANT}\s?)?(?:~\{{{_LETTER}\}}|{_LETTER}){_MARKS}"
+_GREEK = r"(?:\.(?:alpha|beta|gamma|delta|omega)\.|alpha|beta|gamma)"
+_LETTERS = rf"(?:~\{{{_LETTER}\}}{_MARKS}|\*{_LETTER}\*|_{_LETTER}_|{_LETTER}{_MARKS})"
+_ONE = rf"(?:(?:{_LOCANT}|(?i:{_GREEK})'*)\s?)?{_LETTERS}"
 _GROUP = re.compile(rf"[(\[]\s?{_ONE}(?:\s?,\s?{_ONE})*\s?[)\]]")
 _OLD_STYLE = re.compile(r"\[\d*[a-z]?[RS]\*?-$")  # [R-(R*,S*)]-, as CAS index names were printed
 _JOINTS = "\u200b\u2060\ufeff\u00ad"
@@ -50,7 +53,8 @@ _AFTER = re.compile(
     rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
     rf"|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
     rf"|\d[\d,{PRIMES}]*[{HYPHENS}](?:mono|di|tri|tetra)?oxide"
-    rf"|\d[{PRIMES}]*[{HYPHENS}](?:\((?:di|tri|tetra|penta)?hydrogen[ \u00a0][a-z]+ate\)|[a-z]*phosphate)"
+    rf"|\d[{PRIMES}]*[{HYPHENS}]\((?:di|tri|tetra|penta)?hydrogen[ \u00a0][a-z]+ate\)"
+    rf"|\d[{PRIMES}]*[{HYPHENS}][a-z]*phosphate"
     rf"|\(?\d+/\d+\)?|methyl|ethyl|propyl|isopropyl|butyl|benzyl)(?![A-Za-z])",
     re.IGNORECASE,
 )
@@ -98,7 +102,12 @@ def candidates(text: str) -> list[Candidate]:
     for group in _GROUP.finditer(text):
         if found and group.start() < found[-1].end:
             continue
-        candidate = _grow(text, group.start(), group.end(), found[-1].end if found else 0)
+        floor = found[-1].end if found else 0
+        inverted = begins(text, group.start(), group.end(), floor)
+        if inverted is not None:
+            found.append(Candidate(inverted, group.end() + 1))
+            continue
+        candidate = _grow(text, group.start(), group.end(), floor)
         if candidate:
             if found and _is_half(text, found[-1], candidate):
                 # An ester whose halves both have descriptors and whose joint is not understood:

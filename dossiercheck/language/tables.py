@@ -8,6 +8,7 @@ from dataclasses import dataclass, replace
 from dossiercheck.language.changes import touched
 from dossiercheck.language.fields import Met, starts_next
 from dossiercheck.language.labels import beside, in_heading, in_title
+from dossiercheck.language.lists import parts, synonyms
 from dossiercheck.language.roles import (
     Aside,
     Meaning,
@@ -290,13 +291,30 @@ def _said(
     if role is Aside.COUNT:
         # The number says nothing without its heading.
         yield Evidence("", Role.STEREO, f"{heading}: {text}", cell.place, group, label)
-    elif role is Role.NAME and "\n" in text:
-        detail = "The cell has several lines; whether they are one name or several is not certain."
-        yield Unread(cell.place, "several-lines", detail, text)
+    elif role is Aside.SYNONYMS:
+        for span in synonyms(text, 0, len(text)):
+            place = replace(cell.place, span=span)
+            yield Evidence("", Role.NAME, text[slice(*span)], place, group, label)
+    elif role is Role.NAME:
+        yield from _names(cell, group, label)
     elif isinstance(role, Role):
         yield Evidence("", role, text, cell.place, group, label)
     elif role is None:
         yield from _loose_names(cell)
+
+
+def _names(cell: Cell, group: str, label: str) -> Iterator[Evidence | Unread]:
+    """The name of a cell, or each name of a list."""
+    text = cell.text
+    listed = parts(text, 0, len(text))
+    for span in listed:
+        name = text[slice(*span)]
+        place = replace(cell.place, span=span) if len(listed) > 1 else cell.place
+        if "\n" in name:
+            detail = "The cell has several lines; whether they are one name is not certain."
+            yield Unread(place, "several-lines", detail, name)
+        else:
+            yield Evidence("", Role.NAME, name if len(listed) > 1 else text, place, group, label)
 
 
 def _from_cells(sheet: _Sheet) -> Iterator[Evidence | Unread]:
