@@ -7,10 +7,11 @@ descriptor from the tree as it hangs from that unit, the outermost sphere first.
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass, replace
 from itertools import groupby
 
 from dossiercheck.stereo.cip.molecule import LONE_PAIR
-from dossiercheck.stereo.cip.ranking import BEFORE, Key, Keys, Order, Property, by_constitution
+from dossiercheck.stereo.cip.ranking import BEFORE, FIXED, Key, Keys, Order, Property, Step, by_constitution
 from dossiercheck.stereo.cip.tree import MULTIPLE, REAL, Branch, Node, Tree
 from dossiercheck.stereo.cip.units import Marked
 
@@ -44,9 +45,15 @@ def by_everything(order: Order, hand: int = 1, favoured: int | None = None) -> O
         if not order.unique:
             order.split(lambda branch: _likeness(branch, keys, hand, "5"), "5")
     if favoured is not None and not order.unique:
-        first: Property = lambda branch: float(branch.node.atom == favoured)  # noqa: E731
-        order.split(lambda branch: keys.spheres(branch, first, BEFORE["6"], "6"), "6")
+        first = _favoured(favoured)
+        order.split(
+            lambda branch: keys.spheres(branch, first, BEFORE["6"], "6"), "6", favoured=favoured
+        )
     return order
+
+
+def _favoured(atom: int) -> Property:
+    return lambda branch: float(branch.node.atom == atom)
 
 
 def _pairs(branch: Branch, keys: Keys) -> list[Key]:
@@ -57,10 +64,66 @@ def _pairs(branch: Branch, keys: Keys) -> list[Key]:
 
 
 def _likeness(branch: Branch, keys: Keys, reference: int, rule: str) -> Key:
-    like: Property = lambda inner: float(  # noqa: E731
-        (_CLASS.get(inner.node.aux, 0) == reference) - (_CLASS.get(inner.node.aux, 0) == -reference)
+    return keys.spheres(branch, _like(reference), BEFORE[rule], f"{rule} {reference}")
+
+
+def _like(reference: int) -> Property:
+    """+1 for a descriptor like the reference, -1 for an unlike one, 0 for none."""
+    return lambda branch: float(_CLASS.get(branch.node.aux, 0) * reference)
+
+
+@dataclass(frozen=True, slots=True)
+class Criterion:
+    """What a rule compares at a node, in which order siblings stand, and against which reference
+    descriptor (Rule 4b)."""
+
+    value: Property
+    key: Callable[[Branch], object]
+    reference: str = ""
+
+
+def criteria(step: Step, high: Branch, low: Branch) -> tuple[Criterion, Criterion]:
+    """The criterion by which a step of the ranking parts its two branches, for each of them."""
+    keys = Keys(_PROPERTIES)
+    rule = step.rule
+    if rule == "1a":
+        return (Criterion(_number, lambda branch: keys.of(branch, "1a")),) * 2
+    before = BEFORE[rule]
+    if rule == "4b":
+        readings = []
+        for branch in (high, low):
+            found = [(_likeness(branch, keys, r, rule), r) for r in _references(branch, keys)]
+            readings.append(sorted(found, reverse=True))
+        pairs = zip(*readings, strict=False)
+        chosen = next((one[1], two[1]) for one, two in pairs if one[0] != two[0])
+        first, second = (_criterion(keys, _like(r), before, f"4b {r}") for r in chosen)
+        return replace(first, reference=_NAMED[chosen[0]]), replace(
+            second, reference=_NAMED[chosen[1]]
+        )
+    if rule == "5":
+        found = _criterion(keys, _like(1), before, "5 1")
+    elif rule == "6":
+        found = _criterion(keys, _favoured(step.favoured), before, "6")
+    else:
+        found = _criterion(keys, {**FIXED, **_PROPERTIES}[rule], before, rule)
+    return found, found
+
+
+_NAMED = {1: "R", -1: "S"}
+
+
+def _number(branch: Branch) -> float:
+    return branch.number
+
+
+def _criterion(keys: Keys, value: Property, before: tuple[str, ...], name: str) -> Criterion:
+    return Criterion(
+        value,
+        lambda branch: (
+            [keys.of(branch, rule) for rule in before],
+            keys.spheres(branch, value, before, name),
+        ),
     )
-    return keys.spheres(branch, like, BEFORE[rule], f"{rule} {reference}")
 
 
 def _references(branch: Branch, keys: Keys) -> tuple[int, ...]:

@@ -18,10 +18,12 @@ Property = Callable[[Branch], float]
 
 @dataclass(frozen=True, slots=True)
 class Step:
-    """Why one ligand ranks above the next: the rule, and the sphere counted from the root."""
+    """Why one ligand ranks above the next: the rule, the sphere counted from the root, and under
+    Rule 6 the atom that was favoured."""
 
     rule: str
     depth: int
+    favoured: int = -1
 
 
 @dataclass(slots=True)
@@ -42,7 +44,9 @@ class Order:
         """The ligands in order, where the ranks are unique."""
         return [branch for group in self.groups for branch in group]
 
-    def split(self, keyed: Callable[[Branch], object], rule: str, depth: int = 0) -> None:
+    def split(
+        self, keyed: Callable[[Branch], object], rule: str, depth: int = 0, favoured: int = -1
+    ) -> None:
         """Part each group by a key, higher first."""
         groups: list[list[Branch]] = []
         steps: list[Step] = []
@@ -61,7 +65,7 @@ class Order:
                     parts[-1].append(branch)
                 else:
                     parts.append([branch])
-                    steps.append(Step(rule, depth or first_difference(high, low)))
+                    steps.append(Step(rule, depth or first_difference(high, low), favoured))
             groups.extend(parts)
         self.groups, self.steps = groups, steps
 
@@ -160,7 +164,7 @@ class Keys:
 
     def __init__(self, properties: dict[str, Property]) -> None:
         """`properties` gives what each of the later rules compares at a node."""
-        self._properties = {**_FIXED, **properties}
+        self._properties = {**FIXED, **properties}
         self._known: dict[tuple[int, str], Key] = {}
 
     def of(self, branch: Branch, rule: str) -> Key:
@@ -172,7 +176,7 @@ class Keys:
 
     def spheres(self, branch: Branch, prop: Property, before: tuple[str, ...], name: str) -> Key:
         """The spheres of a property: siblings in order of the rules before, then of itself."""
-        known = branch.node.tree.keys if name in _FIXED else self._known
+        known = branch.node.tree.keys if name in FIXED else self._known
         label = (id(branch), name)
         found = known.get(label)
         if found is not None:
@@ -211,4 +215,4 @@ def _mass(branch: Branch) -> float:
     return node.tree.molecule.mass(node.atom)
 
 
-_FIXED: dict[str, Property] = {"1b": _nearness, "2": _mass}
+FIXED: dict[str, Property] = {"1b": _nearness, "2": _mass}
