@@ -263,6 +263,8 @@ def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
         kinds = mine.kind, theirs.kind
         if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds) or hand_open(mine):
             continue
+        if not any(view.kind == "centre" and not view.silent_side for view in pair.views):
+            continue  # each speaks of centres on which the other is silent
         assert case.reference is not None
         yield Observation(
             {"name_kind": kinds[1], "reference_kind": kinds[0]},

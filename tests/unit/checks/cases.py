@@ -505,6 +505,17 @@ CASES = [
     one("open centre of a racemate by name", name="rac-butan-2-ol", molfile=v2000("CC(O)CC")),
     Case("wavy bond", ({"molfile": wavy("C[C@H](O)CC")},), (), (WAVY,)),
     Case(
+        "one part racemic by name, the other drawn",
+        (
+            {
+                "name": "(+)-1-methylpiperidin-3-yl (±)-hydroxy(phenyl)acetate",
+                "molfile": v2000("CN1CCC[C@@H](OC(=O)C(O)c2ccccc2)C1"),
+            },
+        ),
+        # The open centre is the racemic one; of a part only, the drawing would have to say so.
+        (NAME_SILENT, DRAWING_SILENT),
+    ),
+    Case(
         "letters without locants in another order",
         (
             {
