@@ -1,9 +1,10 @@
 """Systematic names with stereodescriptors in running text.
 
-A candidate starts from a bracketed descriptor, `(2R,3S)`, `(E)`, `(2~{R})`, and grows over the
-characters that names are made of, brackets balanced. Over a space it grows only where names have
-one: esters, acids, salts, hydrates. Whether it *is* a name the name parser says; the shorter
-alternatives are there for it to try.
+A candidate starts from a bracketed descriptor, `(2R,3S)`, `(E)`, `(2~{R})`, or from "rac-",
+"rel-" or "(±)-" before a name without one, and grows over the characters that names are made of,
+brackets balanced. Over a space it grows only where names have one: esters, acids, salts,
+hydrates. Whether it *is* a name the name parser says; the shorter alternatives are there for it
+to try.
 """
 
 from __future__ import annotations
@@ -29,6 +30,12 @@ __all__ = ["HYPHENS", "PRIMES", "Candidate", "candidates", "is_substituent", "su
 _RINGS = re.compile(r"(?:bi|bis|ter|quater)(?:phenyl|naphthyl|pyridyl|thienyl|[a-z]{3,}yl)$", re.I)
 _PREFIX_END = re.compile(r"(?:amino|oxy|imino|thio|sulfanyl)[\])}]+$", re.IGNORECASE)
 
+# Before a name without descriptors these say what its configuration is.
+_ANCHOR = re.compile(
+    rf"{GROUP.pattern}|(?<![{HYPHENS}\w])(?:rac|rel)(?=[{HYPHENS}][\w(\[{{])"
+    rf"|\((?:±|\+/[{HYPHENS}])\)(?=[{HYPHENS}]\w)"
+)
+
 
 @dataclass(frozen=True, slots=True)
 class Candidate:
@@ -42,7 +49,7 @@ class Candidate:
 def candidates(text: str) -> list[Candidate]:
     """The candidates in a text, left to right, none overlapping another."""
     found: list[Candidate] = []
-    for group in GROUP.finditer(text):
+    for group in _ANCHOR.finditer(text):
         if found and group.start() < found[-1].end:
             continue
         floor = found[-1].end if found else 0

@@ -63,6 +63,12 @@ def names(text: str) -> list[str]:
         "N-HYDROXY-2(R)-[(PHENYL)AMINO]-3-METHYLBUTANAMIDE HYDROCHLORIDE",
         "(2S)-2-AMINO-3-PHENYLPROPANOIC ACID",
         "(2E)-BUT-2-ENAL",
+        "rac-1-phenylethan-1-amine",
+        "rac-tartaric acid",
+        "rel-2-aminocyclohexan-1-ol",
+        "(±)-1-phenylethan-1-ol",
+        "(+/-)-1-phenylethan-1-amine hydrochloride",
+        "rac-methyl 2-amino-3-phenylpropanoate",
         "(3AR,7AS)-OCTAHYDRO-1H-INDENE",
         "2'-deoxy-N-[(2S)-butan-2-yl]adenosine 5'-(dihydrogen phosphate)",
     ],
@@ -99,6 +105,10 @@ def test_names_are_found_whole(name: str, sentence: str) -> None:
         "the (2R,3S)-isomer",
         "(S)-acidic",
         "the amide-3(R) of Section-2(S)",
+        "rac-DX-101, (±)-DX-101 and the rac-mixture",
+        "the rac-form, (±)-enantiomers and (±)-isomer",
+        "a deviation of (±)-5 mg or (+/-)-0.5 percent",
+        "a rel-value and the rac-alcohol",
     ],
 )
 def test_prose_is_no_name(prose: str) -> None:
