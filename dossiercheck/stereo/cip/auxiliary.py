@@ -9,9 +9,19 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass, replace
 from itertools import groupby
+from typing import Any
 
 from dossiercheck.stereo.cip.molecule import LONE_PAIR
-from dossiercheck.stereo.cip.ranking import BEFORE, FIXED, Key, Keys, Order, Property, Step, by_constitution
+from dossiercheck.stereo.cip.ranking import (
+    BEFORE,
+    FIXED,
+    Key,
+    Keys,
+    Order,
+    Property,
+    Step,
+    by_constitution,
+)
 from dossiercheck.stereo.cip.tree import MULTIPLE, REAL, Branch, Node, Tree
 from dossiercheck.stereo.cip.units import Marked
 
@@ -20,6 +30,7 @@ _CLASS = {"R": 1, "M": 1, "z": 1, "S": -1, "P": -1, "e": -1}
 _GEOMETRY = {"Z": 2.0, "E": 1.0}
 _CHIRAL = {**dict.fromkeys("RSMPez", 2.0), **dict.fromkeys("rsmpEZ", 1.0)}
 _PSEUDO = {**dict.fromkeys("rm", 2.0), **dict.fromkeys("sp", 1.0)}
+
 
 def _of(table: dict[str, float]) -> Property:
     return lambda branch: table.get(branch.node.aux, 0.0)
@@ -78,7 +89,7 @@ class Criterion:
     descriptor (Rule 4b)."""
 
     value: Property
-    key: Callable[[Branch], object]
+    key: Callable[[Branch], Any]
     reference: str = ""
 
 
@@ -95,18 +106,18 @@ def criteria(step: Step, high: Branch, low: Branch) -> tuple[Criterion, Criterio
             found = [(_likeness(branch, keys, r, rule), r) for r in _references(branch, keys)]
             readings.append(sorted(found, reverse=True))
         pairs = zip(*readings, strict=False)
-        chosen = next((one[1], two[1]) for one, two in pairs if one[0] != two[0])
+        chosen = next((high_[1], low_[1]) for high_, low_ in pairs if high_[0] != low_[0])
         first, second = (_criterion(keys, _like(r), before, f"4b {r}") for r in chosen)
         return replace(first, reference=_NAMED[chosen[0]]), replace(
             second, reference=_NAMED[chosen[1]]
         )
     if rule == "5":
-        found = _criterion(keys, _like(1), before, "5 1")
+        one = _criterion(keys, _like(1), before, "5 1")
     elif rule == "6":
-        found = _criterion(keys, _favoured(step.favoured), before, "6")
+        one = _criterion(keys, _favoured(step.favoured), before, "6")
     else:
-        found = _criterion(keys, {**FIXED, **_PROPERTIES}[rule], before, rule)
-    return found, found
+        one = _criterion(keys, {**FIXED, **_PROPERTIES}[rule], before, rule)
+    return one, one
 
 
 _NAMED = {1: "R", -1: "S"}

@@ -43,13 +43,15 @@ class Drawn:
         marks: Sequence[tuple[int, int, str]],
         flat: bool,
     ) -> None:
-        """Sort the marks by the atom they speak of."""
+        """Sort the marks by the atom they speak of. `unclear` says, once `marked` has run, why a
+        unit that the drawing means to give a configuration has none."""
         self.molecule = molecule
         self.points = points
         self.flat = flat
         self.raised: dict[int, dict[int, float]] = {}
         self.vague: set[int] = set()
         self.crossed: set[frozenset[int]] = set()
+        self.unclear: dict[tuple[int, ...], str] = {}
         for begin, end, style in marks:
             if style in _RAISED:
                 self.raised.setdefault(begin, {})[end] = _RAISED[style]
@@ -66,9 +68,10 @@ class Drawn:
     def marked(self) -> Iterator[Marked]:
         """Every unit that the drawing gives a configuration, stereogenic or not."""
         for atom in sorted(self.raised) if self.flat else range(len(self.molecule.near)):
-            found = self._centre(atom)
-            if found:
-                yield found
+            if atom not in self.vague and can_be_centre(self.molecule, atom):
+                found = self._centre(atom)
+                if found:
+                    yield found
         for chain in double_chains(self.molecule):
             found = self._plane(chain)
             if found:
@@ -82,8 +85,6 @@ class Drawn:
     def _centre(self, atom: int) -> Marked | None:
         molecule = self.molecule
         around = list(molecule.near[atom])
-        if atom in self.vague or not can_be_centre(molecule, atom):
-            return None
         raised = self.raised.get(atom, {})
         vectors = [self.toward(atom, other, raised.get(other, 0.0)) for other in around]
         if len(around) == 4:
@@ -92,12 +93,18 @@ class Drawn:
         else:
             bridgehead = all(molecule.in_ring(atom, other) for other in around)
             if self.flat and self._reentrant(vectors, raised, around, bridgehead):
+                self.unclear[atom,] = "the wedge stands where it can be read in two ways"
                 return None
             size = dot(vectors[0], cross(vectors[1], vectors[2]))
             # The fourth ligand lies opposite the other three: seen from it they turn the other way.
             size = -size
             ligands = (HYDROGEN if molecule.hydrogens[atom] else LONE_PAIR, *around)
         if abs(size) < _LEAST_VOLUME:
+            self.unclear[atom,] = (
+                "the wedges contradict each other or cancel out"
+                if self.flat
+                else "the ligands lie almost in one plane"
+            )
             return None
         return Marked(CENTRE, (atom,), ligands, 1 if size > 0 else -1)
 
@@ -138,8 +145,10 @@ class Drawn:
         two = cross(along, self.toward(end, far[0]))
         length = dot(along, along) ** 0.5
         if min(dot(one, one), dot(two, two)) ** 0.5 < _LEAST_SINE * length:
+            self.unclear[begin, end] = "a ligand lies in line with the double bond"
             return None
         if not self._opposed(along, begin, near) or not self._opposed(along, end, far):
+            self.unclear[begin, end] = "both ligands of one end lie on the same side"
             return None
         return Marked(DOUBLE_BOND, chain, (*near, *far), 1 if dot(one, two) > 0 else -1)
 
@@ -189,9 +198,7 @@ class Drawn:
         """Whether a ring bond joins two other rings, as in a bridged biaryl: each end has a ring
         that the bond is not part of."""
         near = self.molecule.near
-        return all(
-            _ring_without(near, end, other) for end, other in (chain, chain[::-1])
-        )
+        return all(_ring_without(near, end, other) for end, other in (chain, chain[::-1]))
 
     def _axis(self, chain: tuple[int, ...]) -> Iterator[Marked]:
         begin, end = chain[0], chain[-1]
@@ -213,6 +220,8 @@ class Drawn:
             size = dot(along, cross(self.toward(begin, near[0]), self.toward(end, far[0])))
             if abs(size) >= _LEAST_SINE:
                 signs.add(1 if size > 0 else -1)
+        if len(signs) > 1:
+            self.unclear[begin, end] = "the wedges at the two ends contradict each other"
         if len(signs) == 1:
             yield Marked(AXIS, chain, (*near, *far), signs.pop())
 

@@ -8,11 +8,13 @@ from dataclasses import dataclass, field
 from dossiercheck.stereo.cip.auxiliary import by_everything, label_branches, ligand_branches
 from dossiercheck.stereo.cip.molecule import LONE_PAIR, Molecule
 from dossiercheck.stereo.cip.ranking import Order, by_constitution
+from dossiercheck.stereo.cip.source import Source
 from dossiercheck.stereo.cip.tree import Branch, TooLarge, Tree
 from dossiercheck.stereo.cip.units import CENTRE, DOUBLE_BOND, HELIX, Marked, parity
 
 # Nodes of one tree. About a second; a larger one is given up and its unit left undetermined.
 BUDGET = 200_000
+
 
 @dataclass(slots=True)
 class Ranked:
@@ -29,9 +31,25 @@ class Ranked:
     doubt: str = ""
 
 
-def rank_all(molecule: Molecule, marked: Sequence[Marked], budget: int = BUDGET) -> list[Ranked]:
-    """The descriptor of each unit, by Rules 1 and 2 where they suffice, else by all."""
-    return [_rank(molecule, unit, marked, budget) for unit in marked]
+def rank_all(source: Source, budget: int = BUDGET) -> list[Ranked]:
+    """The descriptor of each marked unit, by Rules 1 and 2 where they suffice, else by all.
+
+    Where the ranking rests on other units and one of them is unclear, so is the descriptor.
+    """
+    found = []
+    for unit in source.marked:
+        result = _rank(source.molecule, unit, source.marked, budget)
+        if source.unclear and not _rests_on_constitution(result):
+            result.descriptor = ""
+            result.doubt = "its ranking depends on a unit that is not clear"
+        found.append(result)
+    return found
+
+
+def _rests_on_constitution(result: Ranked) -> bool:
+    return _unique(result.orders) and all(
+        step.rule in ("1a", "1b", "2") for order in result.orders for step in order.steps
+    )
 
 
 def _rank(molecule: Molecule, unit: Marked, marked: Sequence[Marked], budget: int) -> Ranked:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
+from itertools import pairwise
 from math import atan2, pi
 
 from dossiercheck.stereo.cip.molecule import Molecule
@@ -60,7 +61,7 @@ def _turn(points: Sequence[Vector]) -> float:
     """The angle through which a path turns, in radians, counter-clockwise positive; 0 where it
     does not turn one way only."""
     turns = []
-    steps = [minus(two, one) for one, two in zip(points, points[1:], strict=False)]
-    for one, two in zip(steps, steps[1:], strict=False):
+    steps = [minus(two, one) for one, two in pairwise(points)]
+    for one, two in pairwise(steps):
         turns.append(atan2(one[0] * two[1] - one[1] * two[0], one[0] * two[0] + one[1] * two[1]))
     return sum(turns) if len({turn > 0 for turn in turns}) == 1 else 0.0

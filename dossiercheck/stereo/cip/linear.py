@@ -1,7 +1,7 @@
-"""Configurations as a SMILES writes them, read from the text itself.
+r"""Configurations as a SMILES writes them, read from the text itself.
 
 OpenSMILES specification: the chirality marks @ and @@ with their neighbours in written order, an
-implicit hydrogen or lone pair right after the atom before; / and \\ beside double bonds and
+implicit hydrogen or lone pair right after the atom before; / and \ beside double bonds and
 cumulenes; @ on the middle atom of an allene.
 """
 

@@ -19,9 +19,9 @@ def averaged(number: Sequence[int], near: Bonds, ring: frozenset[tuple[int, int]
         possible = [mate]
         for other in near[atom]:
             bond = (min(atom, other), max(atom, other))
-            if other != mate and bond in ring and other in partner:
-                if _can_shift(atom, other, partner, near, ring):
-                    possible.append(other)
+            movable = other != mate and bond in ring and other in partner
+            if movable and _can_shift(atom, other, partner, near, ring):
+                possible.append(other)
         if len(possible) > 1:
             means[atom] = sum(number[other] for other in possible) / len(possible)
     return means

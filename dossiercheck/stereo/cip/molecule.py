@@ -81,9 +81,7 @@ def molecule_of(mol: Chem.Mol) -> Molecule:
     number = [atom.GetAtomicNum() for atom in atoms]
     near: list[dict[int, int]] = [{} for _ in atoms]
     ring = set()
-    crowded = {
-        atom.GetIdx() for atom in atoms if atom.GetAtomicNum() > 13 and atom.GetDegree() > 2
-    }
+    crowded = {atom.GetIdx() for atom in atoms if atom.GetAtomicNum() > 13 and atom.GetDegree() > 2}
     for begin, end, kind, cyclic in bonds:
         order = kekule[begin, end] if kekule else _ORDERS.get(kind, 1)
         if begin in crowded or end in crowded:

@@ -9,6 +9,8 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
+from functools import partial
+from itertools import pairwise
 
 from dossiercheck.stereo.cip.tree import MULTIPLE, REAL, Branch, Level
 
@@ -59,7 +61,7 @@ class Order:
             keys = {id(branch): keyed(branch) for branch in group}
             ordered = sorted(group, key=lambda branch: keys[id(branch)], reverse=True)  # type: ignore[arg-type,return-value]
             parts = [[ordered[0]]]
-            for above, branch in zip(ordered, ordered[1:], strict=False):
+            for above, branch in pairwise(ordered):
                 high, low = keys[id(above)], keys[id(branch)]
                 if high == low:
                     parts[-1].append(branch)
@@ -111,12 +113,12 @@ def _by_number(order: Order) -> None:
             extend(branch, depth)
         if all(len(branch.levels) <= depth for branch in tied):
             return
-        order.split(
-            lambda branch: branch.levels[depth] if len(branch.levels) > depth else (),
-            "1a",
-            depth + 1,
-        )
+        order.split(partial(_sphere, depth), "1a", depth + 1)
         depth += 1
+
+
+def _sphere(depth: int, branch: Branch) -> Level:
+    return branch.levels[depth] if len(branch.levels) > depth else ()
 
 
 def extend(branch: Branch, depth: int) -> None:
@@ -200,7 +202,7 @@ class Keys:
 
 
 def _nearness(branch: Branch) -> float:
-    """Rule 1b: of two duplicates in a sphere the one whose root distance is smaller ranks higher."""
+    """Rule 1b: of two duplicates the one whose root distance is smaller ranks higher."""
     node = branch.node
     if branch is not node or node.kind == REAL:
         return -1000.0

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+from dataclasses import dataclass
+
 from dossiercheck.stereo.cip.drawn import Drawn
 from dossiercheck.stereo.cip.linear import marked_in_text
 from dossiercheck.stereo.cip.molecule import Molecule, molecule_of
@@ -10,15 +13,25 @@ from dossiercheck.stereo.cip.vectors import Vector
 from dossiercheck.stereo.structure import Structure
 
 
-def source_of(structure: Structure) -> tuple[Molecule, list[Marked]]:
+@dataclass(frozen=True, slots=True)
+class Source:
+    """What a structure says: atoms and bonds, the units it marks, and by its end atoms each unit
+    it means to mark and does not, with the reason."""
+
+    molecule: Molecule
+    marked: tuple[Marked, ...]
+    unclear: Mapping[tuple[int, ...], str]
+
+
+def source_of(structure: Structure) -> Source:
     """Atoms and bonds from the structure; configurations from its text or its coordinates, read
     anew and not from the marks that the library made of them."""
     molecule = molecule_of(structure.mol)
     if not structure.dimension:
-        return molecule, list(marked_in_text(structure.text, molecule))
+        return Source(molecule, tuple(marked_in_text(structure.text, molecule)), {})
     marks = [(mark.begin, mark.end, mark.style) for mark in structure.marks]
     drawn = Drawn(molecule, points_of(structure), marks, structure.dimension == 2)
-    return molecule, list(drawn.marked())
+    return Source(molecule, tuple(drawn.marked()), drawn.unclear)
 
 
 def points_of(structure: Structure) -> list[Vector]:

@@ -45,6 +45,9 @@ class Node(Branch):
     the node's own.
     """
 
+    sphere: int
+    path: int
+
     __slots__ = ("atom", "aux", "kind", "nearness", "parent", "path", "sphere", "tree", "upward")
 
     def __init__(
@@ -160,7 +163,8 @@ class Tree:
         found = [self.root]
         for node in found:
             found.extend(
-                kid for kid in node.below() if isinstance(kid, Node) and kid.kind == REAL
-                and kid.atom >= 0
+                kid
+                for kid in node.below()
+                if isinstance(kid, Node) and kid.kind == REAL and kid.atom >= 0
             )
         return found

@@ -40,6 +40,8 @@ def parity(order: Sequence[int], of: Sequence[int]) -> int:
     """+1 where `order` is an even permutation of `of`, -1 where it is odd."""
     places = [of.index(item) for item in order]
     odd = sum(
-        places[one] > places[two] for one in range(len(places)) for two in range(one + 1, len(places))
+        places[one] > places[two]
+        for one in range(len(places))
+        for two in range(one + 1, len(places))
     )
     return -1 if odd % 2 else 1

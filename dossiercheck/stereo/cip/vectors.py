@@ -8,7 +8,7 @@ Vector = tuple[float, float, float]
 
 
 def minus(one: Vector, two: Vector) -> Vector:
-    """one - two."""
+    """One - two."""
     return one[0] - two[0], one[1] - two[1], one[2] - two[2]
 
 
