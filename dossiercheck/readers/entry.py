@@ -14,7 +14,7 @@ from dossiercheck.model import Field, Item, Place, Record, Unread
 from dossiercheck.readers.molfile import fault_of
 
 NAME = "systematic name"
-OTHER_NAME = "other name"
+OTHER_NAME = "name of another type"
 SMILES = "SMILES"
 INCHI = "InChI"
 INCHIKEY = "InChIKey"

@@ -18,7 +18,7 @@ from dossiercheck.model import Field, Item, Place, Unread
 from dossiercheck.readers import entry
 from dossiercheck.stereo.formula import parse_formula
 
-_OTHERS = {"of": "official name", "cn": "other name", "bn": "brand name", "cd": "code name"}
+_OTHERS = {"of": "official name", "cn": entry.OTHER_NAME, "bn": "brand name", "cd": "code name"}
 _VALUES = (
     ("smiles", entry.SMILES),
     ("inchi", entry.INCHI),

@@ -111,7 +111,7 @@ def test_every_value_stands_under_its_heading(form: Form) -> None:
     assert fields(record) == {
         "systematic name": ["(2S)-2-hydroxypropanoic acid"],
         "brand name": ["Lavoplex"],
-        "other name": ["Lavorin", "lavorine"],
+        "name of another type": ["Lavorin", "lavorine"],
         "SMILES": ["C[C@H](O)C(=O)O"],
         "InChI": ["InChI=1S/C3H6O3/c1-2(4)3(5)6/h2,4H,1H3,(H,5,6)/t2-/m0/s1"],
         "molecular formula": ["C3H6O3"],

@@ -10,7 +10,9 @@ from typing import Any
 
 import pytest
 
-from dossiercheck.model import Record
+from dossiercheck.language.roles import Aside, meaning_of
+from dossiercheck.model import Record, Role
+from dossiercheck.readers import entry
 from tests.unit.readers.reading import read, reasons, records, unread
 
 LACTIC = """
@@ -113,9 +115,9 @@ def test_a_value_is_found_again_by_its_path() -> None:
 
 
 def test_a_systematic_name_in_another_language_is_unread() -> None:
-    (entry,) = unread(read("a.json", json.dumps(WHOLE).encode()))
-    assert (entry.reason, entry.text) == ("name-language", "acide (2S)-2-hydroxypropanoïque")
-    assert entry.place.path == "$.names[2].name"
+    (found,) = unread(read("a.json", json.dumps(WHOLE).encode()))
+    assert (found.reason, found.text) == ("name-language", "acide (2S)-2-hydroxypropanoïque")
+    assert found.place.path == "$.names[2].name"
 
 
 @pytest.mark.parametrize(
@@ -228,3 +230,32 @@ def test_all_public_records_are_read() -> None:
     assert reasons(items) == []
     assert len(records(items)) == 780
     assert all(record.molblock for record in records(items))
+
+
+@pytest.mark.parametrize(
+    "heading",
+    [entry.OTHER_NAME, "official name", "brand name", "code name", "scientific name",
+     "moiety formula", "CAS number, superseded"],
+)  # fmt: skip
+def test_what_is_no_evidence_stands_under_headings_that_are_none(heading: str) -> None:
+    assert meaning_of(heading) is None
+
+
+@pytest.mark.parametrize(
+    ("heading", "meaning"),
+    [
+        (entry.NAME, Role.NAME),
+        (entry.SMILES, Role.SMILES),
+        (entry.INCHI, Role.INCHI),
+        (entry.INCHIKEY, Role.INCHIKEY),
+        (entry.FORMULA, Role.FORMULA),
+        (entry.MASS, Role.MASS),
+        (entry.REGISTRY, Role.REGISTRY),
+        (entry.STEREO, Role.STEREO),
+        (entry.ROTATION, Role.STEREO),
+        (entry.MOLFILE, Role.MOLFILE),
+        (entry.CENTRES, Aside.COUNT),
+    ],
+)
+def test_headings_mean_what_they_are_chosen_for(heading: str, meaning: object) -> None:
+    assert meaning_of(heading) is meaning
