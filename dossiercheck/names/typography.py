@@ -14,7 +14,7 @@ from __future__ import annotations
 import re
 import unicodedata
 from collections.abc import Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache
 
 _PRIMES = {
@@ -98,6 +98,8 @@ _PLAIN = re.compile(
 # The parser reads greek locants in small letters only.
 _GREEK_LOCANT = re.compile(r"(?<![A-Za-z])(?:ALPHA|BETA|GAMMA|DELTA|OMEGA)(?='*[RS](?![a-z]))")
 # What naming programs put after a name of theirs; no part of it.
+# A mark of a footnote, raised behind the name's last letter.
+_NOTE = re.compile(r"(?<=[A-Za-z)\]])(?:[⁰¹²³⁴-⁹]+|[ᵃ-ᶻʰⁱ])(?:[,⸴](?:[⁰¹²³⁴-⁹]+|[ᵃ-ᶻʰⁱ]))*\s*$")
 _REMARK = re.compile(r" ?\((?:non-)?preferred(?: IUPAC)? name\)$", re.IGNORECASE)
 _UNUSUAL = re.compile(r"\.[a-z+]+[/-]*\.|preferred|ALPHA|BETA|GAMMA|DELTA|OMEGA", re.IGNORECASE)
 _BREAKS = "\r\n\v\f\x85\u2028\u2029"
@@ -136,6 +138,9 @@ def clean(text: str) -> Cleaned:
     """
     if _PLAIN.fullmatch(text) and not _UNUSUAL.search(text):
         return Cleaned(text, tuple(range(len(text))), text)
+    note = _NOTE.search(text)
+    if note:
+        return replace(clean(text[: note.start()]), original=text)
     uncurled = _uncurled(text) if "~{" in text else None
     if uncurled:
         return uncurled
@@ -277,10 +282,11 @@ def _mapped(character: str) -> str:
 def _plain(text: str, place: int) -> str:
     character = text[place]
     if character == "\u00ad":
-        # A soft hyphen inside a word only marks where a line may break; beside a digit or a
-        # bracket it is a hyphen in the wrong code.
-        sides = text[place - 1 : place] + text[place + 1 : place + 2]
-        return "" if sides.isalpha() and len(sides) == 2 else "-"
+        # A soft hyphen inside a word, or beside a hyphen or comma, only marks where a line may
+        # break; beside a digit or a bracket it is a hyphen in the wrong code.
+        sides = text[max(place - 1, 0) : place] + text[place + 1 : place + 2]
+        marks = any(side == "," or _mapped(side) == "-" for side in sides)
+        return "" if marks or (sides.isalpha() and len(sides) == 2) else "-"
     if " " <= character <= "~" and character not in "\"'`":
         return character
     return _mapped(character)
