@@ -25,7 +25,7 @@ from dossiercheck.language.words import ANIONS, CATIONS
 # P-65.1 acids; salt and solvate words are common practice).
 _AFTER = re.compile(
     rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
-    rf"|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
+    rf"|S-acid|O-acid|diamide|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
     rf"|\d[\d,{PRIMES}]*[{HYPHENS}](?:mono|di|tri|tetra)?oxide"
     rf"|\d[{PRIMES}]*[{HYPHENS}]\((?:di|tri|tetra|penta)?hydrogen[ \u00a0][a-z]+ate\)"
     rf"|\d[{PRIMES}]*[{HYPHENS}][a-z]*phosphate"
@@ -33,7 +33,7 @@ _AFTER = re.compile(
     re.IGNORECASE,
 )
 # A group that needs another word to be a compound: an ester's alkyl, or an acyl.
-GROUP_END = re.compile(r"yl(?:idene|idyne|ene)?[\])}]*$", re.IGNORECASE)
+GROUP_END = re.compile(r"(?:yl(?:idene|idyne|ene)?|phosphono)[\])}]*$", re.IGNORECASE)
 _HYDROGEN = re.compile(rf"(?:di|tri|tetra|penta)?hydrogen[{' '}\u00a0]", re.IGNORECASE)
 _ANION_WORD = re.compile(r"[a-z]{3,}(?:ate|ite|ide)", re.IGNORECASE)
 # Words of prose that end as anions do.
@@ -45,7 +45,10 @@ _NO_ANION = re.compile(
     re.IGNORECASE,
 )
 _ANION_END = re.compile(r"(?:ate|ite|ide)[\])}]*$", re.IGNORECASE)
-_ALKYL = re.compile(rf"(?:[^\s]*yl[\])}}]*|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
+_OF_ACID = re.compile(
+    rf"[(\[{{].*[)\]}}][{HYPHENS}]?(?:amide|anilide|hydrazide|ester)", re.IGNORECASE
+)
+_ALKYL = re.compile(rf"(?:phosphono|[^\s]*yl[\])}}]*|{CATIONS}|hydrogen|N-oxide)$", re.IGNORECASE)
 _ACYL_END = re.compile(r"(?:ate|ite|ide|amate)(?:\W|$)|carboxylate|oate", re.IGNORECASE)
 
 
@@ -58,7 +61,7 @@ def rightwards(text: str, left: int, right: int) -> list[int]:
         core = text[left:right]
         if word and _goes_with(core, word[0]):
             right = word.end()
-        elif following := _second_part(text, at, core):
+        elif following := _second_part(text, at, core) or _amide(text, at, core):
             right = following
         else:
             break
@@ -68,7 +71,7 @@ def rightwards(text: str, left: int, right: int) -> list[int]:
 
 def _goes_with(core: str, word: str) -> bool:
     word, core = word.lower(), core.lower()
-    if word == "acid":
+    if word in ("acid", "s-acid", "o-acid", "diamide"):
         return bool(ACID_END.search(core))
     if word.endswith("yl"):
         return bool(re.search(r"(?:acid|ate|oxide)$", core))
@@ -122,10 +125,31 @@ def _anion(text: str, at: int) -> int | None:
     return None
 
 
+def _amide(text: str, at: int, core: str) -> int | None:
+    """End of the "[…]amide" that follows an acid's name."""
+    if not core.lower().endswith("acid") or at >= len(text):
+        return None
+    token = token_around(text, at, at + 1, at)
+    return token[1] if token and token[0] == at and of_acid(text[slice(*token)]) else None
+
+
+def of_acid(name: str) -> bool:
+    """True for the second half of "…carboxylic acid [(1R)-1-phenylethyl]amide"."""
+    return _OF_ACID.fullmatch(name) is not None and is_open(name[: len(name) // 2])
+
+
 def leftwards(text: str, left: int, rights: list[int], floor: int) -> list[int]:
     """Starts of the name, leftmost first: words before an ester or a salt."""
     starts = [left]
     name = text[left : rights[0]]
+    if of_acid(name):
+        acid = re.search(r"([^\s;:“”\"]+)[ \u00a0]acid[ \u00a0]$", text[floor:left], re.IGNORECASE)
+        if acid:
+            begin = floor + acid.start(1)
+            while text[begin] in "([{" and is_open(acid[1][begin - floor - acid.start(1) :]):
+                begin += 1
+            return [begin]
+        return starts
     if not (_ACYL_END.search(name) or re.search(r"(?i)(?:acid|oxide|ether|ketone)$", name)):
         return starts
     while left > floor and text[left - 1] in SPACE:

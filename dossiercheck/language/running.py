@@ -13,7 +13,7 @@ import re
 from dataclasses import dataclass
 
 from dossiercheck.language.inverted import begins
-from dossiercheck.language.joints import GROUP_END, leftwards, rightwards
+from dossiercheck.language.joints import GROUP_END, leftwards, of_acid, rightwards
 from dossiercheck.language.stretch import (
     GROUP,
     HYPHENS,
@@ -72,7 +72,7 @@ def is_substituent(name: str) -> bool:
 
     Two like rings joined, as in "1,1'-binaphthyl", end in the same way and are compounds.
     """
-    return bool(GROUP_END.search(name)) and not _RINGS.search(name)
+    return of_acid(name) or bool(GROUP_END.search(name) and not _RINGS.search(name))
 
 
 def substituent(place: Place, text: str) -> Unread:

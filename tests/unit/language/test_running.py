@@ -63,6 +63,10 @@ def names(text: str) -> list[str]:
         "N-HYDROXY-2(R)-[(PHENYL)AMINO]-3-METHYLBUTANAMIDE HYDROCHLORIDE",
         "(2S)-2-AMINO-3-PHENYLPROPANOIC ACID",
         "(2E)-BUT-2-ENAL",
+        "pyridine-3-carboxylic acid [(1R)-1-phenylethyl]amide",
+        "(2S)-pyrrolidine-2-carboxylic acid ((1R)-1-phenylethyl)-amide",
+        "(2S)-2-aminobutanethioic S-acid",
+        "phosphono [(2S)-butan-2-yl] hydrogen phosphate",
         "rac-1-phenylethan-1-amine",
         "rac-tartaric acid",
         "rel-2-aminocyclohexan-1-ol",
@@ -231,6 +235,7 @@ def test_a_name_at_the_end_of_a_line_before_plain_words_is_read(following: str) 
         ("the (1R)-1-phenylethyl precipitate is", "(1R)-1-phenylethyl"),
         ("a (2S)-butan-2-yl group and", "(2S)-butan-2-yl"),
         ("(1R)-1-phenylethyl separates inside", "(1R)-1-phenylethyl"),
+        ("the [(1R)-1-phenylethyl]amide of it", "[(1R)-1-phenylethyl]amide"),
     ],
 )
 def test_the_name_of_a_group_is_no_substance(text: str, found: str) -> None:
