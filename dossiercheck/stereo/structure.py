@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from functools import cached_property
+from typing import Any
 
 from rdkit import Chem
 from rdkit.Chem import rdCIPLabeler, rdMolDescriptors, rdqueries
@@ -75,7 +76,8 @@ class Structure:
     """A molecule with its marks. Atom numbers everywhere are the source's own, 0-based.
 
     `dimension` is 0 (no coordinates), 2 or 3; `locants` is a label for each atom where a name
-    gave them; `doubt` says why descriptors cannot be trusted, "" where they can.
+    gave them; `doubt` says why descriptors cannot be trusted, "" where they can; `described` is
+    what `descriptors.confirmed` keeps.
     """
 
     mol: Chem.Mol
@@ -85,6 +87,7 @@ class Structure:
     marks: tuple[Mark, ...] = ()
     locants: tuple[str, ...] = ()
     doubt: str = field(default="", init=False)
+    described: dict[tuple[int, ...], Any] | None = field(default=None, init=False)
 
     @cached_property
     def possible(self) -> tuple[tuple[str, tuple[int, ...], tuple[int, int]], ...]:

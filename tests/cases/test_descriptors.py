@@ -4,18 +4,18 @@ from __future__ import annotations
 
 import tomllib
 from collections import Counter
-from operator import attrgetter
 from pathlib import Path
 from typing import Any
 
 import pytest
 
+from dossiercheck.stereo.descriptors import own_units
 from dossiercheck.stereo.perception import from_molblock, from_smiles
 from tests.cases.drawn import molblock
 from tests.cases.marks import letter
 
 # Structure → units with `atoms` (0-based) and `descriptor`; whether it must know every case.
-compute, complete = attrgetter("units"), False
+compute, complete = own_units, True
 
 CASES = tomllib.loads((Path(__file__).parent / "descriptors.toml").read_text("utf-8"))["case"]
 KEYS = {"name", "labels", "rule", "source", "basis", "why"}

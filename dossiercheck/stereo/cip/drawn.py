@@ -158,7 +158,7 @@ class Drawn:
         hydrogens = self.molecule.hydrogens[atom]
         if len(outer) == 2 and not hydrogens and not _twins(self.molecule, outer):
             return outer[0], outer[1]
-        if len(outer) == 1:
+        if len(outer) == 1 and hydrogens <= 1:
             if hydrogens == 1:
                 return outer[0], HYDROGEN
             if hydrogens == 0 and self.molecule.number[atom] in (7, 15, 33):
@@ -185,7 +185,11 @@ class Drawn:
                 seen.add(chain)
                 yield from self._axis(chain)
         for atom in sorted(self.raised):
-            if atom not in wound and is_trigonal(self.molecule, atom):
+            if (
+                atom not in wound
+                and is_trigonal(self.molecule, atom)
+                and not can_be_centre(self.molecule, atom)
+            ):
                 for other, order in self.molecule.near[atom].items():
                     if order == 1 and other not in self.raised[atom]:
                         chain = (min(atom, other), max(atom, other))
@@ -291,9 +295,20 @@ def _way_round(molecule: Molecule, atom: int, start: int, goal: int) -> list[int
 
 
 def is_trigonal(molecule: Molecule, atom: int) -> bool:
-    """Three neighbours and a double bond to one of them."""
+    """Three neighbours and a double bond to one of them; or a nitrogen whose lone pair is part of
+    such a system next to it."""
     near = molecule.near[atom]
-    return len(near) == 3 and sorted(near.values()) == [1, 1, 2]
+    if len(near) != 3:
+        return False
+    orders = sorted(near.values())
+    if orders == [1, 1, 2]:
+        return True
+    return (
+        orders == [1, 1, 1]
+        and molecule.number[atom] == 7
+        and molecule.charge[atom] == 0
+        and any(2 in molecule.near[other].values() for other in near)
+    )
 
 
 def _ring_without(near: Sequence[Mapping[int, int]], atom: int, barred: int) -> bool:

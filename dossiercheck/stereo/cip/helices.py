@@ -11,7 +11,7 @@ from dossiercheck.stereo.cip.units import HELIX, Marked
 from dossiercheck.stereo.cip.vectors import Vector, minus
 
 # The inner rim of a helix turns through more than this on its way from end to end.
-_LEAST_TURN = 1.4 * pi
+_LEAST_TURN = 1.2 * pi
 
 
 def helices(

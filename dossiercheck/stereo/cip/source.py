@@ -29,9 +29,14 @@ def source_of(structure: Structure) -> Source:
     molecule = molecule_of(structure.mol)
     if not structure.dimension:
         return Source(molecule, tuple(marked_in_text(structure.text, molecule)), {})
-    marks = [(mark.begin, mark.end, mark.style) for mark in structure.marks]
-    drawn = Drawn(molecule, points_of(structure), marks, structure.dimension == 2)
+    drawn = drawn_of(structure, molecule)
     return Source(molecule, tuple(drawn.marked()), drawn.unclear)
+
+
+def drawn_of(structure: Structure, molecule: Molecule) -> Drawn:
+    """The structure's coordinates and wedges."""
+    marks = [(mark.begin, mark.end, mark.style) for mark in structure.marks]
+    return Drawn(molecule, points_of(structure), marks, structure.dimension == 2)
 
 
 def points_of(structure: Structure) -> list[Vector]:

@@ -1,0 +1,120 @@
+"""Every descriptor computed twice: by the engine, which can say why, and by the library.
+
+A descriptor is certain where both give it. Where they differ, or one of them gives none (the
+library knows no axes, helices or cumulenes; either may give up), both are shown and nothing may
+rest on it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from dossiercheck.stereo.cip.derivation import Derivation, derive
+from dossiercheck.stereo.cip.drawn import Drawn
+from dossiercheck.stereo.cip.engine import Ranked, rank_all
+from dossiercheck.stereo.cip.readoff import read_off
+from dossiercheck.stereo.cip.source import Source, drawn_of, source_of
+from dossiercheck.stereo.structure import Structure, Unit
+
+
+@dataclass(frozen=True, slots=True)
+class Descriptor:
+    """One unit as both computations have it.
+
+    `atoms` are 0-based: one for a centre, the two ends for another unit. `ours` and `library` are
+    "" where that computation gives no letter; `note` says why a descriptor is not certain.
+    """
+
+    kind: str
+    atoms: tuple[int, ...]
+    ours: str
+    library: str
+    note: str = ""
+    derivation: Derivation | None = None
+    reading: tuple[str, ...] = ()
+
+    @property
+    def certain(self) -> bool:
+        """Whether both computations give the same letter."""
+        return bool(self.ours) and self.ours == self.library
+
+    @property
+    def descriptor(self) -> str:
+        """The letter where it is certain, else ""."""
+        return self.ours if self.certain else ""
+
+
+def descriptors(structure: Structure) -> tuple[Descriptor, ...]:
+    """Every unit to which either computation gives a letter or a doubt, by atom, with its
+    derivation."""
+    source = source_of(structure)
+    drawn = drawn_of(structure, source.molecule) if structure.dimension else None
+    library = {tuple(sorted(unit.atoms)): unit for unit in structure.units}
+    found = [
+        _joined(source, ranked, library, drawn, structure.doubt)
+        for ranked in rank_all(source)
+        if ranked.descriptor or ranked.doubt or _key(ranked.unit.ends) in library
+    ]
+    seen = {_key(one.atoms) for one in found}
+    for atoms, unit in library.items():
+        if atoms not in seen:
+            seen.add(atoms)
+            note = source.unclear.get(unit.atoms) or source.unclear.get(unit.atoms[::-1])
+            found.append(
+                Descriptor(
+                    unit.kind,
+                    unit.atoms,
+                    "",
+                    unit.descriptor,
+                    note or "the engine finds no stereogenic unit here",
+                )
+            )
+    for atoms, why in source.unclear.items():
+        if _key(atoms) not in seen and len(atoms) == 1 and structure.dimension == 2:
+            found.append(Descriptor("centre", atoms, "", "", why))
+    return tuple(sorted(found, key=lambda one: (len(one.atoms), one.atoms)))
+
+
+def own_units(structure: Structure) -> tuple[Unit, ...]:
+    """The units with a letter by the engine alone, without derivations."""
+    return tuple(
+        Unit(ranked.unit.kind, ranked.unit.ends, ranked.descriptor)
+        for ranked in rank_all(source_of(structure))
+        if ranked.descriptor
+    )
+
+
+def confirmed(structure: Structure, atoms: Iterable[int]) -> Descriptor | None:
+    """The unit at these atoms (0-based) as both computations have it, None where neither sees
+    one; the derivations are worked out once a structure."""
+    kept = structure.described
+    if kept is None:
+        kept = structure.described = {_key(one.atoms): one for one in descriptors(structure)}
+    return kept.get(_key(atoms))
+
+
+def _key(atoms: Iterable[int]) -> tuple[int, ...]:
+    return tuple(sorted(atoms))
+
+
+def _joined(
+    source: Source,
+    ranked: Ranked,
+    library: dict[tuple[int, ...], Unit],
+    drawn: Drawn | None,
+    given_up: str,
+) -> Descriptor:
+    other = library.get(_key(ranked.unit.ends))
+    letter = other.descriptor if other else ""
+    derivation = derive(source.molecule, ranked) if ranked.descriptor else None
+    reading = read_off(source.molecule, ranked, derivation, drawn) if derivation is not None else ()
+    note = ranked.doubt
+    if not note and ranked.descriptor != letter:
+        if letter:
+            note = "the two computations differ"
+        else:
+            note = given_up or "the structure library gives no descriptor here"
+    return Descriptor(
+        ranked.unit.kind, ranked.unit.ends, ranked.descriptor, letter, note, derivation, reading
+    )
