@@ -12,7 +12,7 @@ from collections.abc import Iterator
 
 from lxml import etree
 
-from dossiercheck.limits import DEFAULT, Refused, decode
+from dossiercheck.limits import Refused, decode
 from dossiercheck.model import Item, Source, Unread
 from dossiercheck.readers.content import guarded, whole
 from dossiercheck.readers.htmlpage import Page, tag_of
@@ -20,6 +20,7 @@ from dossiercheck.readers.htmlstyle import read_sheets
 
 SUFFIXES = frozenset({".html", ".htm", ".xhtml"})
 
+LONGEST = 10_000_000  # characters: the parser needs some 50 times as much memory
 XHTML = "http://www.w3.org/1999/xhtml"
 _DECLARED = re.compile(
     rb"""(?:<meta[^>]{0,300}?charset\s*=\s*["']?\s*|<\?xml[^>]{0,99}?encoding\s*=\s*["'])"""
@@ -38,7 +39,7 @@ _ENCODINGS = re.compile(
 def read(source: Source, data: bytes) -> Iterator[Item]:
     """Yield passages and tables in the order of the page, with what is not read among them."""
     text = _text(data)
-    if len(text) > DEFAULT.record_chars:
+    if len(text) > LONGEST:
         raise Refused("size-budget", f"The page has {len(text)} characters.")
     if "<!ENTITY" in text:
         raise Refused("entities", "The page declares entities.")

@@ -15,18 +15,21 @@ from dossiercheck.model import Cell, Place
 from dossiercheck.readers.grid import column_letter
 
 _GROUPS = frozenset({"thead", "tbody", "tfoot"})
+CELLS = 500_000
 _MOST_COLUMNS, _MOST_ROWS = 1000, 65_534  # what a span may say, in the same section
 
 
 @dataclass(slots=True)
 class Layout:
-    """`rows` of cell elements; `captions`; `strays` are elements where none belong, and `loose`
-    is text outside any cell: browsers show both before the table."""
+    """`rows` of cell elements, as far as the budget of cells goes, else `past` is true; `captions`;
+    `strays` are elements where none belong, and `loose` is text outside any cell: browsers show
+    both before the table."""
 
     rows: list[list[etree._Element]] = field(default_factory=list)
     captions: list[etree._Element] = field(default_factory=list)
     strays: list[etree._Element] = field(default_factory=list)
     loose: list[str] = field(default_factory=list)
+    past: bool = False
 
 
 def table_layout(table: etree._Element) -> Layout:
@@ -48,6 +51,9 @@ def list_layout(node: etree._Element) -> Layout:
             terms.append(child)
             continue
         defined = True
+        if len(found.rows) + len(terms) > CELLS // 2:
+            found.past = True
+            return found
         found.rows += [[term, child] for term in terms] or [[child]]
     if not defined:
         found.rows += [[term] for term in terms]
@@ -130,7 +136,7 @@ class Grid:
         wide = _span(element, "colspan", _MOST_COLUMNS)
         high = _span(element, "rowspan", _MOST_ROWS)
         past = self._column + wide > DEFAULT.columns or self._row + high > DEFAULT.rows
-        if past or len(self._cells) + wide * high > DEFAULT.cells:
+        if past or len(self._cells) + wide * high > CELLS:
             return False
         for y in range(self._row, self._row + high):
             for x in range(self._column, self._column + wide):
@@ -142,19 +148,23 @@ class Grid:
         """The rows that were begun, all of one width. A cell reaches no further than the last."""
         height = self._row + 1
         width = max((x for y, x in self._cells if y < height), default=-1) + 1
-        if width * height > DEFAULT.cells:
+        if width * height > CELLS:
             return ()
         return tuple(tuple(self._at(y, x) for x in range(width)) for y in range(height) if width)
 
     def _at(self, row: int, column: int) -> Cell:
         cell = self._cells.get((row, column))
-        where = replace(self.place, row=row + 1, column=column_letter(column))
-        return cell or Cell("", where)
+        if cell is None:
+            cell = Cell("", replace(self.place, row=row + 1, column=column_letter(column)))
+        return cell
 
 
 def _span(element: etree._Element, name: str, most: int) -> int:
     """A span of 0 reaches to the last row; nothing that is no number spans."""
-    text = (element.get(name) or "1").strip()
+    text = element.get(name)
+    if text is None:
+        return 1
+    text = text.strip()
     if not (text.isascii() and text.isdigit()) or len(text) > 9:
         return 1
     if text.strip("0") == "" and name == "rowspan":

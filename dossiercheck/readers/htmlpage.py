@@ -40,6 +40,7 @@ _HIDDEN = {
     "noscript": "Text that is shown only where scripts are not run.",
     "noframes": "Text that is shown only where there are no frames.",
 }
+_LEVELS = {f"h{level}": level for level in range(1, 7)}
 _STRUCK = {"del": "deleted in a revision", "s": "struck out", "strike": "struck out"}
 _OBJECTS = {
     "img": ("picture", "A picture, which is not read."),
@@ -74,7 +75,7 @@ class _Look:
 
 def tag_of(node: etree._Element) -> str:
     """The local name in small letters."""
-    return etree.QName(node).localname.lower()
+    return str(node.tag).rpartition("}")[2].lower()
 
 
 @dataclass(slots=True)
@@ -144,25 +145,24 @@ class Page:
 
     def _is_aside(self, node: etree._Element, tag: str, style: Style) -> bool:
         """List what is not shown or is no text; true where nothing of it is to be read."""
-        place = self.place(node)
         closed = tag in _HIDDEN and (tag != "dialog" or node.get("open") is None)
         if closed or node.get("hidden") is not None or hides(style):
             if text := _words(node):
                 detail = _HIDDEN.get(tag, _HIDDEN_DETAIL)
-                self._asides.append(Unread(place, "hidden-text", detail, text))
+                self._asides.append(Unread(self.place(node), "hidden-text", detail, text))
             return True
         if tag in _STRUCK:
             detail = f"Text {_STRUCK[tag]}, which is not read."
-            self._asides.append(Unread(place, "struck-text", detail, _words(node)))
+            self._asides.append(Unread(self.place(node), "struck-text", detail, _words(node)))
             return True
         if tag in _OBJECTS:
             reason, detail = _OBJECTS[tag]
             text = (node.get("alt") or _words(node))[:2000]
-            self._asides.append(Unread(place, reason, detail, text))
+            self._asides.append(Unread(self.place(node), reason, detail, text))
             return True
         if tag == "svg":
             self._flush()
-            for item in svg_items(node, place):
+            for item in svg_items(node, self.place(node)):
                 if isinstance(item, Unread):
                     self._asides.append(item)
                 elif isinstance(item, Passage):
@@ -239,10 +239,14 @@ class Page:
             grid.next_row()
             for cell in row:
                 if not grid.put(self._shown(cell, node, look), cell):
-                    detail = "The table has more cells than are read."
-                    self._asides.append(Unread(place, "cell-budget", detail))
+                    layout.past = True
                     break
-        if made := grid.rows():
+            if layout.past:
+                break
+        if layout.past:
+            detail = "The table has more cells than are read: none of it is."
+            self._asides.append(Unread(place, "cell-budget", detail))
+        elif made := grid.rows():
             self.said += 1
             self._made.append(Table(made, place, self.outline.headings, caption))
         self._made += self._asides
@@ -278,7 +282,7 @@ def _words(node: etree._Element) -> str:
 
 def _look(node: etree._Element, tag: str, style: Style, above: _Look) -> _Look:
     """What is in force inside an element."""
-    level = int(tag[1]) if re.fullmatch("h[1-6]", tag) else above.level
+    level = _LEVELS.get(tag, above.level)
     if not style and not level and tag not in ("sup", "pre", "textarea", "font"):
         return above
     font = style.get("font-family") or style.get("font", "").split(",")[0].rpartition(" ")[2]

@@ -97,7 +97,7 @@ def declarations(text: str) -> dict[str, str]:
 
 def hides(style: Style) -> bool:
     """Whether what is declared takes the text out of sight."""
-    return (
+    return bool(style) and (
         style.get("display") == "none"
         or style.get("visibility") in ("hidden", "collapse")
         or _ZERO.match(style.get("opacity", "1")) is not None

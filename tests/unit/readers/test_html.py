@@ -265,6 +265,12 @@ def test_a_table_of_enormous_cells(cell: str) -> None:
     assert lines(items) == ["after"]
 
 
+def test_terms_and_definitions_that_multiply() -> None:
+    items = page("<dl>" + "<dt>a</dt>" * 2000 + "<dd>b</dd>" * 2000 + "</dl><p>after</p>")
+    assert reasons(items) == ["cell-budget"]
+    assert lines(items) == ["after"]
+
+
 def test_xhtml_in_an_xml_file() -> None:
     text = f'<html xmlns="http://www.w3.org/1999/xhtml"><body><h1>1.1 Head</h1><p>{NAME}</p></body></html>'
     items = read("a.xml", text.encode())
