@@ -13,6 +13,7 @@ from dossiercheck.names.reading import NameReading
 from dossiercheck.names.tying import tie
 from dossiercheck.stereo import alignment as al
 from dossiercheck.stereo import constitution as con
+from dossiercheck.stereo.descriptors import doubt_at
 from dossiercheck.stereo.structure import Structure
 from dossiercheck.substances import REGISTER, Substance
 
@@ -183,7 +184,21 @@ def _pair(reference: Reading, reading: Reading, parser: NameParser) -> Pair:
         views = _without_assumed(views, reading.name)
     if reading.name is not None and _needs_tying(found, views, reading):
         views = _tied(views, reading, reading.name, reference.structure, parser)
+    views = tuple(_sure(view, reference.structure, reading.structure) for view in views)
     return Pair(reading, found, views)
+
+
+def _sure(view: UnitView, reference: Structure, other: Structure) -> UnitView:
+    """A difference counts only where two independent computations describe the unit alike, in
+    both structures: a mark that one of them reads in another way makes no finding."""
+    if view.state is not State.DIFFERS:
+        return view
+    for structure, atoms in ((reference, view.atoms), (other, view.other)):
+        if any(unit.atoms == atoms for unit in structure.units):
+            doubt = doubt_at(structure, atoms)
+            if doubt:
+                return replace(view, state=State.UNDETERMINED, note=doubt)
+    return view
 
 
 def _without_assumed(views: tuple[UnitView, ...], name: NameReading) -> tuple[UnitView, ...]:

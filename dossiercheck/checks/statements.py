@@ -11,6 +11,7 @@ from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
 from dossiercheck.model import Role
 from dossiercheck.stereo.alignment import mirror_smiles
+from dossiercheck.stereo.descriptors import all_certain
 from dossiercheck.stereo.structure import Structure
 
 
@@ -98,6 +99,8 @@ def statement_count_differs(case: Case, params: Params) -> Iterator[Observation]
     for reading in case.of_role(Role.STEREO):
         stated = reading.statement.centres if reading.statement else None
         if stated is None or stated == len(atoms) or stated in _per_component(structure, atoms):
+            continue
+        if not all_certain(structure):
             continue
         yield Observation(
             {"stated": str(stated), "found": str(len(atoms))},

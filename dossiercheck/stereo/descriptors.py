@@ -85,6 +85,29 @@ def own_units(structure: Structure) -> tuple[Unit, ...]:
     )
 
 
+def doubt_at(structure: Structure, atoms: Iterable[int]) -> str:
+    """Why nothing may rest on the descriptor of the unit at these atoms (0-based), "" where both
+    computations give it."""
+    found = confirmed(structure, atoms)
+    if found is None:
+        return "neither computation gives a descriptor"
+    if found.certain:
+        return ""
+    return (
+        f"{found.note} (the engine gives {found.ours or 'none'}, "
+        f"the structure library {found.library or 'none'})"
+    )
+
+
+def all_certain(structure: Structure) -> bool:
+    """Whether both computations give the same letter to the same units of the structure."""
+    described = structure.described
+    if described is None:
+        confirmed(structure, ())
+        described = structure.described or {}
+    return all(one.certain for one in described.values())
+
+
 def confirmed(structure: Structure, atoms: Iterable[int]) -> Descriptor | None:
     """The unit at these atoms (0-based) as both computations have it, None where neither sees
     one; the derivations are worked out once a structure."""
