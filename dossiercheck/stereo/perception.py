@@ -10,6 +10,9 @@ from contextlib import contextmanager
 from rdkit import Chem, rdBase
 from rdkit.Chem import rdqueries
 
+from dossiercheck.stereo.cip.linear import written
+from dossiercheck.stereo.cip.molecule import LONE_PAIR
+from dossiercheck.stereo.cip.units import parity
 from dossiercheck.stereo.structure import (
     Mark,
     StereoGroup,
@@ -32,6 +35,8 @@ _V3000_STYLES = {"1": "wedge", "3": "hash", "2": "wavy"}
 
 # S-groups that repeat or vary (CTFile formats, "Sgroup type"); the others only group or abbreviate.
 _REPEATING = frozenset(["SRU", "MON", "MER", "COP", "CRO", "MOD", "GRA", "ANY", "MIX", "FOR"])
+_MARKED = rdqueries.HasChiralTagQueryAtom()
+_LEFT, _RIGHT = Chem.ChiralType.CHI_TETRAHEDRAL_CCW, Chem.ChiralType.CHI_TETRAHEDRAL_CW
 _DUMMY = rdqueries.AtomNumEqualsQueryAtom(0)
 # A bond line of order 0 (none that the format knows) or 4 (aromatic, which needs a look).
 _ODD_BOND = re.compile(r"^[ \d]{6}  [04](?!.*V[23]000)|^M  V30 \d+ [04] \d+ \d+", re.MULTILINE)
@@ -144,6 +149,8 @@ def from_smiles(
     if ":" in text:
         _refuse_odd_bonds(mol)
     Chem.SetBondStereoFromDirections(mol)
+    if "@" in text:
+        _seat_lone_pairs(mol, text)
     own = tuple(_groups(mol)) if "|" in text else ()
     return Structure(mol, text, groups=(*own, *groups), locants=tuple(locants))
 
@@ -183,6 +190,32 @@ def _sentence(said: list[str]) -> str:
         if plain and plain not in ("ERROR:", "****"):
             return plain.splitlines()[0].rstrip(".")
     return "the structure could not be parsed"
+
+
+def _seat_lone_pairs(mol: Chem.Mol, text: str) -> None:
+    """Read anew the marks of centres with three ligands and a lone pair.
+
+    The library turns some of them round (a centre that opens one ring closure). One that is
+    written first is left as it is: whether the lone pair then comes first or last is not settled
+    by the OpenSMILES specification, and the two computations differ on it.
+    """
+    centres = [
+        atom
+        for atom in mol.GetAtomsMatchingQuery(_MARKED)
+        if atom.GetDegree() == 3 and not atom.GetTotalNumHs()
+    ]
+    if not centres:
+        return
+    found = written(text)
+    for atom in centres:
+        around = found.near[atom.GetIdx()]
+        if len(around) == 3 and around[0] < atom.GetIdx():
+            sense = found.sense.get(atom.GetIdx(), 0)
+            order = [around[0], LONE_PAIR, *around[1:]]
+            own = [*(other.GetIdx() for other in atom.GetNeighbors()), LONE_PAIR]
+            if sense and set(order) == set(own):
+                left = sense * parity(own, order) > 0
+                atom.SetChiralTag(_LEFT if left else _RIGHT)
 
 
 def _refuse_generic(mol: Chem.Mol, text: str) -> None:
