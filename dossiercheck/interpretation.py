@@ -93,7 +93,9 @@ def _name(said: Evidence, name: NameReading) -> Reading:
     if name.structure is None:
         refusal = name.refusal
         detail = refusal.detail if refusal else "the name could not be interpreted"
-        return Reading(said, name=name, reason="name-not-interpretable", refusal=detail)
+        undetermined = refusal is not None and refusal.reason == "several-joinings"
+        reason = "undetermined-name" if undetermined else "name-not-interpretable"
+        return Reading(said, name=name, reason=reason, refusal=detail)
     try:
         return Reading(said, structure_of(name.structure), name)
     except Unreadable as error:

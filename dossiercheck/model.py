@@ -276,7 +276,8 @@ class Evidence:
     `text` is verbatim. `group` is the same for evidence that stands together (a record, a row,
     a block of labelled fields), "" for a name that stands alone in running text. `label` is what
     the place calls the substance, "" where it gives none. `pending` are the tracked changes that
-    touch it, their characters counted in `text`.
+    touch it, their characters counted in `text`. `instead` are other extents of a name that ends
+    or begins at a line end, each with its own text and place; none is left once it is settled.
     """
 
     id: str
@@ -286,6 +287,7 @@ class Evidence:
     group: str = ""
     label: str = ""
     pending: tuple[Pending, ...] = ()
+    instead: tuple[Evidence, ...] = ()
 
     @property
     def kind(self) -> Kind:

@@ -59,6 +59,7 @@ def _review(
     evidence, unread = _gather(items, settings, sections(cycle.submission))
     whole = rulebook.judge_submission(cycle)
     with Workers(settings.jobs, rulebook, progress) as workers:
+        evidence = _settled(evidence, unread, workers)
         substances, unattributed = attribute(evidence, settings.register, workers.survey)
         judged = workers.judge(substances)
     return Review(
@@ -137,6 +138,19 @@ def _gather(
             place = replace(entry.place, section=section)
             evidence.append(replace(entry, id=f"e{len(evidence) + 1}", place=place))
     return evidence, unread
+
+
+def _settled(evidence: list[Evidence], unread: list[Unread], workers: Workers) -> list[Evidence]:
+    """The evidence with every name's end settled; a name whose end cannot be told is unread."""
+    settled = iter(workers.settle([said for said in evidence if said.instead]))
+    kept = []
+    for said in evidence:
+        one = next(settled) if said.instead else said
+        if isinstance(one, Unread):
+            unread.append(one)
+        else:
+            kept.append(one)
+    return kept
 
 
 def _in_order(sources: Sequence[Source], unread: Iterable[Unread]) -> tuple[Unread, ...]:

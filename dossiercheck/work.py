@@ -7,7 +7,7 @@ does not depend on the number of processes.
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from multiprocessing import get_context
 from types import TracebackType
 from typing import Any, Self, TypeVar
@@ -16,14 +16,17 @@ from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
 from dossiercheck.concordance import build_case, table
 from dossiercheck.interpretation import Reading, interpret
-from dossiercheck.model import Finding, Grade, Role, SubstanceEntry, Unread
+from dossiercheck.model import Evidence, Finding, Grade, Role, SubstanceEntry, Unread
+from dossiercheck.names.joining import choose
 from dossiercheck.names.parser import NameParser
+from dossiercheck.names.reading import read_names
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.stereo.drawing import drawing_of
 from dossiercheck.substances import Identity, Substance, identities
 
 PIECE = 100
 
+_In = TypeVar("_In")
 _Out = TypeVar("_Out")
 
 
@@ -82,6 +85,10 @@ class Workers:
         else:
             _end()
 
+    def settle(self, names: Sequence[Evidence]) -> list[Evidence | Unread]:
+        """How far each name goes where a line end leaves that open, in order."""
+        return self._spread("settling", _settle, names, _unsettled)
+
     def survey(self, substances: Sequence[Substance]) -> list[frozenset[Identity]]:
         """What the structures of each substance are, in order."""
         return self._spread("surveying", _survey, substances, lambda _: frozenset())
@@ -93,9 +100,9 @@ class Workers:
     def _spread(
         self,
         stage: str,
-        function: Callable[[Sequence[Substance]], list[_Out]],
-        things: Sequence[Substance],
-        lost: Callable[[Substance], _Out],
+        function: Callable[[Sequence[_In]], list[_Out]],
+        things: Sequence[_In],
+        lost: Callable[[_In], _Out],
     ) -> list[_Out]:
         pieces = [things[start : start + PIECE] for start in range(0, len(things), PIECE)]
         results: list[_Out] = []
@@ -110,7 +117,7 @@ class Workers:
         return results
 
     def _start(
-        self, function: Callable[[Sequence[Substance]], list[_Out]], piece: Sequence[Substance]
+        self, function: Callable[[Sequence[_In]], list[_Out]], piece: Sequence[_In]
     ) -> ProcessFuture[Any]:
         assert self._pool is not None
         return self._pool.schedule(function, args=(piece,))
@@ -118,9 +125,9 @@ class Workers:
     def _collect(
         self,
         future: ProcessFuture[Any],
-        function: Callable[[Sequence[Substance]], list[_Out]],
-        piece: Sequence[Substance],
-        lost: Callable[[Substance], _Out],
+        function: Callable[[Sequence[_In]], list[_Out]],
+        piece: Sequence[_In],
+        lost: Callable[[_In], _Out],
     ) -> list[_Out]:
         """A piece's results; where its process died, one thing at a time, so that only the one
         that kills it is lost, and is listed as lost."""
@@ -160,6 +167,26 @@ def _readings(substances: Sequence[Substance]) -> list[list[Reading]]:
     assert _State.parser is not None
     together = iter(interpret([said for one in substances for said in one.evidence], _State.parser))
     return [[next(together) for _ in one.evidence] for one in substances]
+
+
+def _settle(names: Sequence[Evidence]) -> list[Evidence | Unread]:
+    assert _State.parser is not None
+    extents = [(name, *name.instead) for name in names]
+    read = iter(read_names([one.text for some in extents for one in some], _State.parser))
+    settled: list[Evidence | Unread] = []
+    for some in extents:
+        chosen, doubt = choose([one.text for one in some], [next(read) for _ in some])
+        name = some[chosen]
+        settled.append(
+            Unread(name.place, "undetermined-name", doubt.detail, name.text)
+            if doubt
+            else replace(name, id=some[0].id, instead=())
+        )
+    return settled
+
+
+def _unsettled(name: Evidence) -> Unread:
+    return Unread(name.place, "worker-died", "the process that read it died on it", name.text)
 
 
 def _survey(substances: Sequence[Substance]) -> list[frozenset[Identity]]:

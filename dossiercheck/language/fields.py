@@ -14,8 +14,8 @@ from dataclasses import dataclass, field, replace
 from dossiercheck.language.labels import in_heading, is_label
 from dossiercheck.language.lists import parts, synonyms
 from dossiercheck.language.roles import Aside, Meaning, could_be, is_nothing, meaning_of, plain
-from dossiercheck.language.running import candidates
-from dossiercheck.model import Evidence, Passage, Place, Role, Unread
+from dossiercheck.language.wrapped import stretched
+from dossiercheck.model import Evidence, Place, Role, Unread
 
 _TRIMMED = (
     Role.FORMULA,
@@ -144,9 +144,14 @@ def value_evidence(
 def _name(text: str, start: int, end: int, place: Place) -> Iterator[Evidence | Unread]:
     value = text[start:end]
     if re.search(r"\b(?:is|are|was|the|according|which|named)\b", value):
-        for candidate in candidates(value):
-            span = (start + candidate.start, start + candidate.end)
-            yield Evidence("", Role.NAME, text[slice(*span)], replace(place, span=span))
+        for found in stretched(value):
+            extents = [(found.candidate.start, found.candidate.end), *found.others]
+            spans = [(start + a, start + b) for a, b in extents]
+            said, *others = (
+                Evidence("", Role.NAME, text[slice(*span)], replace(place, span=span))
+                for span in spans
+            )
+            yield replace(said, instead=tuple(others))
         return
     cut = value.rstrip()
     bracket = re.search(r"\s+\(([^()]{2,60})\)\.?$", cut)
@@ -167,11 +172,3 @@ def breaks_off(value: str) -> bool:
 def is_value(meaning: Meaning, text: str) -> bool:
     """Whether a line can be the value of a field whose own line ends after the separator."""
     return not is_nothing(text) and (could_be(meaning, text) or meaning is Aside.LABEL)
-
-
-def lines_of(passage: Passage) -> Iterator[tuple[int, int]]:
-    """Start and end of each line inside a passage's text."""
-    at = 0
-    for line in passage.text.split("\n"):
-        yield at, at + len(line)
-        at += len(line) + 1

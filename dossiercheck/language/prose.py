@@ -13,13 +13,13 @@ from dossiercheck.language.fields import (
     breaks_off,
     is_value,
     labelled,
-    lines_of,
     starts_next,
     value_evidence,
 )
 from dossiercheck.language.labels import beside, is_label
 from dossiercheck.language.roles import Aside, is_nothing, plain
-from dossiercheck.language.running import Candidate, candidates, is_substituent, substituent
+from dossiercheck.language.running import Candidate
+from dossiercheck.language.wrapped import hard_lines, loose_name, placed, stretched
 from dossiercheck.model import Evidence, Passage, Place, Role, Unread
 
 
@@ -77,7 +77,7 @@ def passage_evidence(passages: list[Passage], state: Prose) -> Iterator[Evidence
     lines = [
         Line(passage, start, end)
         for passage in passages
-        for start, end in lines_of(passage)
+        for start, end in hard_lines(passage.text, passage.breaks)
         if passage.text[start:end].strip()
     ]
     for index, line in enumerate(lines):
@@ -150,6 +150,7 @@ def _take(
             continue
         for said in value_evidence(line.passage.text, start, end, one.meaning, place, one.heading):
             if isinstance(said, Evidence):
+                said = placed(said, line.passage)
                 block.said.append(touched(said, line.passage.pending, line.passage.text))
             else:
                 yield said
@@ -170,18 +171,15 @@ def _names(
 ) -> Iterator[Evidence | Unread]:
     text = line.text
     place = line.passage.place
-    for candidate in candidates(text):
+    for found in stretched(text):
+        candidate = found.candidate
         span = (line.start + candidate.start, line.start + candidate.end)
         name = text[candidate.start : candidate.end]
         if _runs_on(line, following, candidate) or _began_before(line, previous, candidate):
             yield _broken(place, span, name)
             continue
-        if is_substituent(name):
-            yield substituent(replace(place, span=span), name)
-            continue
         label = beside(text, candidate.start, candidate.end)
-        said = Evidence("", Role.NAME, name, replace(place, span=span), label=label)
-        yield touched(said, line.passage.pending, line.passage.text)
+        yield loose_name(line.passage, line.start, line.end, found, label)
 
 
 def _broken(place: Place, span: tuple[int, int], text: str) -> Unread:

@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
 from dossiercheck.language.fields import Met, starts_next
-from dossiercheck.language.labels import beside, in_heading, in_title
+from dossiercheck.language.labels import in_heading, in_title
 from dossiercheck.language.lists import parts, synonyms
 from dossiercheck.language.roles import (
     Aside,
@@ -20,7 +20,7 @@ from dossiercheck.language.roles import (
     plain,
     says_itself,
 )
-from dossiercheck.language.running import candidates, is_substituent, substituent
+from dossiercheck.language.wrapped import hard_lines, loose_names, placed
 from dossiercheck.model import Cell, Evidence, Role, Table, Unread
 
 _Meaning = Callable[[str], Meaning | None]
@@ -275,7 +275,9 @@ def _cell(
 ) -> Iterator[Evidence | Unread]:
     """What one cell says, with the tracked changes that touch it."""
     for said in _said(sheet, cell, heading, role, group, label):
-        yield touched(said, cell.pending, cell.text) if isinstance(said, Evidence) else said
+        if isinstance(said, Evidence):
+            said = touched(placed(said, cell), cell.pending, cell.text)
+        yield said
 
 
 def _said(
@@ -310,7 +312,7 @@ def _names(cell: Cell, group: str, label: str) -> Iterator[Evidence | Unread]:
     for span in listed:
         name = text[slice(*span)]
         place = replace(cell.place, span=span) if len(listed) > 1 else cell.place
-        if "\n" in name:
+        if name.count("\n") > sum(span[0] <= at < span[1] for at in cell.breaks):
             detail = "The cell has several lines; whether they are one name is not certain."
             yield Unread(place, "several-lines", detail, name)
         else:
@@ -332,17 +334,8 @@ def _from_cells(sheet: _Sheet) -> Iterator[Evidence | Unread]:
 
 def _loose_names(cell: Cell) -> Iterator[Evidence | Unread]:
     """Names in the running text of a cell; they stand alone."""
-    at = 0
-    for line in cell.text.split("\n"):
-        for candidate in candidates(line):
-            span = (at + candidate.start, at + candidate.end)
-            label = beside(line, candidate.start, candidate.end)
-            place = replace(cell.place, span=span)
-            if is_substituent(cell.text[slice(*span)]):
-                yield substituent(place, cell.text[slice(*span)])
-                continue
-            yield Evidence("", Role.NAME, cell.text[slice(*span)], place, label=label)
-        at += len(line) + 1
+    for start, end in hard_lines(cell.text, cell.breaks):
+        yield from loose_names(cell, start, end)
 
 
 def _standing_label(table: Table) -> str:

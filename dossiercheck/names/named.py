@@ -36,9 +36,9 @@ class NamedStructure:
 @dataclass(frozen=True, slots=True)
 class Refusal:
     """Why a name has no structure. `reason` is a slug: empty, too-long, ambiguous,
-    control-character, line-break, foreign-character, not-interpretable, not-buildable,
-    stereo-not-buildable, time-out, process-died, echo-mismatch. `span` is the part of
-    the verbatim text that stopped it, None where the parser does not say."""
+    control-character, line-break, several-joinings, foreign-character, not-interpretable,
+    not-buildable, stereo-not-buildable, time-out, process-died, echo-mismatch. `span` is the
+    part of the verbatim text that stopped it, None where the parser does not say."""
 
     reason: str
     detail: str

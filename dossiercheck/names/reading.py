@@ -10,7 +10,16 @@ import re
 from collections.abc import Sequence
 from dataclasses import replace
 
-from dossiercheck.names import apart, assumed, capitals, implied, leftout, misplaced, spacing
+from dossiercheck.names import (
+    apart,
+    assumed,
+    capitals,
+    implied,
+    joining,
+    leftout,
+    misplaced,
+    spacing,
+)
 from dossiercheck.names.descriptors import PrintedDescriptor, printed
 from dossiercheck.names.named import Fault, NamedStructure, NameReading, Refusal, StereoGroup
 from dossiercheck.names.notation import NotationError, read_extended, read_notation
@@ -42,7 +51,25 @@ _RACEMIC = frozenset(("rac", "racemic", "+/-", "+-", "-/+", "+,-", "RS", "DL", "
 
 
 def read_names(texts: Sequence[str], parser: NameParser) -> list[NameReading]:
-    """A reading for each printed name, in order. Raises parser.ParserMissing only."""
+    """A reading for each printed name, in order; a line feed in one is a line end of the layout.
+
+    Raises parser.ParserMissing only.
+    """
+    wrapped = {i for i, text in enumerate(texts) if joining.BREAK in text.strip()}
+    if not wrapped:
+        return _read_plain(texts, parser)
+    plain = iter(_read_plain([t for i, t in enumerate(texts) if i not in wrapped], parser))
+
+    def read(ways: Sequence[str]) -> list[NameReading]:
+        return _read_plain(ways, parser)
+
+    return [
+        joining.read_joined(text, read) if i in wrapped else next(plain)
+        for i, text in enumerate(texts)
+    ]
+
+
+def _read_plain(texts: Sequence[str], parser: NameParser) -> list[NameReading]:
     readings = [_prepared(text, parser.longest) for text in texts]
     open_ = [i for i, reading in enumerate(readings) if reading.refusal is None]
     drops = [never_placed(readings[i].descriptors) for i in open_]

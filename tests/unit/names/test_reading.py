@@ -185,7 +185,6 @@ def test_a_carbon_before_a_phosphonate_keeps_its_letter(parser: NameParser) -> N
         ("   ", "empty", None),
         ("etha\0nol", "control-character", "\0"),
         ("etha\tnol", "control-character", "\t"),
-        ("methyl\nbenzoate", "line-break", "\n"),
         ("2-пропанол", "foreign-character", "п"),
         ("(R)-qqqvaptan", "not-interpretable", "qqqvaptan"),
         ("2−{3−qqq−phenyl}ethanol", "not-interpretable", "qqq−phenyl}ethanol"),
