@@ -9,6 +9,7 @@ from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Role
+from dossiercheck.stereo.descriptors import ambiguous_wedges
 from dossiercheck.stereo.structure import Structure
 
 
@@ -42,6 +43,23 @@ def wedge_not_stereogenic(case: Case, params: Params) -> Iterator[Observation]:
                 {"atom": f"{structure.mol.GetAtomWithIdx(atom).GetSymbol()} {atom + 1}"},
                 (exhibit(reading, atoms={atom: "!"}),),
             )
+
+
+@check(needs=("drawing",), fields=("atom", "reason"))
+def wedge_ambiguous(case: Case, params: Params) -> Iterator[Observation]:
+    """The wedges at a stereogenic centre can be read in two ways or contradict each other."""
+    for reading, structure in _drawn(case):
+        centres = _centres(structure) | _open(structure) if structure.marks else set()
+        for atom, why in ambiguous_wedges(structure).items():
+            if atom in centres:
+                yield Observation(
+                    {
+                        "atom": f"{structure.mol.GetAtomWithIdx(atom).GetSymbol()} {atom + 1}",
+                        "reason": why,
+                    },
+                    (exhibit(reading, atoms={atom: "?"}),),
+                    case.unit_ids.get(frozenset((atom,)), "") if reading is case.reference else "",
+                )
 
 
 @check(needs=("drawing",), fields=("atoms", "count"))

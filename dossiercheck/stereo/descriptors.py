@@ -13,6 +13,7 @@ from dataclasses import dataclass
 from dossiercheck.stereo.cip.derivation import Derivation, derive
 from dossiercheck.stereo.cip.drawn import Drawn
 from dossiercheck.stereo.cip.engine import Ranked, rank_all
+from dossiercheck.stereo.cip.molecule import molecule_of
 from dossiercheck.stereo.cip.readoff import read_off
 from dossiercheck.stereo.cip.source import Source, drawn_of, source_of
 from dossiercheck.stereo.structure import Structure, Unit
@@ -83,6 +84,13 @@ def own_units(structure: Structure) -> tuple[Unit, ...]:
         for ranked in rank_all(source_of(structure))
         if ranked.descriptor
     )
+
+
+def ambiguous_wedges(structure: Structure) -> dict[int, str]:
+    """Wedged atoms (0-based) of a drawing whose wedges have no one meaning, with the reason."""
+    if structure.dimension != 2 or not structure.marks:
+        return {}
+    return drawn_of(structure, molecule_of(structure.mol)).ambiguous()
 
 
 def doubt_at(structure: Structure, atoms: Iterable[int]) -> str:

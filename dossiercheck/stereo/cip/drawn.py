@@ -80,6 +80,14 @@ class Drawn:
         yield from wound
         yield from self._axes({atom for helix in wound for atom in helix.chain})
 
+    def ambiguous(self) -> dict[int, str]:
+        """The wedged atoms of a drawing whose wedges can be read in two ways or contradict each
+        other, with the reason; nothing else is looked at."""
+        for atom in sorted(self.raised):
+            if atom not in self.vague and can_be_centre(self.molecule, atom):
+                self._centre(atom)
+        return {atoms[0]: why for atoms, why in self.unclear.items()}
+
     # --- centres -----------------------------------------------------------------------------
 
     def _centre(self, atom: int) -> Marked | None:

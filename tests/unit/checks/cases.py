@@ -35,6 +35,23 @@ FORMULA = "identity/formula-differs"
 MASS = "identity/mass-differs"
 CHECK_DIGIT = "identity/registry-check-digit"
 WEDGE = "drawing/wedge-not-stereogenic"
+AMBIGUOUS = "drawing/wedge-ambiguous"
+# Butan-2-ol with its chain in a straight line through the centre and the wedge upright on it.
+STEM = """stem
+
+
+  5  4  0  0  0  0  0  0  0  0999 V2000
+   -1.5000    0.0000    0.0000 C   0  0
+    0.0000    0.0000    0.0000 C   0  0
+    0.0000    1.5000    0.0000 O   0  0
+    1.5000    0.0000    0.0000 C   0  0
+    3.0000    0.0000    0.0000 C   0  0
+  1  2  1  0
+  2  3  1  1
+  2  4  1  0
+  4  5  1  0
+M  END
+"""
 UNDEFINED = "drawing/undefined-centre"
 WAVY = "drawing/wavy-bond"
 STATED_KIND = "statement/kind-differs"
@@ -500,6 +517,8 @@ CASES = [
     ),
     one("wedge at an equal-armed carbon", WEDGE, molfile=wedged("CC(O)C", 2, 3)),
     one("wedge at an allene's end", molfile=wedged("CC=C=CC", 2, 1)),
+    one("wedge on a stem", AMBIGUOUS, molfile=STEM),
+    one("wedge on a bent stem", molfile=STEM.replace("1.5000    0.0000", "1.2990   -0.7500")),
     one("open centre", UNDEFINED, molfile=v2000("C[C@H](O)C(C)CC")),
     one("open centre of a stated racemate", molfile=v2000("CC(O)CC"), stereo="racemate"),
     one("open centre of a racemate by name", name="rac-butan-2-ol", molfile=v2000("CC(O)CC")),
