@@ -335,6 +335,33 @@ class Drawing:
     laid_out: bool = False
 
 
+@dataclass(frozen=True, slots=True)
+class RankPlace:
+    """One ligand of a unit in a drawing: its rank, its atom (0-based; -1 where it is not drawn:
+    a hydrogen or a lone pair), what to call it, and the unit's atom it hangs from. `held` is the
+    rank that its place holds after two exchanges, "" where nothing is exchanged."""
+
+    rank: str
+    atom: int
+    label: str
+    end: int
+    held: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Sight:
+    """A unit as a drawing is read. `atoms` are 0-based: the centre, or the two ends, for an axis
+    the near end first. `turn` is the sense in which a, b and c follow as drawn, by the places
+    they hold: 1 counter-clockwise, -1 clockwise, 0 where it is not read so. `numbers` are atoms
+    (0-based) that the derivation cites, with the text that it calls them."""
+
+    kind: str
+    atoms: tuple[int, ...]
+    ranks: tuple[RankPlace, ...]
+    turn: int = 0
+    numbers: tuple[tuple[int, str], ...] = ()
+
+
 # --- concordance --------------------------------------------------------------------------
 
 
@@ -375,9 +402,30 @@ class Concordance:
 
 
 @dataclass(frozen=True, slots=True)
+class Derived:
+    """How a structure leads to the descriptor of one unit, in sentences.
+
+    `atoms` are 1-based positions in the evidence; `descriptor` is "" where it is not certain,
+    `ours` and `library` are the letters of the two computations ("" for none) and `note` says why
+    they do not settle it. `sight` belongs to the drawing shown beside it.
+    """
+
+    kind: str
+    atoms: tuple[int, ...]
+    locant: str
+    descriptor: str
+    ours: str
+    library: str
+    note: str
+    steps: tuple[str, ...]
+    sight: Sight | None = None
+
+
+@dataclass(frozen=True, slots=True)
 class Exhibit:
     """One side of a finding: an evidence verbatim, with the characters of it that matter
-    (`marks`, 0-based spans into `text`) and a drawing where there is one to show."""
+    (`marks`, 0-based spans into `text`) and a drawing where there is one to show; `derived` has
+    the derivation of each unit that the finding speaks of."""
 
     evidence: str
     title: str
@@ -386,6 +434,7 @@ class Exhibit:
     marks: tuple[tuple[int, int], ...] = ()
     drawing: Drawing | None = None
     note: str = ""
+    derived: tuple[Derived, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
