@@ -118,7 +118,7 @@ class ZipFolder:
         _count(len(listed), limits)
         if any(info.filename == "[Content_Types].xml" for info in listed):
             raise Refused("content-mismatch", "The archive is an office package, named otherwise.")
-        files = [info for info in listed if not info.is_dir() or info.file_size]
+        files = [info for info in listed if not info.filename.endswith("/") or info.file_size]
         crowded = _overlapping(listed, self._zip.start_dir)
         self._by_name = {_clean(info.filename): info for info in files}
         self.members = _members(
@@ -202,7 +202,7 @@ def _members(
     found: dict[str, Member] = {}
     for info in files:
         name = name_of(info)
-        reason, detail = trouble(info)
+        reason, detail = trouble(info) if name else ("unsafe-path", "It has no name.")
         if times[name] > 1:
             reason = "duplicate-member"
             detail = f"It is listed {times[name]} times, and programs differ on which they open."
@@ -218,7 +218,7 @@ def _zip_trouble(info: zipfile.ZipInfo, crowded: bool) -> tuple[str, str]:
         return "encrypted", "It is encrypted."
     if kind == stat.S_IFLNK:
         return "link", "A link inside an archive is not followed."
-    if kind not in (0, stat.S_IFREG) or info.is_dir():
+    if kind not in (0, stat.S_IFREG) or info.filename.endswith("/"):
         return "not-a-file", "Neither a file nor a folder."
     if crowded:
         return "overlapping-members", "Its bytes are those of another member as well."

@@ -15,8 +15,8 @@ from lxml import etree
 from dossiercheck.limits import Refused, decode
 from dossiercheck.model import Item, Source, Unread
 from dossiercheck.readers.content import guarded, whole
-from dossiercheck.readers.htmlpage import Page, tag_of
-from dossiercheck.readers.htmlstyle import read_sheets
+from dossiercheck.readers.htmlpage import Page
+from dossiercheck.readers.htmlstyle import read_sheets, tag_of
 
 SUFFIXES = frozenset({".html", ".htm", ".xhtml"})
 

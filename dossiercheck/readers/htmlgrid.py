@@ -13,6 +13,7 @@ from lxml import etree
 from dossiercheck.limits import DEFAULT
 from dossiercheck.model import Cell, Place
 from dossiercheck.readers.grid import column_letter
+from dossiercheck.readers.htmlstyle import tag_of
 
 _GROUPS = frozenset({"thead", "tbody", "tfoot"})
 CELLS = 500_000
@@ -45,7 +46,7 @@ def list_layout(node: etree._Element) -> Layout:
     terms: list[etree._Element] = []
     defined = False
     for child in _items(node, found):
-        if _tag(child) == "dt":
+        if tag_of(child) == "dt":
             if defined:
                 terms, defined = [], False
             terms.append(child)
@@ -64,7 +65,7 @@ def _rows(node: etree._Element, found: Layout) -> None:
     found.loose.append(node.text or "")
     previous = ""
     for child in node.iterchildren(tag=etree.Element):
-        tag = _tag(child)
+        tag = tag_of(child)
         if tag in _GROUPS:
             _rows(child, found)
         elif tag == "tr":
@@ -86,7 +87,7 @@ def _rows(node: etree._Element, found: Layout) -> None:
 def _cells(row: etree._Element, found: Layout) -> None:
     found.loose.append(row.text or "")
     for child in row.iterchildren(tag=etree.Element):
-        if _tag(child) in ("td", "th"):
+        if tag_of(child) in ("td", "th"):
             found.rows[-1].append(child)
         else:
             found.strays.append(child)
@@ -98,7 +99,7 @@ def _items(node: etree._Element, found: Layout) -> list[etree._Element]:
     items: list[etree._Element] = []
     found.loose.append(node.text or "")
     for child in node.iterchildren(tag=etree.Element):
-        tag = _tag(child)
+        tag = tag_of(child)
         if tag in ("dt", "dd"):
             items.append(child)
         elif tag == "div":
@@ -107,10 +108,6 @@ def _items(node: etree._Element, found: Layout) -> list[etree._Element]:
             found.strays.append(child)
         found.loose.append(child.tail or "")
     return items
-
-
-def _tag(node: etree._Element) -> str:
-    return etree.QName(node).localname.lower()
 
 
 @dataclass(slots=True)

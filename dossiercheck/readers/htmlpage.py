@@ -19,6 +19,7 @@ from dossiercheck.readers.htmlstyle import (
     is_symbol_font,
     raised,
     raises,
+    tag_of,
 )
 from dossiercheck.readers.sections import Heading, Outline, number_of, numbered_heading
 from dossiercheck.readers.svgtext import svg_items
@@ -71,11 +72,6 @@ class _Look:
     transform: str = ""
     symbols: bool = False
     level: int = 0  # of the heading it stands in
-
-
-def tag_of(node: etree._Element) -> str:
-    """The local name in small letters."""
-    return str(node.tag).rpartition("}")[2].lower()
 
 
 @dataclass(slots=True)

@@ -95,6 +95,11 @@ def declarations(text: str) -> dict[str, str]:
     return found
 
 
+def tag_of(node: etree._Element) -> str:
+    """The local name in small letters; damaged pages have names that are none in XML."""
+    return str(node.tag).rpartition("}")[2].lower()
+
+
 def hides(style: Style) -> bool:
     """Whether what is declared takes the text out of sight."""
     return bool(style) and (

@@ -13,7 +13,14 @@ from typing import cast
 from lxml import etree
 
 from dossiercheck.model import Item, Passage, Place, Source, Unread
-from dossiercheck.readers.htmlstyle import Sheet, declarations, hides, is_symbol_font, read_sheets
+from dossiercheck.readers.htmlstyle import (
+    Sheet,
+    declarations,
+    hides,
+    is_symbol_font,
+    read_sheets,
+    tag_of,
+)
 
 SVG = "http://www.w3.org/2000/svg"
 
@@ -41,10 +48,10 @@ def svg_items(root: etree._Element, place: Place) -> Iterator[Item]:
     styles = [
         "".join(map(str, one.itertext(etree.Element)))
         for one in root.iter(etree.Element)
-        if _tag(one) == "style"
+        if tag_of(one) == "style"
     ]
     sheet = read_sheets(styles)
-    drawn = sum(_tag(one) in _DRAWN for one in root.iter(etree.Element))
+    drawn = sum(tag_of(one) in _DRAWN for one in root.iter(etree.Element))
     for selector in sheet.doubtful:
         detail = f"A style hides “{selector[:200]}” at times; it is read as shown."
         yield Unread(place, "style-sheet", detail)
@@ -56,7 +63,7 @@ def svg_items(root: etree._Element, place: Place) -> Iterator[Item]:
 
 def _walk(node: etree._Element, sheet: Sheet, place: Place) -> Iterator[Item]:
     for child in node.iterchildren(tag=etree.Element):
-        tag = _tag(child)
+        tag = tag_of(child)
         if tag in _SKIPPED:
             continue
         where = _at(child, place)
@@ -78,7 +85,7 @@ def _walk(node: etree._Element, sheet: Sheet, place: Place) -> Iterator[Item]:
 def _text(node: etree._Element, sheet: Sheet, place: Place) -> Iterator[Item]:
     """A text element; a part that is hidden or in a symbol font leaves the whole unread."""
     for one in node.iter(etree.Element):
-        style = _style(one, _tag(one), sheet)
+        style = _style(one, tag_of(one), sheet)
         if one is not node and hides(style):
             detail = "A part of the text is not shown."
             yield Unread(place, "hidden-text", detail, _words(node)[:2000])
@@ -105,7 +112,3 @@ def _style(node: etree._Element, tag: str, sheet: Sheet) -> dict[str, str]:
 
 def _words(node: etree._Element) -> str:
     return " ".join("".join(map(str, node.itertext(etree.Element))).split())
-
-
-def _tag(node: etree._Element) -> str:
-    return etree.QName(node).localname.lower()

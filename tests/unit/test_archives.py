@@ -113,6 +113,12 @@ def test_a_path_that_leads_out_is_not_opened(name: str, tmp_path: Path) -> None:
         assert not (tmp_path.parent / "up.txt").exists()
 
 
+def test_a_member_without_a_name_is_not_opened(tmp_path: Path) -> None:
+    """zipfile of Python 3.11 raises IndexError on one (found by mutation)."""
+    for kind, data in (("d.zip", zipped({"": b"x", "a": b"y"})), ("d.tar", tarred({".": b"x"}))):
+        assert walk(tmp_path, kind, data)[f"{kind}/"] == "[unsafe-path]"
+
+
 def test_links_and_devices_are_not_opened(tmp_path: Path) -> None:
     data = tar_of(
         [

@@ -271,6 +271,13 @@ def test_terms_and_definitions_that_multiply() -> None:
     assert lines(items) == ["after"]
 
 
+@pytest.mark.parametrize("tag", ["td<rowspan=2", 't"a', "fq[ƒ", "a:b:c"])
+def test_names_that_are_none_in_xml(tag: str) -> None:
+    """Found by mutation: such names break the parser's own splitting of names."""
+    items = page(f"<p>one</p><table><tr><{tag}>two</td></tr></table><svg><{tag}>x</svg>")
+    assert lines(items)[0] == "one"
+
+
 def test_xhtml_in_an_xml_file() -> None:
     text = f'<html xmlns="http://www.w3.org/1999/xhtml"><body><h1>1.1 Head</h1><p>{NAME}</p></body></html>'
     items = read("a.xml", text.encode())
