@@ -92,7 +92,7 @@ def relations(archive: Archive, part: str) -> tuple[Relation, ...]:
     path = posixpath.join(folder, "_rels", name + ".rels")
     if path not in archive:
         return ()
-    found = []
+    found: list[Relation] = []
     for node in parse_xml(archive.read(path)):
         if local(node) != "Relationship":
             continue
