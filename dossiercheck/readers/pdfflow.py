@@ -94,10 +94,16 @@ def blocks(pieces: Sequence[Piece]) -> list[Block]:
             lines = found[-1].lines
             last = lines[-1]
             gap = piece.box[0] - last.box[2]
-            if on_one_line(last, piece) and -0.5 * piece.size < gap < 3 * piece.size:
+            if (
+                on_one_line(last, piece)
+                and gap > -0.5 * piece.size
+                and (gap < 3 * piece.size or _bridged(lines[-4:-1], last, piece))
+            ):
                 lines[-1] = beside(last, piece, " " if gap > 0.08 * last.size else "")
                 found[-1].box = union(found[-1].box, piece.box)
                 continue
+            _mend(found, piece)
+            last = found[-1].lines[-1]
             if _goes_on(found[-1], last, piece):
                 found[-1].add(piece)
                 continue
@@ -105,6 +111,28 @@ def blocks(pieces: Sequence[Piece]) -> list[Block]:
         block.add(piece)
         found.append(block)
     return found
+
+
+def _bridged(lines: Sequence[Piece], left: Piece, right: Piece) -> bool:
+    """Whether a gap in a line is one of justified text: a line of the same block goes over it."""
+    return any(line.box[0] < left.box[2] and line.box[2] > right.box[0] for line in lines)
+
+
+def _mend(found: list[Block], piece: Piece) -> None:
+    """Put together the first line of a paragraph that a gap of justified text cut in two, when
+    the line under it goes over the gap."""
+    while len(found) > 1 and len(found[-1].lines) == 1:
+        left, right = found[-2].lines[-1], found[-1].lines[0]
+        if not (
+            on_one_line(left, right)
+            and left.box[2] <= right.box[0]
+            and _bridged([piece], left, right)
+            and 0 < piece.box[3] - right.box[3] < 2.0 * piece.size
+        ):
+            return
+        found[-2].lines[-1] = beside(left, right)
+        found[-2].box = union(found[-2].box, right.box)
+        found.pop()
 
 
 def _goes_on(block: Block, last: Piece, piece: Piece) -> bool:
