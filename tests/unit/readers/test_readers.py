@@ -27,7 +27,7 @@ def test_by_suffix(name: str, module: str) -> None:
     assert reader.__module__ == f"dossiercheck.readers.{module}"
 
 
-@pytest.mark.parametrize("name", ["a.pdf", "csv", "a.sdf/readme", "a.", ".csv.bak"])
+@pytest.mark.parametrize("name", ["a.xyz", "csv", "a.sdf/readme", "a.", ".csv.bak"])
 def test_nobody_answers(name: str) -> None:
     assert reader_for(name) is None
 
