@@ -16,6 +16,7 @@ from dossiercheck.stereo.cip.engine import Ranked, rank_all
 from dossiercheck.stereo.cip.molecule import molecule_of
 from dossiercheck.stereo.cip.readoff import read_off
 from dossiercheck.stereo.cip.source import Source, drawn_of, source_of
+from dossiercheck.stereo.cip.words import Namer, namer_for
 from dossiercheck.stereo.structure import Structure, Unit
 
 
@@ -52,8 +53,9 @@ def descriptors(structure: Structure) -> tuple[Descriptor, ...]:
     source = source_of(structure)
     drawn = drawn_of(structure, source.molecule) if structure.dimension else None
     library = {tuple(sorted(unit.atoms)): unit for unit in structure.units}
+    name = namer_for(structure)
     found = [
-        _joined(source, ranked, library, drawn, structure.doubt)
+        _joined(source, ranked, library, drawn, structure.doubt, name)
         for ranked in rank_all(source)
         if ranked.descriptor or ranked.doubt or _key(ranked.unit.ends) in library
     ]
@@ -135,11 +137,12 @@ def _joined(
     library: dict[tuple[int, ...], Unit],
     drawn: Drawn | None,
     given_up: str,
+    name: Namer,
 ) -> Descriptor:
     other = library.get(_key(ranked.unit.ends))
     letter = other.descriptor if other else ""
     derivation = derive(source.molecule, ranked) if ranked.descriptor else None
-    reading = read_off(source.molecule, ranked, derivation, drawn) if derivation is not None else ()
+    reading = read_off(ranked, derivation, drawn, name) if derivation is not None else ()
     note = ranked.doubt
     if not note and ranked.descriptor != letter:
         if letter:

@@ -164,7 +164,11 @@ def from_inchi(text: str) -> Structure:
         mol = Chem.MolFromInchi(text)
         if mol is None or mol.GetNumAtoms() == 0:
             raise Unreadable(_sentence(said))
-    return from_smiles(Chem.MolToSmiles(mol))
+    smiles = Chem.MolToSmiles(mol)
+    written = mol.GetProp("_smilesAtomOutputOrder").strip("[],").split(",")
+    structure = from_smiles(smiles)
+    structure.positions = tuple(int(atom) + 1 for atom in written if atom)
+    return structure
 
 
 @contextmanager

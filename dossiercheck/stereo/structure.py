@@ -76,8 +76,9 @@ class Structure:
     """A molecule with its marks. Atom numbers everywhere are the source's own, 0-based.
 
     `dimension` is 0 (no coordinates), 2 or 3; `locants` is a label for each atom where a name
-    gave them; `doubt` says why descriptors cannot be trusted, "" where they can; `described` is
-    what `descriptors.confirmed` keeps.
+    gave them; `positions` are the source's own numbers of the atoms, 1-based, where they run in
+    another order (an InChI); `doubt` says why descriptors cannot be trusted, "" where they can;
+    `described` is what `descriptors.confirmed` keeps.
     """
 
     mol: Chem.Mol
@@ -86,6 +87,7 @@ class Structure:
     groups: tuple[StereoGroup, ...] = ()
     marks: tuple[Mark, ...] = ()
     locants: tuple[str, ...] = ()
+    positions: tuple[int, ...] = ()
     doubt: str = field(default="", init=False)
     described: dict[tuple[int, ...], Any] | None = field(default=None, init=False)
 
