@@ -132,6 +132,7 @@ def extend(branch: Branch, depth: int) -> None:
                 kids.sort(key=_number, reverse=True)
             levels.append((tuple([kid.number for kid in kids]),))
             continue
+        branch.node.tree.spend(len(kids))
         below = level - 1
         tall = [kid for kid in kids if not kid.whole or len(kid.levels) > below]
         for kid in tall:
@@ -183,6 +184,7 @@ class Keys:
         found = known.get(label)
         if found is not None:
             return found
+        branch.node.tree.spend(len(branch.below()) + 1)
         levels: Key = [((prop(branch),),)]
         keyed = [
             ([self.of(kid, rule) for rule in before], self.spheres(kid, prop, before, name))

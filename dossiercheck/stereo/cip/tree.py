@@ -14,7 +14,7 @@ Level = tuple[tuple[float, ...], ...]
 
 
 class TooLarge(Exception):
-    """The tree has more nodes than the budget allows."""
+    """The tree takes more steps to unfold and to rank than the budget allows."""
 
 
 class Branch:
@@ -115,7 +115,7 @@ class Tree:
     """The digraph of one root atom, unfolded as far as it is looked at."""
 
     def __init__(self, molecule: Molecule, root: int, budget: int) -> None:
-        """`budget` bounds the nodes; `labelled` is set once a node has an auxiliary descriptor."""
+        """`budget` bounds the steps, one for each branch unfolded or ranked; `labelled` is set once a node has an auxiliary descriptor."""
         self.molecule = molecule
         self.left = budget
         self.labelled = False
@@ -145,10 +145,14 @@ class Tree:
             add(Node(self, atom, node, MULTIPLE, mean, sphere))
         for _ in range(molecule.hydrogens[atom]):
             add(Node(self, HYDROGEN, node, REAL, 1, sphere + 1))
-        self.left -= len(kids)
+        self.spend(len(kids))
+        return kids
+
+    def spend(self, steps: int) -> None:
+        """Take steps from the budget; raises `TooLarge` when there are none left."""
+        self.left -= steps
         if self.left < 0:
             raise TooLarge
-        return kids
 
     @staticmethod
     def _sphere_of(node: Node, atom: int) -> int:
