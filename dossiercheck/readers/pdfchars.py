@@ -10,10 +10,10 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator
-from ctypes import byref, c_ushort
+from ctypes import byref, c_double, c_ushort
 from dataclasses import dataclass
 from itertools import pairwise
-from math import pi
+from math import hypot, pi
 from statistics import median
 from typing import Any
 
@@ -55,10 +55,7 @@ _UNFOLD = str.maketrans({**_SYMBOLS, **_LIGATURES})
 _FOLDED = re.compile("[\uf000-\uf0ff\ufb00-\ufb04]")
 # Text that is neither filled nor stroked: under the picture of a scanned page, mostly.
 HIDDEN = (pdfium.FPDF_TEXTRENDERMODE_INVISIBLE, pdfium.FPDF_TEXTRENDERMODE_CLIP)
-_WIDE = 0.62  # mean width of a character over the height of its box, above which gaps are likely
-
-
-_Found = tuple[re.Match[str], Box, Box]  # a word, the boxes of its first and last character
+_WIDE = 0.7  # mean width of a character over the size of the type, above which gaps are likely
 
 
 @dataclass(slots=True)
@@ -81,6 +78,9 @@ class _Characters:
         self.count: int = pdfium.FPDFText_CountChars(textpage)
         self._rect = pdfium.FS_RECTF()
         self._reference = byref(self._rect)
+        self._x, self._y, self._matrix = c_double(), c_double(), pdfium.FS_MATRIX()
+        self._to_x, self._to_y = byref(self._x), byref(self._y)
+        self._to_matrix = byref(self._matrix)
         self.text, self.sure = self._read()
 
     def _read(self) -> tuple[str, bool]:
@@ -105,6 +105,17 @@ class _Characters:
         rect = self._rect
         pdfium.FPDFText_GetLooseCharBox(self.page, index, self._reference)
         return rect.left, rect.bottom, rect.right, rect.top
+
+    def baseline(self, index: int) -> float:
+        pdfium.FPDFText_GetCharOrigin(self.page, index, self._to_x, self._to_y)
+        return self._y.value
+
+    def size(self, index: int) -> float:
+        """The size of the type as it is shown, in points."""
+        size: float = pdfium.FPDFText_GetFontSize(self.page, index)
+        if not pdfium.FPDFText_GetMatrix(self.page, index, self._to_matrix):
+            return max(size, 0.1)
+        return max(size * hypot(self._matrix.c, self._matrix.d), 0.1)
 
     def objects(self, start: int, end: int) -> int:
         """How many text objects the characters come from."""
@@ -154,23 +165,25 @@ def _line(characters: _Characters, start: int, end: int, found: PageText) -> Non
     turn = characters.direction(start) if _seems_turned(first, last, end - start) else 0
     found.turned[turn] += end - start
     text = characters.text[start:end]
+    size = characters.size(start)
     if _is_broken(characters, text, start, end):
-        box = _union(first, last)
-        found.unmapped.append(((_shown(text), box, first[3] - first[1], ()), turn))
+        found.unmapped.append(((_shown(text), _union(first, last), size, ()), turn))
         return
-    height = first[3] - first[1]
     plain = (
-        turn == 0
-        and last[2] - first[0] < _WIDE * height * (end - start)
-        and characters.objects(start, end) <= 1
+        last[2] - first[0] < _WIDE * size * (end - start) and characters.objects(start, end) <= 1
     )
     if turn:
-        height = abs(first[2] - first[0]) if turn % 2 else height
-        found.pieces.append(((_shown(text), _union(first, last), height, ()), turn))
+        found.pieces.append(((_shown(text), _union(first, last), size, ()), turn))
     elif plain and not _SPACED.search(text):
-        found.pieces.append((_simple(characters, text, start, first, last), 0))
+        box = _type_box(first[0], last[2], characters.baseline(start), size)
+        found.pieces.append(((_shown(text), box, size, _known(characters, text, start)), 0))
     else:
         found.pieces += [(piece, 0) for piece in _by_words(characters, text, start)]
+
+
+def _type_box(left: float, right: float, baseline: float, size: float) -> Box:
+    """As high as type of that size is, whatever the font says of itself: many say nothing."""
+    return left, baseline - 0.22 * size, right, baseline + 0.8 * size
 
 
 def _seems_turned(first: Box, last: Box, count: int) -> bool:
@@ -182,9 +195,8 @@ def _is_broken(characters: _Characters, text: str, start: int, end: int) -> bool
     """Whether characters have no place in Unicode: a text object has one font, so its first and
     last character speak for it, and every one is asked where something looks strange."""
     if not characters.sure or _STRANGE.search(text.translate(_UNFOLD)):
-        wrong = sum(characters.unmapped(i) for i in range(start, end) if characters.text[i] != " ")
-        strange = len(_STRANGE.findall(text.translate(_UNFOLD)))
-        return wrong > 0 or strange > 0
+        wrong = any(characters.unmapped(i) for i in range(start, end) if characters.text[i] != " ")
+        return wrong or _STRANGE.search(text.translate(_UNFOLD)) is not None
     return characters.unmapped(start) or characters.unmapped(end - 1)
 
 
@@ -195,48 +207,74 @@ def _shown(text: str) -> str:
     return text.translate(_UNFOLD) if _FOLDED.search(text) else text
 
 
-def _simple(characters: _Characters, text: str, start: int, first: Box, last: Box) -> Piece:
-    words = []
-    if _NAMELIKE.search(text) and not _FOLDED.search(text):
-        for word in _NAMELIKE.finditer(text):
-            left = characters.box(start + word.start())[0]
-            right = characters.box(start + word.end() - 1)[2]
-            words.append((word.start(), word.end(), left, right))
-    return _shown(text), _union(first, last), first[3] - first[1], tuple(words)
+def _known(
+    characters: _Characters, text: str, start: int
+) -> tuple[tuple[int, int, float, float], ...]:
+    """Where the words stand that may be names."""
+    if not _NAMELIKE.search(text) or _FOLDED.search(text) or "\u2060" in text:
+        return ()
+    return tuple(
+        (
+            word.start(),
+            word.end(),
+            characters.box(start + word.start())[0],
+            characters.box(start + word.end() - 1)[2],
+        )
+        for word in _NAMELIKE.finditer(text)
+    )
 
 
 def _union(one: Box, two: Box) -> Box:
     return min(one[0], two[0]), min(one[1], two[1]), max(one[2], two[2]), max(one[3], two[3])
 
 
+@dataclass(slots=True)
+class _Word:
+    """A word from `start` to `end` of the page's characters, where it stands and how large."""
+
+    text: str
+    start: int
+    end: int
+    left: float
+    right: float
+    baseline: float
+    size: float
+
+
 def _by_words(characters: _Characters, text: str, start: int) -> Iterator[Piece]:
     """A line of several text objects: cut where a gap is wide, raised digits marked."""
-    boxes: list[_Found] = []
+    words = []
     for match in _WORD.finditer(text):
-        first = characters.box(start + match.start())
-        last = characters.box(start + match.end() - 1)
-        boxes.append((match, first, last))
-    for row in _rows(boxes):
+        begin, end = start + match.start(), start + match.end()
+        words.append(
+            _Word(
+                match[0],
+                begin,
+                end,
+                characters.box(begin)[0],
+                characters.box(end - 1)[2],
+                characters.baseline(begin),
+                characters.size(begin),
+            )
+        )
+    for row in _rows(words):
         base = _base(row)
-        height = base[3] - base[1]
-        words: list[tuple[str, Box]] = []
-        for match, first, last in row:
-            words += _word(characters, match, start, first, last, base)
-        words = _letters_joined(words) if _SPACED.search(text) else words
-        group: list[tuple[str, Box]] = []
-        for word in words:
-            if group and word[1][0] - group[-1][1][2] > height:
-                yield _joined(group, height)
+        parts = [part for word in row for part in _parts(characters, word, base)]
+        parts = _letters_joined(parts) if _SPACED.search(text) else parts
+        group: list[_Word] = []
+        for part in parts:
+            if group and part.left - group[-1].right > 1.1 * base.size:
+                yield _joined(group, base)
                 group = []
-            group.append(word)
-        yield _joined(group, height)
+            group.append(part)
+        yield _joined(group, base)
 
 
-def _rows(words: list[_Found]) -> Iterator[list[_Found]]:
+def _rows(words: list[_Word]) -> Iterator[list[_Word]]:
     """The library may take two lines for one: where it goes back to the left, one ends."""
-    row: list[_Found] = []
+    row: list[_Word] = []
     for word in words:
-        if row and word[1][0] < row[-1][1][0] - 0.5:
+        if row and word.left < row[-1].left - 0.5:
             yield row
             row = []
         row.append(word)
@@ -244,74 +282,77 @@ def _rows(words: list[_Found]) -> Iterator[list[_Found]]:
         yield row
 
 
-def _base(words: list[_Found]) -> Box:
-    """The box that speaks for the line: of the height that most of its characters have."""
+def _base(words: list[_Word]) -> _Word:
+    """The word that speaks for the line: of the size that most of its characters have."""
     weights: dict[int, int] = {}
-    for match, first, _ in words:
-        height = round(first[3] - first[1])
-        weights[height] = weights.get(height, 0) + len(match[0])
-    usual = max(weights, key=lambda height: (weights[height], height))
-    return next(box for _, box, _ in words if round(box[3] - box[1]) == usual)
+    for word in words:
+        size = round(10 * word.size)
+        weights[size] = weights.get(size, 0) + len(word.text)
+    usual = max(weights, key=lambda size: (weights[size], size))
+    return next(word for word in words if round(10 * word.size) == usual)
 
 
-def _word(
-    characters: _Characters, match: re.Match[str], start: int, first: Box, last: Box, base: Box
-) -> Iterator[tuple[str, Box]]:
+def _parts(characters: _Characters, word: _Word, base: _Word) -> Iterator[_Word]:
     """One word, or several where a wide gap inside it has no space."""
-    text = match[0]
-    begin, end = start + match.start(), start + match.end()
-    height = base[3] - base[1]
-    small = min(first[3] - first[1], last[3] - last[1]) < 0.9 * height
-    if not small and characters.objects(begin, end) <= 1:
-        yield _shown(text), _union(first, last)
+    if characters.objects(word.start, word.end) <= 1:
+        text = _raised(_shown(word.text), word.baseline, word.size, base)
+        yield _Word(text, word.start, word.end, word.left, word.right, word.baseline, word.size)
         return
-    part, box, previous = "", None, None
-    for index in range(begin, end):
-        here = characters.box(index)
-        character = _shown(characters.text[index])
-        if here[3] - here[1] < 0.9 * height and here[1] > base[1] + 0.15 * height:
-            character = character.translate(_RAISED)
-        if previous and box and not -height < here[0] - previous[2] <= height:
-            yield part, box
-            part, box = "", None
-        part += character
-        box = _union(box, here) if box else here
-        previous = here
-    if box:
-        yield part, box
+    part: _Word | None = None
+    for index in range(word.start, word.end):
+        left, _, right, _ = characters.box(index)
+        baseline, size = characters.baseline(index), characters.size(index)
+        text = _raised(_shown(characters.text[index]), baseline, size, base)
+        if part and -base.size < left - part.right <= base.size:
+            part.text += text
+            part.end, part.right = index + 1, max(part.right, right)
+            continue
+        if part:
+            yield part
+        part = _Word(text, index, index + 1, left, right, baseline, size)
+    if part:
+        yield part
 
 
-def _letters_joined(words: list[tuple[str, Box]]) -> list[tuple[str, Box]]:
+def _raised(text: str, baseline: float, size: float, base: _Word) -> str:
+    """Small type above the baseline as superscripts where Unicode has them."""
+    if size < 0.93 * base.size and baseline > base.baseline + 0.12 * base.size:
+        return text.translate(_RAISED)
+    return text
+
+
+def _letters_joined(words: list[_Word]) -> list[_Word]:
     """Letter-spaced words put together: the usual gap is that between letters, a wider one that
     between words."""
-    gaps = [two[1][0] - one[1][2] for one, two in pairwise(words)]
+    gaps = [two.left - one.right for one, two in pairwise(words)]
     singles = [
         gap
-        for gap, one, two in zip(gaps, words, words[1:], strict=False)
-        if len(one[0]) == 1 == len(two[0])
+        for gap, (one, two) in zip(gaps, pairwise(words), strict=True)
+        if len(one.text) == 1 == len(two.text)
     ]
     usual = median(singles) if singles else 0.0
     joined = words[:1]
-    for gap, one, two in zip(gaps, words, words[1:], strict=False):
-        if len(one[0]) == 1 == len(two[0]) and gap < 1.5 * usual + 0.1:
-            joined[-1] = (joined[-1][0] + two[0], _union(joined[-1][1], two[1]))
+    for gap, (one, two) in zip(gaps, pairwise(words), strict=True):
+        if len(one.text) == 1 == len(two.text) and gap < 1.5 * usual + 0.1:
+            last = joined[-1]
+            last.text, last.end, last.right = last.text + two.text, two.end, two.right
         else:
             joined.append(two)
     return joined
 
 
-def _joined(words: list[tuple[str, Box]], height: float) -> Piece:
+def _joined(words: list[_Word], base: _Word) -> Piece:
     """A piece of words, with a space between those that a gap parts."""
     text = ""
     known = []
-    box = words[0][1]
-    right = None
-    for word, place in words:
-        if right is not None and (place[0] - right > 0.08 * height or text[-1:].isalnum()):
-            text += " "
-        known.append((len(text), len(text) + len(word), place[0], place[2]))
-        text += word
-        right = place[2]
-        box = _union(box, place)
-    tall = max(place[3] - place[1] for _, place in words)
-    return text, box, min(tall, height), tuple(known)
+    for number, word in enumerate(words):
+        if number:
+            gap = word.left - words[number - 1].right
+            if gap > 0.08 * base.size or text[-1:].isalnum():
+                text += " "
+        known.append((len(text), len(text) + len(word.text), word.left, word.right))
+        text += word.text
+    size = base.size if len(words) > 1 else words[0].size
+    baseline = base.baseline if len(words) > 1 else words[0].baseline
+    box = _type_box(words[0].left, max(word.right for word in words), baseline, size)
+    return text, box, size, tuple(known)
