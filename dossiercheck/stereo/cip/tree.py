@@ -115,7 +115,8 @@ class Tree:
     """The digraph of one root atom, unfolded as far as it is looked at."""
 
     def __init__(self, molecule: Molecule, root: int, budget: int) -> None:
-        """`budget` bounds the steps, one for each branch unfolded or ranked; `labelled` is set once a node has an auxiliary descriptor."""
+        """`budget` bounds the steps, one for each branch unfolded or ranked; `labelled` is set
+        once a node has an auxiliary descriptor."""
         self.molecule = molecule
         self.left = budget
         self.labelled = False
