@@ -169,13 +169,16 @@ def _line(characters: _Characters, start: int, end: int, found: PageText) -> Non
     if _is_broken(characters, text, start, end):
         found.unmapped.append(((_shown(text), _union(first, last), size, ()), turn))
         return
+    baseline = characters.baseline(start)
     plain = (
-        last[2] - first[0] < _WIDE * size * (end - start) and characters.objects(start, end) <= 1
+        last[2] - first[0] < _WIDE * size * (end - start)
+        and characters.objects(start, end) <= 1
+        and abs(characters.baseline(end - 1) - baseline) < 0.5 * size  # it is one line, not two
     )
     if turn:
         found.pieces.append(((_shown(text), _union(first, last), size, ()), turn))
     elif plain and not _SPACED.search(text):
-        box = _type_box(first[0], last[2], characters.baseline(start), size)
+        box = _type_box(first[0], last[2], baseline, size)
         found.pieces.append(((_shown(text), box, size, _known(characters, text, start)), 0))
     else:
         found.pieces += [(piece, 0) for piece in _by_words(characters, text, start)]
