@@ -49,17 +49,15 @@ def wedge_not_stereogenic(case: Case, params: Params) -> Iterator[Observation]:
 def wedge_ambiguous(case: Case, params: Params) -> Iterator[Observation]:
     """The wedges at a stereogenic centre can be read in two ways or contradict each other."""
     for reading, structure in _drawn(case):
-        centres = _centres(structure) | _open(structure) if structure.marks else set()
-        for atom, why in ambiguous_wedges(structure).items():
-            if atom in centres:
-                yield Observation(
-                    {
-                        "atom": f"{structure.mol.GetAtomWithIdx(atom).GetSymbol()} {atom + 1}",
-                        "reason": why,
-                    },
-                    (exhibit(reading, atoms={atom: "?"}),),
-                    case.unit_ids.get(frozenset((atom,)), "") if reading is case.reference else "",
-                )
+        for atom, why in ambiguous_wedges(structure, _centres(structure)).items():
+            yield Observation(
+                {
+                    "atom": f"{structure.mol.GetAtomWithIdx(atom).GetSymbol()} {atom + 1}",
+                    "reason": why,
+                },
+                (exhibit(reading, atoms={atom: "?"}),),
+                case.unit_ids.get(frozenset((atom,)), "") if reading is case.reference else "",
+            )
 
 
 @check(needs=("drawing",), fields=("atoms", "count"))

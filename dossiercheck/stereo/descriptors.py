@@ -13,7 +13,7 @@ from dataclasses import dataclass
 from dossiercheck.stereo.cip.derivation import Derivation, derive
 from dossiercheck.stereo.cip.drawn import Drawn
 from dossiercheck.stereo.cip.engine import Ranked, rank_all
-from dossiercheck.stereo.cip.molecule import molecule_of
+from dossiercheck.stereo.cip.molecule import around
 from dossiercheck.stereo.cip.readoff import read_off
 from dossiercheck.stereo.cip.source import Source, drawn_of, source_of
 from dossiercheck.stereo.cip.words import Namer, namer_for
@@ -88,11 +88,14 @@ def own_units(structure: Structure) -> tuple[Unit, ...]:
     )
 
 
-def ambiguous_wedges(structure: Structure) -> dict[int, str]:
-    """Wedged atoms (0-based) of a drawing whose wedges have no one meaning, with the reason."""
-    if structure.dimension != 2 or not structure.marks:
+def ambiguous_wedges(structure: Structure, centres: Iterable[int]) -> dict[int, str]:
+    """Those of a drawing's stereogenic centres (0-based) whose wedges have no one meaning, with
+    the reason."""
+    wedged = {mark.begin for mark in structure.marks if mark.style in ("wedge", "hash")}
+    wedged &= set(centres)
+    if structure.dimension != 2 or not wedged:
         return {}
-    return drawn_of(structure, molecule_of(structure.mol)).ambiguous()
+    return drawn_of(structure, around(structure.mol, wedged)).ambiguous(wedged)
 
 
 def doubt_at(structure: Structure, atoms: Iterable[int]) -> str:

@@ -80,11 +80,11 @@ class Drawn:
         yield from wound
         yield from self._axes({atom for helix in wound for atom in helix.chain})
 
-    def ambiguous(self) -> dict[int, str]:
-        """The wedged atoms of a drawing whose wedges can be read in two ways or contradict each
-        other, with the reason; nothing else is looked at."""
-        for atom in sorted(self.raised):
-            if atom not in self.vague and can_be_centre(self.molecule, atom):
+    def ambiguous(self, centres: Iterable[int]) -> dict[int, str]:
+        """Which of these wedged stereogenic centres can be read in two ways, or have wedges that
+        contradict each other, with the reason."""
+        for atom in sorted(centres):
+            if atom not in self.vague and len(self.molecule.near[atom]) in (3, 4):
                 self._centre(atom)
         return {atoms[0]: why for atoms, why in self.unclear.items()}
 

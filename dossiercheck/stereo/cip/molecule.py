@@ -65,10 +65,11 @@ class Molecule:
 
 def molecule_of(mol: Chem.Mol) -> Molecule:
     """The library's molecule in the engine's terms; its stereo marks are left behind."""
-    atoms = list(mol.GetAtoms())
+    # The library's own sequences of atoms and bonds are slow to walk.
+    atoms = [mol.GetAtomWithIdx(number) for number in range(mol.GetNumAtoms())]
     bonds = [
         (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx(), bond.GetBondType(), bond.IsInRing())
-        for bond in mol.GetBonds()
+        for bond in map(mol.GetBondWithIdx, range(mol.GetNumBonds()))
     ]
     kekule: dict[tuple[int, int], int] = {}
     if any(bond[2] == _AROMATIC for bond in bonds):
@@ -76,7 +77,7 @@ def molecule_of(mol: Chem.Mol) -> Molecule:
         Chem.Kekulize(copy)
         kekule = {
             (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx()): _ORDERS.get(bond.GetBondType(), 1)
-            for bond in copy.GetBonds()
+            for bond in map(copy.GetBondWithIdx, range(copy.GetNumBonds()))
         }
     number = [atom.GetAtomicNum() for atom in atoms]
     near: list[dict[int, int]] = [{} for _ in atoms]
@@ -100,6 +101,26 @@ def molecule_of(mol: Chem.Mol) -> Molecule:
         ring=frozen,
         aromatic=frozenset(atom.GetIdx() for atom in atoms if atom.GetIsAromatic()),
         duplicate=averaged(number, near, frozen),
+    )
+
+
+def around(mol: Chem.Mol, atoms: Iterable[int]) -> Molecule:
+    """The same, cheaply, for what stands around the given atoms only; the rest is left empty and
+    every bond counts as single."""
+    size = mol.GetNumAtoms()
+    near: list[dict[int, int]] = [{} for _ in range(size)]
+    hydrogens, ring = [0] * size, set()
+    for index in atoms:
+        atom = mol.GetAtomWithIdx(index)
+        hydrogens[index] = atom.GetTotalNumHs()
+        for bond in atom.GetBonds():
+            other = bond.GetOtherAtomIdx(index)
+            near[index][other] = 1
+            if bond.IsInRing():
+                ring.add((min(index, other), max(index, other)))
+    nothing: list[int] = []
+    return Molecule(
+        [], nothing, nothing, nothing, hydrogens, near, frozenset(ring), frozenset(), []
     )
 
 

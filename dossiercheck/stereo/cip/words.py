@@ -20,6 +20,7 @@ from dossiercheck.stereo.structure import Structure
 Namer = Callable[[int, str], str]
 
 _ELEMENTS = Chem.GetPeriodicTable()
+_GREEK = {"alpha": "α", "beta": "β", "gamma": "γ", "delta": "δ", "epsilon": "ε", "omega": "ω"}
 _RAISED = str.maketrans("0123456789", "⁰¹²³⁴⁵⁶⁷⁸⁹")
 _SUBJECT = {
     "3": ("Z before E before none", "no double-bond descriptor"),
@@ -45,7 +46,7 @@ def namer(
         called = element(elements[atom - 1])
         locant = locants[atom - 1] if locants else ""
         if locant and times[locant] == 1:
-            return f"{called}-{locant}"
+            return locant if locant[0].isupper() else f"{called}-{_GREEK.get(locant, locant)}"
         return f"{called}{positions[atom - 1] if positions else atom}"
 
     return name
