@@ -8,13 +8,15 @@ a text beside it. Strokes take the colour of the surrounding text, so print and 
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 from html import escape
 from math import isfinite
 from statistics import median
 
-from dossiercheck.model import Drawing, DrawnAtom, DrawnBond
+from dossiercheck.model import Drawing, DrawnAtom, DrawnBond, Sight
 from dossiercheck.report.bonds import BOND, Ends, number, strokes
 from dossiercheck.report.labels import FONT, Box, Label, Point, label_of, width_of
+from dossiercheck.report.ranks import described, overlay
 from dossiercheck.report.rings import neighbours_of, ring_of_each
 from dossiercheck.report.space import Segment, apart, free_place, leave, middle
 from dossiercheck.report.visible import one_line
@@ -25,12 +27,15 @@ _MARK = 12.0
 _RING = 9.5
 
 
-def svg(drawing: Drawing, title: str) -> str:
-    """The drawing as one `<svg>` element with a title and a description.
+def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
+    """The drawing as one `<svg>` element with a title and a description; with `sight` a unit is
+    marked as a derivation reads it, and nothing else.
 
     Coordinates that cannot be shown (not numbers, all the same, without bound) give a note in
     place of a structure: a drawing that is not the source's would be worse than none.
     """
+    if sight is not None:
+        drawing = _only(drawing, sight)
     atoms = drawing.atoms
     bonds = [one for one in drawing.bonds if _usable(one, len(atoms))]
     points = _pixels(atoms, bonds)
@@ -58,8 +63,29 @@ def svg(drawing: Drawing, title: str) -> str:
     marks, mark_boxes = _marks(atoms, halos, taken, segments)
     if marks:
         body.append(f'<g class="marktext" font-size="{_MARK:g}" font-weight="700">{marks}</g>')
+    told = _description(drawing)
+    if sight is not None:
+        own = [label.boxes if label else () for label in labels]
+        over = overlay(sight, points, halos, taken, segments, own)
+        body.append(f'<g class="sight">{"".join(over.parts)}</g>')
+        mark_boxes += over.boxes
+        told = f"{told} {described(sight)}"
     frame = _frame([(x, y, x, y) for x, y in points] + taken + mark_boxes)
-    return _element(frame, title, _description(drawing), "".join(body))
+    return _element(frame, title, told, "".join(body))
+
+
+def _only(drawing: Drawing, sight: Sight) -> Drawing:
+    """The drawing with no mark but the rings about a unit."""
+    atoms = tuple(
+        replace(atom, highlight=index in sight.atoms, mark="")
+        for index, atom in enumerate(drawing.atoms)
+    )
+    unit = set(sight.atoms)
+    bonds = tuple(
+        replace(bond, highlight=len(unit) > 1 and {bond.begin, bond.end} == unit)
+        for bond in drawing.bonds
+    )
+    return replace(drawing, atoms=atoms, bonds=bonds)
 
 
 def _usable(bond: DrawnBond, atoms: int) -> bool:
