@@ -1,14 +1,14 @@
 """Text over line ends that the layout made: where names in it begin and end.
 
-At such a line end a word may go on, with a hyphen or without. The search for names sees one
-character there, a joint where the name certainly goes on and a space where it may have ended; the
-text itself is not changed, so that spans count in it. How the lines join is for `names` to say.
+At such a line end a word may go on, with a hyphen or without. The search for names sees nothing
+there where the name certainly goes on, and a space where it may have ended; the text itself is
+not changed, so that spans count in it. How the lines join is for `names` to say.
 """
 
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
@@ -23,7 +23,6 @@ from dossiercheck.language.running import (
 )
 from dossiercheck.model import Cell, Evidence, Passage, Role, Unread
 
-_JOINT = "\u2060"
 _END = re.compile(rf"[A-Za-zα-ω\d)\]}}{re.escape(PRIMES)}]")
 _CUT_WORD = re.compile(r"(?<=[A-Za-z])([-‐\u00ad]\n)(?=[a-z])")
 _TIGHT = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.REGISTRY, Role.FORMULA)
@@ -54,21 +53,47 @@ def stretched(text: str) -> Iterator[Stretched]:
         for candidate in candidates(text):
             yield Stretched(candidate, ())
         return
-    view = _view(text)
-    cut = list(_without_hyphens(text, view))
-    for candidate in candidates(view):
-        others = dict.fromkeys([*_beyond(text, view, candidate), *_near(cut, candidate)])
+    ends = [at for at, character in enumerate(text) if character == "\n"]
+    joints = frozenset(at for at in ends if _goes_on(text, at))
+    cut = list(_seen(text, joints | _hyphens(text)))
+    for candidate in _seen(text, joints):
+        near = [one for one in cut if _overlap(one, candidate)]
+        near += _beyond(text, joints, candidate)
+        others = dict.fromkeys((one.start, one.end) for one in near)
         others.pop((candidate.start, candidate.end), None)
         yield Stretched(candidate, tuple(others))
 
 
-def _view(text: str) -> str:
-    """The text with each line end as a joint or a space."""
-    characters = list(text)
-    for at, character in enumerate(text):
-        if character == "\n":
-            characters[at] = _JOINT if _goes_on(text, at) else " "
-    return "".join(characters)
+def _seen(text: str, gone: frozenset[int]) -> Iterator[Candidate]:
+    """The candidates when some characters are passed over and other line ends are spaces."""
+    offsets = [at for at in range(len(text)) if at not in gone]
+    view = "".join(text[at] for at in offsets).replace("\n", " ")
+    for one in candidates(view):
+        yield Candidate(offsets[one.start], offsets[one.end - 1] + 1)
+
+
+def _beyond(text: str, joints: frozenset[int], candidate: Candidate) -> Iterator[Candidate]:
+    """The candidate with the word beyond a line end that it touches."""
+    edges = [
+        at
+        for at in (candidate.end, candidate.start - 1)
+        if 0 <= at < len(text) and text[at] == "\n" and at not in joints
+    ]
+    for places in (edges[:1], edges[1:], edges):
+        if places:
+            for other in _seen(text, joints.union(places)):
+                if _overlap(other, candidate):
+                    yield other
+
+
+def _hyphens(text: str) -> frozenset[int]:
+    """The hyphens that a layout may have put into words, with their line ends: "hydro-" and
+    "chloride" are a salt's word only without."""
+    return frozenset(at for match in _CUT_WORD.finditer(text) for at in range(*match.span(1)))
+
+
+def _overlap(one: Candidate, two: Candidate) -> bool:
+    return one.start < two.end and one.end > two.start
 
 
 def _goes_on(text: str, at: int) -> bool:
@@ -93,38 +118,6 @@ def _in_bracket_of_a_name(before: str) -> bool:
     if sum(c in "([{" for c in word) <= sum(c in ")]}" for c in word):
         return False
     return word[0] not in "([{" or re.search(r"[\d-]", word) is not None
-
-
-def _beyond(text: str, view: str, candidate: Candidate) -> Iterator[tuple[int, int]]:
-    """The extents with the word beyond a line end that the candidate touches."""
-    edges = [
-        at
-        for at in (candidate.end, candidate.start - 1)
-        if 0 <= at < len(text) and text[at] == "\n" and view[at] == " "
-    ]
-    for places in (edges[:1], edges[1:], edges):
-        if not places:
-            continue
-        joined = list(view)
-        for at in places:
-            joined[at] = _JOINT
-        found = [(other.start, other.end) for other in candidates("".join(joined))]
-        yield from _near(found, candidate)
-
-
-def _without_hyphens(text: str, view: str) -> Iterator[tuple[int, int]]:
-    """The extents that candidates have when the hyphens that a layout may have put into words are
-    taken out: "hydro-" and "chloride" are a salt's word only so."""
-    gone = {at for match in _CUT_WORD.finditer(text) for at in range(*match.span(1))}
-    if not gone:
-        return
-    offsets = [at for at in range(len(view)) if at not in gone]
-    for candidate in candidates("".join(view[at] for at in offsets)):
-        yield offsets[candidate.start], offsets[candidate.end - 1] + 1
-
-
-def _near(found: Iterable[tuple[int, int]], candidate: Candidate) -> Iterator[tuple[int, int]]:
-    return (one for one in found if one[0] < candidate.end and one[1] > candidate.start)
 
 
 def loose_names(holder: Passage | Cell, start: int, end: int) -> Iterator[Evidence | Unread]:
