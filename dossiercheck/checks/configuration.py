@@ -6,12 +6,13 @@ from collections.abc import Iterator, Sequence
 
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
-from dossiercheck.concordance import Case, Pair, UnitView
+from dossiercheck.concordance import Case
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Kind, Role, State
 from dossiercheck.names.reading import Fault
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.structure import Structure, is_pyramidal_nitrogen
+from dossiercheck.views import Pair, UnitView
 
 # A fault of the name that leaves a unit without its descriptor explains the silence there; the
 # silence is then part of that finding and not one of its own.

@@ -7,10 +7,11 @@ from collections.abc import Iterator
 from dossiercheck.checks.configuration import called, of_kind
 from dossiercheck.checks.exhibits import exhibit
 from dossiercheck.checks.registry import Observation, Params, check
-from dossiercheck.concordance import Case, Pair
+from dossiercheck.concordance import Case
 from dossiercheck.model import Kind
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.formula import molecular_formula
+from dossiercheck.views import Pair
 
 _AMBIGUOUS = "APPEARS_AMBIGUOUS:"
 

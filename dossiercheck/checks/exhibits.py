@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
 
-from dossiercheck.concordance import UnitView
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Exhibit, Role
 from dossiercheck.stereo.drawing import drawing_of
+from dossiercheck.views import UnitView
 
 _TITLES = {
     Role.MOLFILE: "Drawing",

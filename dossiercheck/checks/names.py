@@ -7,10 +7,11 @@ from collections.abc import Iterator
 from dossiercheck.checks.configuration import OFFENCES, of_axis, silent_views, unit_of
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
-from dossiercheck.concordance import Case, Pair
+from dossiercheck.concordance import Case
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Exhibit, Role
 from dossiercheck.names.reading import Fault
+from dossiercheck.views import Pair
 
 
 def _faults(case: Case, slug: str) -> Iterator[tuple[Reading, Fault]]:
