@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field, replace
+from itertools import chain, islice
 from pathlib import Path
 
 from dossiercheck.interpretation import structure_of
@@ -52,12 +53,10 @@ class Answer:
     notes: tuple[str, ...] = ()
     refusal: str = ""
 
-    @property
-    def shown(self) -> tuple[Derived, ...]:
-        """The units as they are shown, beside `drawing`."""
+    def derived(self, drawing: Drawing | None = None) -> tuple[Derived, ...]:
+        """The units in sentences; with `drawing`, also as they are seen in it."""
         if self.structure is None:
             return ()
-        drawing = self.drawing
         return tuple(
             shown(
                 self.structure,
@@ -74,6 +73,25 @@ class Answer:
         return drawing_of(self.structure) if self.structure is not None else None
 
 
+@dataclass(slots=True)
+class Counted:
+    """Answers on their way to the printer, counted as they pass."""
+
+    records: int = 0
+    unread: int = 0
+
+    def over(self, answers: Iterable[Answer]) -> Iterator[Answer]:
+        """The answers themselves."""
+        for answer in answers:
+            self.records += 1
+            self.unread += bool(answer.refusal)
+            yield answer
+
+    def __str__(self) -> str:
+        """What was not read, as a sentence."""
+        return f"{self.unread} of {self.records} records could not be read"
+
+
 def is_file(given: str) -> bool:
     """Whether an argument is a path and not a structure."""
     if given == STDIN:
@@ -87,10 +105,23 @@ def is_file(given: str) -> bool:
 
 
 def answers(given: str, stdin: bytes = b"") -> Iterator[Answer]:
-    """The answers in order.
+    """The answers to a structure, a name or a file (`STDIN` for the bytes given), in order.
 
-    Raises CannotRead where there is no such file or it is of no kind that is read.
+    Raises CannotRead where there is no such file, where it is of no kind that is read, and where
+    there is one record alone that cannot be read; ParserMissing where a name cannot be asked for.
     """
+    found = _answers(given, stdin)
+    first = list(islice(found, 2))
+    if not first:
+        raise CannotRead(f"{given}: no record was found")
+    if len(first) == 1 and first[0].refusal:
+        one = first[0]
+        what = f" ({one.read_as})" if one.read_as else ""
+        raise CannotRead(f"'{one.given or given}'{what} cannot be read: {one.refusal}")
+    return chain(first, found)
+
+
+def _answers(given: str, stdin: bytes) -> Iterator[Answer]:
     if not is_file(given):
         return _of_lines([(1, given.strip())], columns=False)
     suffix, data = ("", stdin) if given == STDIN else _file(Path(given))
@@ -201,6 +232,12 @@ def _named(answer: Answer, line: str, name: NameReading) -> Answer:
         }
         notes = dict.fromkeys(fault.detail for fault in name.faults)
         return replace(found, assumed=assumed, notes=(*notes, *found.notes))
+    first, *rest = line.split(maxsplit=1)
+    if rest:
+        try:
+            return _answer(answer.number, rest[0], "SMILES", from_smiles(first))
+        except Unreadable:
+            pass  # what stands before the first space is no SMILES: the name's refusal says more
     detail = name.refusal.detail if name.refusal else "it could not be interpreted"
     why = f"neither a SMILES ({answer.refusal}) nor a systematic name ({detail})"
     return Answer(answer.number, line, refusal=why)

@@ -15,6 +15,7 @@ from typing import Any, Self, TypeVar
 from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
 from dossiercheck.concordance import build_case, table
+from dossiercheck.derivations import with_derivations
 from dossiercheck.interpretation import Reading, interpret
 from dossiercheck.model import Evidence, Finding, Grade, Role, SubstanceEntry, Unread
 from dossiercheck.names.joining import choose
@@ -224,7 +225,8 @@ def _judge_one(substance: Substance, readings: list[Reading]) -> Judged:
         drawing_of(case.structure) if drawn and case.structure else None,
     )
     unread = [entry for reading in readings for entry in _not_understood(reading)]
-    return Judged(entry, outcome.findings, (*unread, *outcome.unread))
+    findings = with_derivations(case, outcome.findings)
+    return Judged(entry, findings, (*unread, *outcome.unread))
 
 
 def _not_understood(reading: Reading) -> list[Unread]:

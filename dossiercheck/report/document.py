@@ -29,6 +29,7 @@ from dossiercheck.model import (
     UnitRow,
     Unread,
 )
+from dossiercheck.report.derived import derived_json
 from dossiercheck.report.verdict import verdict
 
 VERSION = "1"
@@ -213,7 +214,8 @@ def _exhibit(exhibit: Exhibit) -> Json:
         "marks": [list(span) for span in exhibit.marks],
         "place": _place(exhibit.place),
         "note": exhibit.note,
-        "drawing": _drawing(exhibit.drawing),
+        "drawing": drawing_json(exhibit.drawing),
+        "derivations": [derived_json(one) for one in exhibit.derived],
     }
 
 
@@ -223,7 +225,7 @@ def _substance(entry: SubstanceEntry) -> Json:
         "label": entry.label,
         "evidence": [_evidence(one, entry.attribution) for one in entry.evidence],
         "concordance": _concordance(entry.concordance, (one.id for one in entry.evidence)),
-        "drawing": _drawing(entry.drawing),
+        "drawing": drawing_json(entry.drawing),
     }
 
 
@@ -271,8 +273,8 @@ def _row(row: UnitRow) -> Json:
     }
 
 
-def _drawing(drawing: Drawing | None) -> Json | None:
-    """Atoms and bonds as rows, which take a third of the time and room of objects."""
+def drawing_json(drawing: Drawing | None) -> Json | None:
+    """A drawing with atoms and bonds as rows, which take a third of the room of objects."""
     if drawing is None:
         return None
     return {

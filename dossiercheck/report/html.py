@@ -19,6 +19,7 @@ from markupsafe import Markup, escape
 from dossiercheck import assets
 from dossiercheck.model import Drawing, DrawnAtom, DrawnBond
 from dossiercheck.report.depict import svg
+from dossiercheck.report.derived import heading, sight_of
 from dossiercheck.report.document import Json
 from dossiercheck.report.verdict import number_of
 from dossiercheck.report.view import FULL_FINDINGS, FULL_SUBSTANCES, is_long, page
@@ -30,6 +31,7 @@ FILE = "report.html"
 _HYPHEN = re.compile("[-\u2010-\u2013\u2212]")
 
 _TEMPLATE, _STYLE, _SCRIPT = "report.html.j2", "report.css", "report.js"
+_DERIVATIONS = "derivations.html.j2"
 
 
 def render(
@@ -53,6 +55,15 @@ def render(
     return text.encode("utf-8")
 
 
+def derivations(records: list[Json]) -> bytes:
+    """A page of derivations, with the report's style and no script; for `derive`."""
+    folder = assets.templates()
+    style = (folder / _STYLE).read_text(encoding="utf-8")
+    policy = f"default-src 'none'; style-src '{_hash(style)}'; base-uri 'none'; form-action 'none'"
+    template = _environment(folder).get_template(_DERIVATIONS)
+    return template.render(records=records, policy=policy, style=Markup(style)).encode("utf-8")
+
+
 @lru_cache(maxsize=4)
 def _environment(folder: Path) -> Environment:
     """The templates of that folder, compiled once."""
@@ -66,7 +77,12 @@ def _environment(folder: Path) -> Environment:
         finalize=_shown,
     )
     environment.filters.update(
-        verbatim=_verbatim, structure=_structure, number_of=number_of, thousands=_thousands
+        verbatim=_verbatim,
+        structure=_structure,
+        sighted=_sighted,
+        heading=heading,
+        number_of=number_of,
+        thousands=_thousands,
     )
     environment.tests["long"] = is_long
     return environment
@@ -112,6 +128,11 @@ def _verbatim(text: str, marks: list[list[int]] | None = None, breaks: bool = Tr
 
 def _structure(drawing: Json, title: str) -> Markup:
     return Markup(svg(_drawing(drawing), title))
+
+
+def _sighted(drawing: Json, sight: Json, title: str) -> Markup:
+    """The drawing with one unit marked as its derivation reads it."""
+    return Markup(svg(_drawing(drawing), title, sight_of(sight)))
 
 
 def _drawing(drawing: Json) -> Drawing:
