@@ -8,7 +8,7 @@ not changed, so that spans count in it. How the lines join is for `names` to say
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
@@ -24,6 +24,7 @@ from dossiercheck.language.running import (
 from dossiercheck.model import Cell, Evidence, Passage, Role, Unread
 
 _END = re.compile(rf"[A-Za-zα-ω\d)\]}}{re.escape(PRIMES)}]")
+_MOST = 6  # line ends on one side of a name that are gone over
 _CUT_WORD = re.compile(r"(?<=[A-Za-z])([-‐\u00ad]\n)(?=[a-z])")
 _TIGHT = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.REGISTRY, Role.FORMULA)
 
@@ -73,17 +74,36 @@ def _seen(text: str, gone: frozenset[int]) -> Iterator[Candidate]:
 
 
 def _beyond(text: str, joints: frozenset[int], candidate: Candidate) -> Iterator[Candidate]:
-    """The candidate with the word beyond a line end that it touches."""
-    edges = [
-        at
-        for at in (candidate.end, candidate.start - 1)
-        if 0 <= at < len(text) and text[at] == "\n" and at not in joints
-    ]
-    for places in (edges[:1], edges[1:], edges):
-        if places:
-            for other in _seen(text, joints.union(places)):
-                if _overlap(other, candidate):
-                    yield other
+    """The candidate with the words beyond the line ends that it touches, and where such a word
+    reaches to the next line end, with that beyond it too."""
+    rights = _steps(text, joints, candidate, lambda one: one.end)
+    lefts = _steps(text, joints, candidate, lambda one: one.start - 1)
+    for left in lefts:
+        for right in rights:
+            yield from _grown(text, joints | left | right, candidate)
+
+
+def _steps(
+    text: str, joints: frozenset[int], candidate: Candidate, edge: Callable[[Candidate], int]
+) -> list[frozenset[int]]:
+    """The line ends to go over on one side: none, the next one, the next two and so on."""
+    found: list[frozenset[int]] = [frozenset()]
+    now = candidate
+    while len(found) < _MOST:
+        at = edge(now)
+        if not 0 <= at < len(text) or text[at] != "\n" or at in joints | found[-1]:
+            break
+        over = found[-1] | {at}
+        grown = next(_grown(text, joints | over, candidate), None)
+        if grown is None:
+            break
+        found.append(over)
+        now = grown
+    return found
+
+
+def _grown(text: str, joints: frozenset[int], candidate: Candidate) -> Iterator[Candidate]:
+    return (other for other in _seen(text, joints) if _overlap(other, candidate))
 
 
 def _hyphens(text: str) -> frozenset[int]:
@@ -105,6 +125,8 @@ def _goes_on(text: str, at: int) -> bool:
     if last in HYPHENS or last == "\u00ad":
         return _END.search(before[-2:-1]) is not None
     if last in "([{" or after in ")]}" + HYPHENS:
+        return True
+    if after == "," and re.match(r",\d", text[at + 1 : at + 3]) and last.isdigit():
         return True
     if last == ",":
         return re.search(r"\d[a-z]?,$", before) is not None and bool(re.match(r"[\dRSEZN]", after))

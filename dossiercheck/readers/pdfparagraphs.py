@@ -20,6 +20,8 @@ from dossiercheck.readers.sections import numbered_heading
 _HYPHEN = re.compile(r"[\w)\]}'′’][-‐‑\u00ad]$")
 _ENDED = re.compile(r"[.:;!?][)\]”\"']*$")
 _ITEM = re.compile(r"(?:[•·▪‣●○◦\uf0b7–—-]|\(?(?:\d{1,2}|[a-z]|[ivx]{1,4})[.)])\s")
+# "Molecular formula: …": the beginning of a labelled value.
+_LABEL = re.compile(r"[A-Z][^:.;,()\[\]]{1,45}:(?:\s|$)")
 
 
 @dataclass(eq=False, slots=True)
@@ -127,6 +129,8 @@ def paragraphs(block: Block, page: int) -> list[Paragraph]:
 def _same_paragraph(so_far: Paragraph, last: Piece, line: Piece, block: Block, apart: bool) -> bool:
     if _HYPHEN.search(last.text):
         return True
+    if _LABEL.match(line.text) and (_ENDED.search(last.text) or _LABEL.match(so_far.text)):
+        return False
     if apart or (abs(last.size - line.size) > 0.2 and numbered_heading(so_far.text)):
         return False
     if _open(so_far.text) and not _ITEM.match(line.text):

@@ -70,7 +70,7 @@ def lay_out(page: PdfPage, near: Iterable[pdfmargins.Running]) -> Sheet:
                     last.extend(paragraph)
                 else:
                     things.append(paragraph)
-        else:
+        elif not (isinstance(thing, Draft) and _goes_on(things, thing)):
             things.append(thing)
     things += _aside(page)
     things += _unread(page, bool(things), pictures)
@@ -82,6 +82,14 @@ def _next_column(last: Paragraph, following: Paragraph) -> bool:
     assert last.last is not None
     end = last.last.box
     return following.box[1] < end[1] and following.box[0] > end[0]
+
+
+def _goes_on(things: list[Paragraph | Draft | Unread], table: Draft) -> bool:
+    """Whether a table is the rest of the one before it, in the next column; then it is taken."""
+    last = things[-1] if things else None
+    if not isinstance(last, Draft):
+        return False
+    return table.box[0] >= last.box[2] and table.box[1] < last.box[3] and last.take(table)
 
 
 def _drawing(page: PdfPage, box: Box, count: int, lettering: list[Piece]) -> Unread:
@@ -105,6 +113,10 @@ def _aside(page: PdfPage) -> list[Paragraph]:
     return found
 
 
+def _is_off(page: PdfPage, box: Box) -> bool:
+    return box[0] < -2 or box[1] < -4 or box[2] > page.width + 2 or box[3] > page.height + 4
+
+
 def _at(page: PdfPage, box: Box | None = None) -> Place:
     return Place("", page=page.number, box=rounded(box) if box else None)
 
@@ -123,6 +135,11 @@ def _unread(page: PdfPage, has_text: bool, pictures: list[Box]) -> list[Unread]:
         detail = "Text that the page does not show: under a picture, or left there unseen."
         text = "\n".join(piece.text for piece in page.hidden)[:2000]
         found.append(Unread(_at(page), "hidden-text", detail, text))
+    off = [piece for piece in page.pieces if _is_off(page, piece.box)]
+    if off:
+        detail = "Text that runs over the edge of the page: what is not on it is not read."
+        text = "\n".join(piece.text for piece in off)[:2000]
+        found.append(Unread(_at(page, off[0].box), "off-page", detail, text))
     area = sum((b[2] - b[0]) * (b[3] - b[1]) for b in pictures)
     if not has_text and pictures and area > 0.3 * page.width * page.height:
         detail = "The page is a picture and has no text of its own: it is not read."

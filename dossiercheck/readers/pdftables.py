@@ -65,8 +65,11 @@ class Draft:
         is left out where it repeats. False when it is another table."""
         if self.ruled != other.ruled or len(self.rows[0]) != len(other.rows[0]):
             return False
-        pairs = zip(self.edges, other.edges, strict=False)
-        if len(self.edges) != len(other.edges) or any(abs(a - b) > 4 for a, b in pairs):
+        if len(self.edges) != len(other.edges):
+            return False
+        shift = other.edges[0] - self.edges[0]  # it may go on in the next column of the page
+        pairs = zip(self.edges, other.edges, strict=True)
+        if any(abs(b - a - shift) > 4 for a, b in pairs):
             return False
         rows = other.rows
         heads = 0
