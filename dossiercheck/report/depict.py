@@ -8,7 +8,6 @@ a text beside it. Strokes take the colour of the surrounding text, so print and 
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
 from html import escape
 from math import isfinite
 from statistics import median
@@ -16,7 +15,7 @@ from statistics import median
 from dossiercheck.model import Drawing, DrawnAtom, DrawnBond, Sight
 from dossiercheck.report.bonds import BOND, Ends, number, strokes
 from dossiercheck.report.labels import FONT, Box, Label, Point, label_of, width_of
-from dossiercheck.report.ranks import described, overlay
+from dossiercheck.report.ranks import described, overlay, part, spoken_of
 from dossiercheck.report.rings import neighbours_of, ring_of_each
 from dossiercheck.report.space import Segment, apart, free_place, leave, middle
 from dossiercheck.report.visible import one_line
@@ -25,6 +24,8 @@ _MAX_WIDTH, _MAX_HEIGHT = 360.0, 280.0
 _MAX_ATOMS = 1000
 _MARK = 12.0
 _RING = 9.5
+# Below this scale the small numbers of a derivation can no longer be read.
+_LEGIBLE = 0.8
 
 
 def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
@@ -35,7 +36,7 @@ def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
     place of a structure: a drawing that is not the source's would be worse than none.
     """
     if sight is not None:
-        drawing = _only(drawing, sight)
+        drawing, sight = part(drawing, sight)
     atoms = drawing.atoms
     bonds = [one for one in drawing.bonds if _usable(one, len(atoms))]
     points = _pixels(atoms, bonds)
@@ -71,21 +72,11 @@ def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
         mark_boxes += over.boxes
         told = f"{told} {described(sight)}"
     frame = _frame([(x, y, x, y) for x, y in points] + taken + mark_boxes)
+    if sight is not None and _shrink(frame) < _LEGIBLE:
+        near = [points[atom] for atom in spoken_of(sight)]
+        frame = _cut(frame, _frame([(x, y, x, y) for x, y in near] + over.boxes, BOND))
+        told = f"{told} Cut to the surroundings of the unit."
     return _element(frame, title, told, "".join(body))
-
-
-def _only(drawing: Drawing, sight: Sight) -> Drawing:
-    """The drawing with no mark but the rings about a unit."""
-    atoms = tuple(
-        replace(atom, highlight=index in sight.atoms, mark="")
-        for index, atom in enumerate(drawing.atoms)
-    )
-    unit = set(sight.atoms)
-    bonds = tuple(
-        replace(bond, highlight=len(unit) > 1 and {bond.begin, bond.end} == unit)
-        for bond in drawing.bonds
-    )
-    return replace(drawing, atoms=atoms, bonds=bonds)
 
 
 def _usable(bond: DrawnBond, atoms: int) -> bool:
@@ -220,8 +211,22 @@ def _leader(halo: Box, box: Box) -> str:
     )
 
 
-def _frame(boxes: Sequence[Box]) -> Box:
-    margin = 5.0
+def _cut(frame: Box, window: Box) -> Box:
+    """What a window shows of a frame."""
+    return (
+        max(frame[0], window[0]),
+        max(frame[1], window[1]),
+        min(frame[2], window[2]),
+        min(frame[3], window[3]),
+    )
+
+
+def _shrink(frame: Box) -> float:
+    """The scale at which a frame fits the largest size."""
+    return min(1.0, _MAX_WIDTH / (frame[2] - frame[0]), _MAX_HEIGHT / (frame[3] - frame[1]))
+
+
+def _frame(boxes: Sequence[Box], margin: float = 5.0) -> Box:
     return (
         min(one[0] for one in boxes) - margin,
         min(one[1] for one in boxes) - margin,
@@ -233,7 +238,7 @@ def _frame(boxes: Sequence[Box]) -> Box:
 def _element(frame: Box, title: str, description: str, body: str) -> str:
     left, top = frame[0], frame[1]
     width, height = frame[2] - left, frame[3] - top
-    shrink = min(1.0, _MAX_WIDTH / width, _MAX_HEIGHT / height)
+    shrink = _shrink(frame)
     return (
         f'<svg xmlns="http://www.w3.org/2000/svg" class="structure" role="img"'
         f' width="{number(width * shrink)}" height="{number(height * shrink)}"'

@@ -7,10 +7,10 @@ Lengths are in pixels of the drawing, y downwards, as in `depict`.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from math import atan2, cos, degrees, hypot, pi, radians, sin, tau
 
-from dossiercheck.model import RankPlace, Sight
+from dossiercheck.model import Drawing, RankPlace, Sight
 from dossiercheck.report.bonds import number
 from dossiercheck.report.labels import Box, Point, width_of
 from dossiercheck.report.space import Segment, free_place, middle
@@ -19,6 +19,8 @@ from dossiercheck.report.visible import one_line
 _LETTER, _NUMBER = 13.0, 8.5
 _RADIUS = 15.5
 _MOST_NUMBERS = 30
+# Directions that cancel out to less than this leave no free side.
+_LEAST_ASIDE = 0.3
 _ENDS = ("near", "far")
 
 
@@ -45,6 +47,50 @@ class Arc:
         return ((self.stop - self.start) * self.turn) % tau
 
 
+def part(drawing: Drawing, sight: Sight) -> tuple[Drawing, Sight]:
+    """The connected part of a drawing with the unit in it, and no mark but the unit's own."""
+    near: dict[int, list[int]] = {}
+    for bond in drawing.bonds:
+        near.setdefault(bond.begin, []).append(bond.end)
+        near.setdefault(bond.end, []).append(bond.begin)
+    reached = set(sight.atoms)
+    waiting = list(reached)
+    while waiting:
+        new = [one for one in near.get(waiting.pop(), ()) if one not in reached]
+        reached.update(new)
+        waiting += new
+    number = {atom: place for place, atom in enumerate(sorted(reached))}
+    atoms = tuple(
+        replace(drawing.atoms[atom], highlight=atom in sight.atoms, mark="") for atom in number
+    )
+    pair = set(sight.atoms) if len(sight.atoms) > 1 else set()
+    bonds = tuple(
+        replace(
+            bond,
+            begin=number[bond.begin],
+            end=number[bond.end],
+            highlight={bond.begin, bond.end} == pair,
+        )
+        for bond in drawing.bonds
+        if bond.begin in number and bond.end in number
+    )
+    ranks = tuple(
+        replace(one, atom=number.get(one.atom, -1), end=number[one.end]) for one in sight.ranks
+    )
+    numbers = tuple((number[atom], text) for atom, text in sight.numbers if atom in number)
+    own = tuple(number[atom] for atom in sight.atoms)
+    return (
+        replace(drawing, atoms=atoms, bonds=bonds),
+        replace(sight, atoms=own, ranks=ranks, numbers=numbers),
+    )
+
+
+def spoken_of(sight: Sight) -> set[int]:
+    """The atoms that must be in the picture: the unit's, its ligands, those numbered."""
+    found = {*sight.atoms, *(atom for atom, _ in _numbers(sight))}
+    return found | {place.atom for place in sight.ranks if place.atom >= 0}
+
+
 def overlay(
     sight: Sight,
     points: Sequence[Point],
@@ -64,7 +110,7 @@ def overlay(
         taken += _along(at, radius, arc)
     found.boxes += taken[-1:]
     for place in sight.ranks:
-        around = _around(place, points, halos, own)
+        around = _around(place, sight, points, halos, own)
         text = f"{place.rank}[{place.held}]" if place.held else place.rank
         if place.atom < 0:
             text = f"{text} {place.label}"
@@ -154,14 +200,23 @@ def _along(centre: Point, radius: float, arc: Arc) -> list[Box]:
 
 def _around(
     place: RankPlace,
+    sight: Sight,
     points: Sequence[Point],
     halos: dict[int, Box],
     own: Sequence[tuple[Box, ...]],
 ) -> Box:
-    """What a rank's letter stands beside: its atom, or the unit where the ligand is not drawn."""
-    if place.atom < 0:
+    """What a rank's letter stands beside: its atom, or where a ligand that is not drawn would
+    stand, opposite the others."""
+    if place.atom >= 0:
+        return halos.get(place.atom) or _box_of(points[place.atom], own[place.atom])
+    at = points[place.end]
+    drawn = [one.atom for one in sight.ranks if one.end == place.end and one.atom >= 0]
+    drawn += [atom for atom in sight.atoms if atom != place.end]
+    angles = [_angle(at, points[atom]) for atom in drawn]
+    across, up = -sum(map(cos, angles)), -sum(map(sin, angles))
+    if hypot(across, up) < _LEAST_ASIDE:
         return halos[place.end]
-    return halos.get(place.atom) or _box_of(points[place.atom], own[place.atom])
+    return _box_of(_at(at, _RADIUS, atan2(up, across)), ())
 
 
 def _box_of(at: Point, label: tuple[Box, ...]) -> Box:
