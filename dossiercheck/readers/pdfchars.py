@@ -28,6 +28,7 @@ Piece = tuple[str, Box, float, tuple[tuple[int, int, float, float], ...]]
 _LINE = re.compile("(.*?)(\r\n|\ufffe\r?\n?|$)", re.DOTALL)
 _WORD = re.compile(r"[^ \u00a0\t]+")
 _NAMELIKE = re.compile(r"(?=[^ ]*\d)(?=[^ ]*[-(\[,‐‑–])(?=[^ ]*[A-Za-z])[^ ]{5,}")
+_NAME_SIGN = re.compile(r"\d[-‐‑–,(\[]|[-‐‑–,(\[]\d")
 _SPACED = re.compile(r"(?:[^\W\d_] ){5,}[^\W\d_]")
 _STRANGE = re.compile("[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\ue000-\uf8ff\ufffd\uffff]")
 _RAISED = str.maketrans(
@@ -177,7 +178,7 @@ def _line(characters: _Characters, start: int, end: int, found: PageText) -> Non
     )
     if turn:
         found.pieces.append(((_shown(text), _union(first, last), size, ()), turn))
-    elif plain and not _SPACED.search(text):
+    elif plain and not _is_spaced(text):
         box = _type_box(first[0], last[2], baseline, size)
         found.pieces.append(((_shown(text), box, size, _known(characters, text, start)), 0))
     else:
@@ -197,7 +198,7 @@ def _seems_turned(first: Box, last: Box, count: int) -> bool:
 def _is_broken(characters: _Characters, text: str, start: int, end: int) -> bool:
     """Whether characters have no place in Unicode: a text object has one font, so its first and
     last character speak for it, and every one is asked where something looks strange."""
-    if not characters.sure or _STRANGE.search(text.translate(_UNFOLD)):
+    if not characters.sure or _STRANGE.search(text):
         wrong = any(characters.unmapped(i) for i in range(start, end) if characters.text[i] != " ")
         return wrong or _STRANGE.search(text.translate(_UNFOLD)) is not None
     return characters.unmapped(start) or characters.unmapped(end - 1)
@@ -214,7 +215,7 @@ def _known(
     characters: _Characters, text: str, start: int
 ) -> tuple[tuple[int, int, float, float], ...]:
     """Where the words stand that may be names."""
-    if not _NAMELIKE.search(text) or _FOLDED.search(text) or "\u2060" in text:
+    if not _NAME_SIGN.search(text) or _FOLDED.search(text) or "\u2060" in text:
         return ()
     return tuple(
         (
@@ -246,31 +247,57 @@ class _Word:
 
 def _by_words(characters: _Characters, text: str, start: int) -> Iterator[Piece]:
     """A line of several text objects: cut where a gap is wide, raised digits marked."""
-    words = []
-    for match in _WORD.finditer(text):
-        begin, end = start + match.start(), start + match.end()
-        words.append(
-            _Word(
-                match[0],
-                begin,
-                end,
-                characters.box(begin)[0],
-                characters.box(end - 1)[2],
-                characters.baseline(begin),
-                characters.size(begin),
-            )
-        )
-    for row in _rows(words):
+    spaced = _is_spaced(text)
+    for row in _rows(list(_runs(characters, text, start, spaced))):
         base = _base(row)
-        parts = [part for word in row for part in _parts(characters, word, base)]
-        parts = _letters_joined(parts) if _SPACED.search(text) else parts
+        parts = [part for run in row for part in _parts(characters, run, base)]
+        parts = _letters_joined(parts) if spaced else parts
         group: list[_Word] = []
         for part in parts:
             if group and part.left - group[-1].right > 1.1 * base.size:
-                yield _joined(group, base)
+                yield _joined(characters, group, base)
                 group = []
             group.append(part)
-        yield _joined(group, base)
+        yield _joined(characters, group, base)
+
+
+def _is_spaced(text: str) -> bool:
+    return 3 * text.count(" ") > len(text) and _SPACED.search(text) is not None
+
+
+def _runs(characters: _Characters, text: str, start: int, spaced: bool) -> Iterator[_Word]:
+    """Words of one text object in a row as one, found by halving: the library tells how many
+    objects a stretch has, and each question costs the same. Runs with gaps come word by word."""
+    words = [match.span() for match in _WORD.finditer(text)]
+    at = 0
+    while at < len(words):
+        begin = words[at][0]
+        last, beyond = at, len(words)
+        while not spaced and beyond - last > 1:
+            middle = beyond - 1 if beyond == len(words) else (last + beyond) // 2
+            if characters.objects(start + begin, start + words[middle][1]) <= 1:
+                last = middle
+            else:
+                beyond = middle
+        run = _run(characters, text, start, begin, words[last][1])
+        count = run.end - run.start
+        if last > at and not 0 < run.right - run.left < _WIDE * run.size * count:
+            yield from (_run(characters, text, start, *word) for word in words[at : last + 1])
+        else:
+            yield run
+        at = last + 1
+
+
+def _run(characters: _Characters, text: str, start: int, begin: int, end: int) -> _Word:
+    return _Word(
+        text[begin:end],
+        start + begin,
+        start + end,
+        characters.box(start + begin)[0],
+        characters.box(start + end - 1)[2],
+        characters.baseline(start + begin),
+        characters.size(start + begin),
+    )
 
 
 def _rows(words: list[_Word]) -> Iterator[list[_Word]]:
@@ -344,7 +371,7 @@ def _letters_joined(words: list[_Word]) -> list[_Word]:
     return joined
 
 
-def _joined(words: list[_Word], base: _Word) -> Piece:
+def _joined(characters: _Characters, words: list[_Word], base: _Word) -> Piece:
     """A piece of words, with a space between those that a gap parts."""
     text = ""
     known = []
@@ -353,8 +380,18 @@ def _joined(words: list[_Word], base: _Word) -> Piece:
             gap = word.left - words[number - 1].right
             if gap > 0.08 * base.size or text[-1:].isalnum():
                 text += " "
-        known.append((len(text), len(text) + len(word.text), word.left, word.right))
+        shift = len(text)
         text += word.text
+        left = word.left
+        at = shift
+        if len(word.text) == word.end - word.start:
+            for first, last, x0, x1 in _known(characters, word.text, word.start):
+                if first + shift > at:
+                    known.append((at, first + shift, left, x0))
+                known.append((first + shift, last + shift, x0, x1))
+                at, left = last + shift, x1
+        if len(text) > at:
+            known.append((at, len(text), left, word.right))
     size = base.size if len(words) > 1 else words[0].size
     baseline = base.baseline if len(words) > 1 else words[0].baseline
     box = _type_box(words[0].left, max(word.right for word in words), baseline, size)
