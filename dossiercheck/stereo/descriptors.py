@@ -16,6 +16,7 @@ from dossiercheck.stereo.cip.engine import Ranked, rank_all
 from dossiercheck.stereo.cip.molecule import around
 from dossiercheck.stereo.cip.readoff import read_off
 from dossiercheck.stereo.cip.source import Source, drawn_of, source_of
+from dossiercheck.stereo.cip.tree import TooLarge
 from dossiercheck.stereo.cip.words import Namer, namer_for
 from dossiercheck.stereo.structure import Structure, Unit
 
@@ -144,9 +145,14 @@ def _joined(
 ) -> Descriptor:
     other = library.get(_key(ranked.unit.ends))
     letter = other.descriptor if other else ""
-    derivation = derive(source.molecule, ranked) if ranked.descriptor else None
-    reading = read_off(ranked, derivation, drawn, name) if derivation is not None else ()
+    derivation = None
     note = ranked.doubt
+    if ranked.descriptor:
+        try:
+            derivation = derive(source.molecule, ranked)
+        except (TooLarge, RecursionError):
+            note = "its derivation takes more steps than the budget allows"
+    reading = read_off(ranked, derivation, drawn, name) if derivation is not None else ()
     if not note and ranked.descriptor != letter:
         if letter:
             note = "the two computations differ"

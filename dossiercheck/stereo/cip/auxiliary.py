@@ -98,7 +98,8 @@ def criteria(step: Step, high: Branch, low: Branch) -> tuple[Criterion, Criterio
     keys = Keys(_PROPERTIES)
     rule = step.rule
     if rule == "1a":
-        return (Criterion(_number, lambda branch: keys.of(branch, "1a")),) * 2
+        # As far as the ranking unfolded the tree, which is as far as this difference needs it.
+        return (Criterion(_number, lambda branch: branch.levels),) * 2
     before = BEFORE[rule]
     if rule == "4b":
         readings = []

@@ -23,10 +23,11 @@ _ELEMENTS = Chem.GetPeriodicTable()
 _GREEK = {"alpha": "α", "beta": "β", "gamma": "γ", "delta": "δ", "epsilon": "ε", "omega": "ω"}
 _RAISED = str.maketrans("0123456789", "⁰¹²³⁴⁵⁶⁷⁸⁹")
 _SUBJECT = {
-    "3": ("Z before E before none", "no double-bond descriptor"),
-    "4a": ("chiral before pseudoasymmetric before none", "no descriptor"),
-    "4c": ("r before s before none", "neither r nor s"),
-    "5": ("R before S before none", "neither R nor S"),
+    "3": "Z before E before none",
+    "4a": "chiral before pseudoasymmetric before none",
+    "4b": "like before unlike",
+    "4c": "r before s before none",
+    "5": "R before S before none",
 }
 # The two classes of chiral descriptors (IUPAC 2013, P-92.5.2.1; Hanson et al. 2018, Rule 4b).
 _CLASS = {**dict.fromkeys("RMz", "R"), **dict.fromkeys("SPe", "S")}
@@ -97,8 +98,8 @@ def _directly(comparison: Comparison) -> str:
         return "it is taken as the favoured one of the ligands that tie"
     if comparison.rule == "1b":
         return "a duplicate atom nearer to the root ranks higher"
-    order, none = _SUBJECT.get(comparison.rule, ("like before unlike", "none"))
-    return f"{above.descriptor or none} against {below.descriptor or none}, {order}"
+    one, two = above.descriptor or "none", below.descriptor or "none"
+    return f"auxiliary descriptor {one} against {two}, {_SUBJECT[comparison.rule]}"
 
 
 def _compared(comparison: Comparison, name: Namer) -> str:
@@ -124,10 +125,9 @@ def _compared(comparison: Comparison, name: Namer) -> str:
             f"{_called(above, name)} is the favoured ligand and {_called(below, name)} is not "
             "(Rule 6: the favoured ligand, met again, ranks higher)"
         )
-    order, none = _SUBJECT[rule]
     return (
-        f"{_called(above, name)} has {above.descriptor or none} and {_called(below, name)} has "
-        f"{below.descriptor or none} (Rule {rule}: {order})"
+        f"auxiliary descriptor {above.descriptor or 'none'} at {_called(above, name)} against "
+        f"{below.descriptor or 'none'} at {_called(below, name)} (Rule {rule}: {_SUBJECT[rule]})"
     )
 
 
