@@ -26,6 +26,7 @@ _MARK = 12.0
 _RING = 9.5
 # Below this scale the small numbers of a derivation can no longer be read.
 _LEGIBLE = 0.8
+_ENLARGED = 1.4
 
 
 def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
@@ -76,7 +77,8 @@ def svg(drawing: Drawing, title: str, sight: Sight | None = None) -> str:
         near = [points[atom] for atom in spoken_of(sight)]
         frame = _cut(frame, _frame([(x, y, x, y) for x, y in near] + over.boxes, BOND))
         told = f"{told} Cut to the surroundings of the unit."
-    return _element(frame, title, told, "".join(body))
+    largest = 1.0 if sight is None else _ENLARGED
+    return _element(frame, title, told, "".join(body), largest)
 
 
 def _usable(bond: DrawnBond, atoms: int) -> bool:
@@ -221,9 +223,9 @@ def _cut(frame: Box, window: Box) -> Box:
     )
 
 
-def _shrink(frame: Box) -> float:
+def _shrink(frame: Box, largest: float = 1.0) -> float:
     """The scale at which a frame fits the largest size."""
-    return min(1.0, _MAX_WIDTH / (frame[2] - frame[0]), _MAX_HEIGHT / (frame[3] - frame[1]))
+    return min(largest, _MAX_WIDTH / (frame[2] - frame[0]), _MAX_HEIGHT / (frame[3] - frame[1]))
 
 
 def _frame(boxes: Sequence[Box], margin: float = 5.0) -> Box:
@@ -235,10 +237,10 @@ def _frame(boxes: Sequence[Box], margin: float = 5.0) -> Box:
     )
 
 
-def _element(frame: Box, title: str, description: str, body: str) -> str:
+def _element(frame: Box, title: str, description: str, body: str, largest: float = 1.0) -> str:
     left, top = frame[0], frame[1]
     width, height = frame[2] - left, frame[3] - top
-    shrink = _shrink(frame)
+    shrink = _shrink(frame, largest)
     return (
         f'<svg xmlns="http://www.w3.org/2000/svg" class="structure" role="img"'
         f' width="{number(width * shrink)}" height="{number(height * shrink)}"'
