@@ -127,7 +127,7 @@ def _sets(branch: Branch, criterion: Criterion) -> Iterator[list[_Set]]:
         sphere = [
             _Set(
                 (*group.path, member),
-                tuple(sorted(member.below(), key=criterion.key, reverse=True)),
+                tuple(sorted(_atoms_first(member), key=criterion.key, reverse=True)),
             )
             for group in sphere
             for member in group.members
@@ -135,6 +135,11 @@ def _sets(branch: Branch, criterion: Criterion) -> Iterator[list[_Set]]:
         if not any(group.members for group in sphere):
             yield sphere
             return
+
+
+def _atoms_first(branch: Branch) -> list[Branch]:
+    """What hangs from a branch, duplicates last: sorting keeps that order where ranks are equal."""
+    return sorted(branch.below(), key=lambda kid: kid is kid.node and kid.node.kind != REAL)
 
 
 def _side(molecule: Molecule, branch: Branch, end: int, group: _Set, by: Criterion) -> Side:
