@@ -63,9 +63,12 @@ def beside(one: Piece, two: Piece, space: str = " ") -> Piece:
 
 def on_one_line(one: Piece, two: Piece) -> bool:
     """Whether two pieces share a line: most of the lower one's height is beside the other."""
-    shared = min(one.box[3], two.box[3]) - max(one.box[1], two.box[1])
-    least = min(one.box[3] - one.box[1], two.box[3] - two.box[1])
-    return shared > 0.55 * least
+    _, top, _, bottom = one.box
+    _, other_top, _, other_bottom = two.box
+    if other_top >= bottom or top >= other_bottom:  # the common case, quickly
+        return False
+    shared = min(bottom, other_bottom) - max(top, other_top)
+    return shared > 0.55 * min(bottom - top, other_bottom - other_top)
 
 
 def numbered(pieces: Sequence[Piece]) -> list[Piece]:

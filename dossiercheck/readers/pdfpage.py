@@ -71,7 +71,7 @@ class View(NamedTuple):
 def pack(page: PdfPage) -> tuple[Any, ...]:
     """Plain tuples and lists, fit for `marshal`."""
     lists = (page.pieces, page.aside, page.unmapped, page.hidden)
-    texts = [[tuple(piece) for piece in pieces] for pieces in lists]
+    texts = [list(map(tuple, pieces)) for pieces in lists]
     shapes = (page.rules, page.pictures, page.strokes, page.notes)
     return (page.number, page.width, page.height, *texts, *shapes)
 
@@ -79,5 +79,5 @@ def pack(page: PdfPage) -> tuple[Any, ...]:
 def unpack(packed: tuple[Any, ...]) -> PdfPage:
     """The page that was packed."""
     number, width, height, *rest = packed
-    texts: list[Any] = [[Piece(*piece) for piece in pieces] for pieces in rest[:4]]
+    texts: list[Any] = [list(map(Piece._make, pieces)) for pieces in rest[:4]]
     return PdfPage(number, width, height, *texts, *rest[4:])

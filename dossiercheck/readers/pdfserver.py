@@ -8,6 +8,7 @@ answers on standard output are `marshal` objects, each after its length in eight
 
 from __future__ import annotations
 
+import gc
 import marshal
 import sys
 from contextlib import suppress
@@ -35,6 +36,7 @@ def main(first: int, memory: int) -> None:
             import resource
 
             resource.setrlimit(resource.RLIMIT_AS, (memory, memory))
+    gc.disable()  # a short-lived process that makes no rings
     data = sys.stdin.buffer.read()
     out = sys.stdout.buffer
     try:
