@@ -48,6 +48,8 @@ def shown(
 def certainty(found: Descriptor, doubt: str = "") -> str:
     """What the two computations give, as a sentence."""
     if found.certain and not doubt:
+        if found.derivation is None and found.note:
+            return f"Both computations give {found.ours}; {found.note}."
         return f"The structure library gives {found.library} as well: the descriptor is certain."
     why = f": {doubt or found.note}" if doubt or found.note else ""
     return (

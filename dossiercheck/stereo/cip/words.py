@@ -132,7 +132,9 @@ def _compared(comparison: Comparison, name: Namer) -> str:
 
 
 def _by_number(higher: Sequence[Entry], lower: Sequence[Entry]) -> str:
-    one, two = _padded([_numbered(e) for e in higher], [_numbered(e) for e in lower])
+    # Members of one number stand in any order; a duplicate is looked for behind its atom.
+    sides = (sorted(e, key=lambda one: (-one.value, one.duplicate)) for e in (higher, lower))
+    one, two = _padded(*([_numbered(entry) for entry in side] for side in sides))
     notes = []
     if any(entry.duplicate for entry in (*higher, *lower)):
         notes.append("a duplicate atom in brackets")

@@ -6,6 +6,7 @@ from dataclasses import replace
 
 from dossiercheck.model import (
     Concordance,
+    Derived,
     Drawing,
     DrawnAtom,
     DrawnBond,
@@ -24,6 +25,9 @@ from dossiercheck.model import (
     UnitRow,
     Unread,
 )
+from dossiercheck.stereo.descriptors import confirmed
+from dossiercheck.stereo.perception import from_molblock
+from dossiercheck.stereo.showing import shown
 
 CAUTION = (
     "Every finding must be confirmed by a qualified reviewer. Local regulatory guidance takes "
@@ -295,6 +299,14 @@ def _span(text: str, part: str) -> tuple[int, int]:
     return start, start + len(part)
 
 
+def derived(*atoms: int) -> Derived:
+    """How a unit of the base, as it is drawn, has its descriptor."""
+    structure = from_molblock(molfile(BASE, "OVE-118"))
+    found = confirmed(structure, atoms)
+    assert found is not None
+    return shown(structure, found, BASE)
+
+
 _CONFIGURATION = Finding(
     id="F1",
     rule="name-and-drawing/configuration-differs",
@@ -311,6 +323,7 @@ _CONFIGURATION = Finding(
             OVESTRILIDE.evidence[0].text,
             _STRUCTURE,
             drawing=marked(BASE, {17: "R, not S"}),
+            derived=(derived(17),),
         ),
         Exhibit(
             "E2",
@@ -340,7 +353,7 @@ FINDINGS = (
         "Add the descriptor 2E to the name.",
         (
             Exhibit("E1", "Drawing", BASE and OVESTRILIDE.evidence[0].text, _STRUCTURE,
-                    drawing=marked(BASE, {23: "E", 24: ""})),
+                    drawing=marked(BASE, {23: "E", 24: ""}), derived=(derived(23, 24),)),
             Exhibit("E4", "Systematic name", SILENT_NAME, _ROUTE, (_span(SILENT_NAME, "pent-2-enoyl"),)),
         ),
         unit="U5",
