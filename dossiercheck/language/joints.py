@@ -26,7 +26,7 @@ from dossiercheck.language.words import ANIONS, CATIONS
 _AFTER = re.compile(
     rf"(?:{ANIONS}|{CATIONS}|acid|anhydride|ester|ether|ketone|sulfoxide|sulfone|N-oxide|radical"
     rf"|S-acid|O-acid|diamide|hydrate|dihydrate|trihydrate|hemihydrate|water|\(\d+(?:[./]\d+)?:\d+(?:[./]\d+)?(?::\d+)?\)"
-    rf"|\d[\d,{PRIMES}]*[{HYPHENS}](?:mono|di|tri|tetra)?oxide"
+    rf"|\d[\d,{PRIMES}]*[{HYPHENS}](?:mono|di|tri|tetra)?(?:oxide|oxime|hydrazone|semicarbazone)"
     rf"|\d[{PRIMES}]*[{HYPHENS}]\((?:di|tri|tetra|penta)?hydrogen[ \u00a0][a-z]+ate\)"
     rf"|\d[{PRIMES}]*[{HYPHENS}][a-z]*phosphate"
     rf"|\(?\d+/\d+\)?|methyl|ethyl|propyl|isopropyl|butyl|benzyl)(?![A-Za-z])",

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Sequence
+from typing import NamedTuple
 
 from dossiercheck.readers.pdfflow import union
 from dossiercheck.readers.pdfgrid import Grid
@@ -20,15 +21,27 @@ _APART = 10.0  # points between strokes of one drawing
 _STROKES = 4000
 LETTER = 12.0  # points that the lettering of a drawing may stand out of its strokes
 
-Running = list[tuple[str, str, float]]
+
+class EdgeLine(NamedTuple):
+    """What stands near the top or the bottom of a page: `text` with its numbers made equal, the
+    numbers, and the distance from the page's edge."""
+
+    page: int
+    zone: str
+    text: str
+    numbers: tuple[int, ...]
+    distance: float
+
+
+Running = list[EdgeLine]
 
 
 def edge_lines(page: PdfPage) -> Running:
-    """What stands in the zones: zone, text with its digits made equal, distance from the edge."""
+    """The lines in the zones of a page."""
     return [line for piece in page.pieces if (line := _edge_line(page, piece))]
 
 
-def _edge_line(page: PdfPage, piece: Piece) -> tuple[str, str, float] | None:
+def _edge_line(page: PdfPage, piece: Piece) -> EdgeLine | None:
     _, top, _, bottom = piece.box
     depth = _ZONE * page.height
     if bottom < depth:
@@ -37,33 +50,45 @@ def _edge_line(page: PdfPage, piece: Piece) -> tuple[str, str, float] | None:
         zone, distance = "footer", page.height - bottom
     else:
         return None
-    return zone, re.sub(r"\d+|\bX+\b", "#", piece.text.casefold()).replace(" ", ""), distance
+    text = piece.text.casefold().replace(" ", "")
+    numbers = tuple(int(number) for number in re.findall(r"\d{1,9}", text))
+    return EdgeLine(page.number, zone, re.sub(r"\d+", "#", text), numbers, distance)
+
+
+def _repeats(line: EdgeLine, other: EdgeLine) -> bool:
+    """Whether two lines differ in nothing but a page number that counts on."""
+    steps = {a - b for a, b in zip(line.numbers, other.numbers, strict=False)}
+    return (
+        (line.zone, line.text) == (other.zone, other.text)
+        and abs(line.distance - other.distance) < _SHIFT
+        and len(line.numbers) == len(other.numbers)
+        and steps <= {0, line.page - other.page}
+    )
 
 
 def running(
     page: PdfPage, near: Iterable[Running], grids: Sequence[Grid]
 ) -> tuple[list[tuple[str, Piece]], list[Piece]]:
     """The running lines of a page (zone, piece) and its other pieces. A line runs when a page near
-    by has it at the same place; page numbers in the zones run always, captions and what stands in
-    a table that leaves the zone never."""
-    known: dict[tuple[str, str], list[float]] = {}
-    for lines in near:
-        for zone, text, distance in lines:
-            known.setdefault((zone, text), []).append(distance)
+    by has it at the same place; page numbers in the zones run always, captions never, and what
+    stands in a table only where the whole table does."""
+    others = [line for lines in near for line in lines]
     found: list[tuple[str, Piece]] = []
-    rest: list[Piece] = []
-    depth = 1.5 * _ZONE * page.height
-    bodies = [g.box for g in grids if g.box[3] > depth and g.box[1] < page.height - depth]
     for piece in page.pieces:
         line = _edge_line(page, piece)
-        if line and not _CAPTION.match(piece.text) and not _inside(piece.box, bodies):
-            zone, text, distance = line
-            again = any(abs(distance - other) < _SHIFT for other in known.get((zone, text), ()))
-            if again or _PAGE_NUMBER.fullmatch(piece.text):
-                found.append((zone, piece))
-                continue
-        rest.append(piece)
-    return found, rest
+        if line is None or _CAPTION.match(piece.text):
+            continue
+        if _PAGE_NUMBER.fullmatch(piece.text) or any(_repeats(line, o) for o in others):
+            found.append((line.zone, piece))
+    run = {id(piece) for _, piece in found}
+    for grid in grids:
+        inside = [piece for piece in page.pieces if _inside(piece.box, [grid.box])]
+        if not all(id(piece) in run for piece in inside):
+            run -= {id(piece) for piece in inside}
+    return (
+        [(zone, piece) for zone, piece in found if id(piece) in run],
+        [piece for piece in page.pieces if id(piece) not in run],
+    )
 
 
 def _inside(box: Box, others: Iterable[Box]) -> bool:

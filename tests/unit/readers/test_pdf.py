@@ -359,3 +359,13 @@ def test_real_ctd_documents() -> None:
 
 def test_one_page_is_enough() -> None:
     assert body(read("a.pdf", one_page(lines("Only this.")))) == ["Only this."]
+
+
+def test_codes_at_the_top_of_pages_are_no_running_lines() -> None:
+    """They differ in a number as page numbers do, but do not count on with the pages."""
+    pages = [
+        show(f"QX-{code}", 76, 806) + show("was tested", 204, 806) + lines(*FILLER, y=600)
+        for code in (510, 829, 327)
+    ]
+    texts_ = "\n".join(body(document(*pages)))
+    assert all(f"QX-{code}" in texts_ for code in (510, 829, 327))
