@@ -1,8 +1,8 @@
 """Every descriptor computed twice: by the engine, which can say why, and by the library.
 
 A descriptor is certain where both give it. Where they differ, or one of them gives none (the
-library knows no axes, helices or cumulenes; either may give up), both are shown and nothing may
-rest on it.
+library knows no helices or cumulenes; either may give up), both are shown and nothing may rest on
+it.
 """
 
 from __future__ import annotations
@@ -53,7 +53,7 @@ def descriptors(structure: Structure) -> tuple[Descriptor, ...]:
     derivation."""
     source = source_of(structure)
     drawn = drawn_of(structure, source.molecule) if structure.dimension else None
-    library = {tuple(sorted(unit.atoms)): unit for unit in structure.units}
+    library = {_key(unit.atoms): unit for unit in (*structure.units, *structure.axes)}
     name = namer_for(structure)
     found = [
         _joined(source, ranked, library, drawn, structure.doubt, name)

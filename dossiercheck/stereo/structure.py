@@ -32,6 +32,8 @@ _AXES = tuple(
 )
 _SHOWN = {Chem.BondStereo.STEREOCIS: 1, Chem.BondStereo.STEREOTRANS: -1}
 
+_TWISTED = (Chem.BondStereo.STEREOATROPCW, Chem.BondStereo.STEREOATROPCCW)
+
 
 class Unreadable(Exception):
     """A structure that could not be read or is not one molecule; the message says why."""
@@ -129,6 +131,21 @@ class Structure:
             if bond.HasProp("_CIPCode") and not _is_cumulated(bond):
                 ends = (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx())
                 found.append(Unit("double bond", ends, bond.GetProp("_CIPCode")))
+        return tuple(found)
+
+    @cached_property
+    def axes(self) -> tuple[Unit, ...]:
+        """Chiral axes between rings that a drawing's wedges configure, as the library labels them;
+        they are no units of the concordance."""
+        if self.dimension != 2 or not self.marks:
+            return ()
+        found = []
+        _ = self.units  # which labels the bonds as well
+        for number in range(self.mol.GetNumBonds()):
+            bond = self.mol.GetBondWithIdx(number)
+            if bond.GetStereo() in _TWISTED and bond.HasProp("_CIPCode"):
+                ends = (bond.GetBeginAtomIdx(), bond.GetEndAtomIdx())
+                found.append(Unit("axis", ends, bond.GetProp("_CIPCode")))
         return tuple(found)
 
     @cached_property
