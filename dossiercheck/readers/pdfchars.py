@@ -331,7 +331,9 @@ def _parts(characters: _Characters, word: _Word, base: _Word) -> Iterator[_Word]
     part: _Word | None = None
     for index in range(word.start, word.end):
         left, _, right, _ = characters.box(index)
-        baseline, size = characters.baseline(index), characters.size(index)
+        baseline = characters.baseline(index)
+        level = abs(baseline - base.baseline) < 0.1 * base.size
+        size = base.size if level else characters.size(index)
         text = _raised(_shown(characters.text[index]), baseline, size, base)
         if part and -base.size < left - part.right <= base.size:
             part.text += text

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 
 from dossiercheck.model import Cell, Place, Table
 from dossiercheck.readers.grid import column_letter
@@ -49,8 +49,14 @@ class Draft:
             cells = []
             for c, draft in enumerate(row):
                 if id(draft) not in made:
-                    where = replace(
-                        place, row=r, column=column_letter(c), page=draft.page, box=draft.box
+                    where = Place(
+                        source,
+                        section=self.section,
+                        table=number,
+                        row=r,
+                        column=column_letter(c),
+                        page=draft.page,
+                        box=draft.box,
                     )
                     text = draft.content
                     made[id(draft)] = Cell(
