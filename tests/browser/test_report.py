@@ -13,7 +13,8 @@ from typing import Any
 import pypdfium2
 import pytest
 
-from dossiercheck import report
+from dossiercheck import derive, report
+from dossiercheck.report import derivation
 from dossiercheck.report.labels import width_of
 from tests.unit.report import sample
 
@@ -153,6 +154,9 @@ def test_print_opens_folds_and_repeats_the_caution(
     said = " ".join(sheets)
     for step in sample.FINDINGS[0].derivation:
         assert step.split(":")[0] in said
+    for derived in (sample.derived(17), sample.derived(23, 24)):
+        for step in derived.steps:
+            assert step[:45] in said
     for rule in sample.RULES[:6]:
         assert rule.why[:40] in said
     for finding in sample.FINDINGS:
@@ -190,11 +194,82 @@ def test_no_sideways_scrolling_of_the_page(browser: Any, folder: Path, width: in
         page.context.close()
 
 
+@pytest.fixture(scope="module")
+def derivations(folder: Path) -> Path:
+    """Pages of `derive`: a molecule with centres and a double bond; an axis, and what is open."""
+    for name, given in (("derived", sample.SMILES), ("axis", "CC=[C@]=CC(C)Cl")):
+        (folder / name).mkdir(exist_ok=True)
+        (made,) = derivation.printed(derive.answers(given), "html")
+        (folder / name / "report.html").write_bytes(made)
+    return folder
+
+
+def test_derivations_are_folded_until_opened(page: Any) -> None:
+    fold = page.locator("#f1 details.derived")
+    assert fold.count() == 1
+    assert not fold.locator("svg").is_visible()
+    fold.locator("summary").click()
+    assert fold.locator("svg").is_visible()
+    assert fold.locator("svg .turn").count() == 2
+    assert fold.locator("svg .rank").all_text_contents() == ["a", "b", "c", "d H"]
+
+
+@pytest.mark.parametrize("width", [1200, 320])
+@pytest.mark.parametrize("name", ["derived", "axis"])
+def test_a_page_of_derivations(browser: Any, derivations: Path, name: str, width: int) -> None:
+    page = opened(browser, derivations, name, viewport={"width": width, "height": 800})
+    assert page.locator("svg.structure").first.is_visible()
+    assert page.evaluate("document.documentElement.scrollWidth") <= width
+    assert page.errors == []
+    assert len(page.requests) == 1
+    page.context.close()
+
+
+def test_letters_of_a_derivation_cover_no_other(browser: Any, derivations: Path) -> None:
+    """As the browser sets them; the ranks also keep off the bonds."""
+    page = opened(browser, derivations, "derived")
+    letters, found = page.evaluate(
+        """() => {
+          const found = [];
+          let letters = 0;
+          const core = (box) => ({
+            left: box.x + box.width * 0.08, right: box.x + box.width * 0.92,
+            top: box.y + box.height * 0.25, low: box.y + box.height * 0.75});
+          for (const svg of document.querySelectorAll('svg.structure')) {
+            for (const mark of svg.querySelectorAll('.sight text')) {
+              letters += 1;
+              const own = core(mark.getBBox());
+              for (const text of svg.querySelectorAll('text')) {
+                const other = core(text.getBBox());
+                if (text !== mark && own.left < other.right && other.left < own.right
+                    && own.top < other.low && other.top < own.low)
+                  found.push(mark.textContent + ' on ' + text.textContent);
+              }
+              if (!mark.classList.contains('rank')) continue;
+              for (const path of svg.querySelectorAll('g[stroke-width] path')) {
+                for (let at = 0; at <= path.getTotalLength(); at += 1) {
+                  const point = path.getPointAtLength(at);
+                  if (point.x > own.left && point.x < own.right && point.y > own.top && point.y < own.low) {
+                    found.push(mark.textContent + ' on a bond');
+                    break;
+                  }
+                }
+              }
+            }
+          }
+          return [letters, found];
+        }"""
+    )
+    assert letters == 40  # in each of five pictures four ranks and four numbers
+    assert found == []
+    page.context.close()
+
+
 @pytest.mark.parametrize("scheme", ["light", "dark"])
-@pytest.mark.parametrize("name", ["review", "empty", "clean"])
-def test_accessible(browser: Any, folder: Path, name: str, scheme: str) -> None:
+@pytest.mark.parametrize("name", ["review", "empty", "clean", "derived", "axis"])
+def test_accessible(browser: Any, derivations: Path, name: str, scheme: str) -> None:
     axe = pytest.importorskip("axe_playwright_python.sync_playwright")
-    page = opened(browser, folder, name, color_scheme=scheme)
+    page = opened(browser, derivations, name, color_scheme=scheme)
     page.keyboard.press("a")
     tags = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "best-practice"]
     found = axe.Axe().run(page, options={"runOnly": {"type": "tag", "values": tags}}).response
