@@ -2,6 +2,7 @@
 
 from dossiercheck.checks import (  # noqa: F401
     absolute,
+    axes,
     changes,
     configuration,
     constitution,

@@ -7,9 +7,7 @@ from collections.abc import Iterator, Sequence
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
-from dossiercheck.interpretation import Reading
 from dossiercheck.model import Kind, Role, State
-from dossiercheck.names.reading import Fault
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.structure import Structure, is_pyramidal_nitrogen
 from dossiercheck.views import Pair, UnitView
@@ -23,7 +21,7 @@ OFFENCES = (
     "contradictory-descriptors",
     "lost-space",
 )
-_LAID = (con.SAME, con.CHARGE, con.MOBILE, con.TAUTOMER, con.SALT)
+LAID = (con.SAME, con.CHARGE, con.MOBILE, con.TAUTOMER, con.SALT)
 
 
 def of_kind(case: Case, *kinds: Kind) -> Iterator[Pair]:
@@ -190,14 +188,13 @@ def descriptor_undetermined(case: Case, params: Params) -> Iterator[Observation]
                 view.locant,
             )
     yield from _not_laid(case)
-    yield from _axes(case)
 
 
 def _not_laid(case: Case) -> Iterator[Observation]:
     """Structures of one constitution that could nevertheless not be laid on each other."""
     for pair in case.pairs:
         found = pair.alignment
-        if not found.mapping and found.doubt and found.constitution.verdict in _LAID:
+        if not found.mapping and found.doubt and found.constitution.verdict in LAID:
             assert case.reference is not None
             yield Observation(
                 {
@@ -210,47 +207,6 @@ def _not_laid(case: Case) -> Iterator[Observation]:
             )
 
 
-def _axes(case: Case) -> Iterator[Observation]:
-    """Descriptors of an axis, which nothing here can confirm or contradict."""
-    for reading in case.readings:
-        for fault in reading.name.faults if reading.name else ():
-            if (
-                reading.name is None
-                or fault.descriptor is None
-                or not of_axis(case, reading, fault)
-            ):
-                continue
-            printed = reading.name.descriptors[fault.descriptor]
-            yield Observation(
-                {
-                    "locant": printed.locant or "an axis",
-                    "printed": printed.text,
-                    "recomputed": "nothing",
-                    "doubt": "it speaks of a chiral axis, which the program does not judge",
-                },
-                (exhibit(reading, spans=[printed.span]),),
-                locant=printed.locant,
-            )
-
-
-def of_axis(case: Case, reading: Reading, fault: Fault) -> bool:
-    """Whether a descriptor that the name parser did not place speaks of a chiral axis: M, P and
-    the like always, R and S at an axis's atom or, without a locant, where there is an axis; but
-    not while a centre of the reference waits for its descriptor."""
-    if reading.name is None or reading.structure is None or fault.descriptor is None:
-        return False
-    printed = reading.name.descriptors[fault.descriptor]
-    if printed.family == "axis":
-        return fault.slug == "descriptor-stripped"
-    if fault.slug != "locant-not-stereogenic" or printed.family != "centre":
-        return False
-    pair = next((pair for pair in case.pairs if pair.reading is reading), None)
-    if pair is not None and any(v.kind == "centre" for v in silent_views(case, pair)):
-        return False
-    axis = reading.structure.axis_atoms
-    return bool(axis & set(fault.atoms) if fault.atoms else axis and not printed.locant)
-
-
 @check(needs=("name",), fields=("name_kind", "reference_kind"))
 def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
     """One side speaks of a single enantiomer, the other of a racemate or of relative
@@ -259,7 +215,7 @@ def stereo_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
         mine, theirs = case.structure, pair.reading.structure
         if not (mine and theirs) or not (mine.groups or theirs.groups):
             continue
-        if pair.alignment.constitution.verdict not in _LAID:
+        if pair.alignment.constitution.verdict not in LAID:
             continue
         kinds = mine.kind, theirs.kind
         if kinds[0] == kinds[1] or {"silent", "achiral"} & set(kinds) or hand_open(mine):

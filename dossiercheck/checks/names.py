@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from dossiercheck.checks.configuration import OFFENCES, of_axis, silent_views, unit_of
+from dossiercheck.checks.axes import of_axis
+from dossiercheck.checks.configuration import OFFENCES, silent_views, unit_of
 from dossiercheck.checks.exhibits import exhibit, of_units
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case

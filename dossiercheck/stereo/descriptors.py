@@ -99,6 +99,17 @@ def ambiguous_wedges(structure: Structure, centres: Iterable[int]) -> dict[int, 
     return drawn_of(structure, around(structure.mol, wedged)).ambiguous(wedged)
 
 
+def axis_of(structure: Structure) -> tuple[Descriptor | None, str]:
+    """The one chiral axis that a structure configures, and why nothing may rest on it; "" where
+    both computations agree."""
+    axes = [one for one in descriptors(structure) if one.kind == "axis"]
+    if not axes:
+        return None, "the structure shows no configuration of one"
+    if len(axes) > 1:
+        return None, "the structure shows more than one"
+    return axes[0], "" if axes[0].certain else axes[0].note
+
+
 def doubt_at(structure: Structure, atoms: Iterable[int]) -> str:
     """Why nothing may rest on the descriptor of the unit at these atoms (0-based), "" where both
     computations give it."""

@@ -21,6 +21,49 @@ SALT = "name-and-drawing/salt-differs"
 TAUTOMER = "name-and-drawing/tautomer-differs"
 CHARGE = "name-and-drawing/charge-differs"
 UNDETERMINED = "name-and-drawing/descriptor-undetermined"
+AXIS_OPEN = "name-and-drawing/axis-undetermined"
+AXIS_DIFFERS = "name-and-drawing/axis-differs"
+BIARYL_NAME = "-2'-amino-6'-chloro-6-methyl[1,1'-biphenyl]-2-ol"
+# A biphenyl with four different groups beside the bond between its rings, a wedge there: M.
+BIARYL = """axis
+
+
+ 16 17  0  0  0  0  0  0  0  0999 V2000
+    0.7500   -2.5981    0.0000 N   0  0  0  0  0  0  0  0  0  0  0  0
+    1.5000   -1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+    3.0000   -1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+    3.7500   -0.0000    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+    3.0000    1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+    1.5000    1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+    0.7500    2.5981    0.0000 Cl  0  0  0  0  0  0  0  0  0  0  0  0
+    0.7500    0.0000    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -0.7500    0.0000    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -1.5000    1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -0.7500    2.5981    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -3.0000    1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -3.7500    0.0000    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -3.0000   -1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -1.5000   -1.2990    0.0000 C   0  0  0  0  0  0  0  0  0  0  0  0
+   -0.7500   -2.5981    0.0000 O   0  0  0  0  0  0  0  0  0  0  0  0
+  1  2  1  0
+  2  3  1  0
+  3  4  2  0
+  4  5  1  0
+  5  6  2  0
+  6  7  1  0
+  8  6  1  1
+  8  9  1  0
+  9 10  2  0
+ 10 11  1  0
+ 10 12  1  0
+ 12 13  2  0
+ 13 14  1  0
+ 14 15  2  0
+ 15 16  1  0
+  8  2  2  0
+ 15  9  1  0
+M  END
+"""
 NOT_STEREOGENIC = "name/locant-not-stereogenic"
 NO_LOCANT = "name/no-such-locant"
 DUPLICATE = "name/duplicate-descriptor"
@@ -223,9 +266,20 @@ CASES = [
         name="(Z)-cyclooctene",
         molfile=v2000("C1=CCCCCCC1"),
     ),
-    # --- axes, on which nothing is judged and nothing looks judged -------------------------
+    # --- axes: judged where a drawing shows one, else nothing looks judged -----------------
     *(
-        Case(title, ({"name": name, "molfile": v2000(smiles)},), (), (UNDETERMINED,))
+        one(f"biaryl {letter}", *found, name=f"({letter}){BIARYL_NAME}", molfile=BIARYL)
+        for letter, found in (
+            ("P", [AXIS_DIFFERS]),
+            ("Sa", [AXIS_DIFFERS]),
+            ("S", [AXIS_DIFFERS]),
+            ("M", []),
+            ("Ra", []),
+            ("R", []),
+        )
+    ),
+    *(
+        Case(title, ({"name": name, "molfile": v2000(smiles)},), (), (AXIS_OPEN,))
         for title, name, smiles in (
             ("axis M", "(M)-[1,1'-binaphthalene]-2,2'-diol", BINOL),
             ("axis Ra", "(Ra)-[1,1'-binaphthalene]-2,2'-diol", BINOL),
