@@ -182,6 +182,13 @@ def test_text_fits_a_terminal(capfd: Capture) -> None:
     assert out.count("centre at".capitalize()) == 4
 
 
+def test_the_example_in_the_readme_is_what_is_printed(capfd: Capture) -> None:
+    readme = (Path(__file__).parents[2] / "README.md").read_text(encoding="utf-8")
+    given, shown = readme.split('$ dossiercheck derive "', 1)[1].split('"\n', 1)
+    assert cli.run(["derive", given]) == 0
+    assert capfd.readouterr().out == shown.split("```", 1)[0]
+
+
 def test_the_page_stands_alone(capfd: Capture) -> None:
     assert cli.run(["derive", sample.SMILES, "--format", "html"]) == 0
     made = html.fromstring(capfd.readouterr().out.encode())
