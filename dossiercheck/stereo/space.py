@@ -28,6 +28,7 @@ from dossiercheck.stereo.symmetry import generators
 
 _ACIDIC = frozenset((15, 16, 33, 34))
 _CHALCOGENS = frozenset((8, 16, 34))
+_DONORS = _CHALCOGENS | {7}
 # Rings with a double bond of either geometry: from twelve atoms on nothing stands in its way.
 _WIDE_RING = 12
 
@@ -114,19 +115,20 @@ def space_of(structure: Structure, within: frozenset[int] | None = None) -> Spac
     graph = part_of(graph_of(flat), within)
     found: list[tuple[tuple[int, ...], Centre | Geometry]] = []
     left_out: list[tuple[int, ...]] = []
+    rings = _ring_neighbours(bare)
     for kind, atoms, near in flat.possible:
         if atoms[0] not in graph.near:
             continue
         unit = _centre(graph, atoms[0]) if kind == "centre" else _geometry(graph, atoms, near)
         if unit is None:
             continue
-        if kind == "centre" and is_pyramidal_nitrogen(flat, atoms[0]):
+        pyramidal = kind == "centre" and is_pyramidal_nitrogen(flat, atoms[0])
+        if pyramidal and len(rings[atoms[0]]) == 3:
             continue
-        if _is_fluxional(graph, kind, atoms):
+        if pyramidal or _is_fluxional(graph, kind, atoms):
             left_out.append(atoms)
         else:
             found.append((atoms, unit))
-    rings = _ring_neighbours(bare)
     nitrogens = [a for a in graph.atoms if len(rings[a]) == 3 and is_pyramidal_nitrogen(flat, a)]
     caged = cages(graph, rings, [*(a[0] for a, _ in found if len(a) == 1), *nitrogens])
     fixed = {end for held in caged.held for end in held.ends}
@@ -232,15 +234,20 @@ def _sense(unit: Centre | Geometry, first: tuple[int, int, int]) -> bool | None:
 
 
 def _is_fluxional(graph: Graph, kind: str, atoms: tuple[int, ...]) -> bool:
-    """A unit that proton transfer undoes: P or S with two oxygens of which one is acidic, and
-    =N–H (common practice)."""
+    """A unit that proton transfer undoes: P or S with two oxygens of which one is acidic, =N–H,
+    and C=N beside N–H, O–H or S–H, as in the standard InChI's mobile hydrogen."""
     if kind == "centre":
         atom = atoms[0]
         ends = [b for b in graph.near[atom] if len(graph.near[b]) == 1]
         ends = [b for b in ends if graph.element[b] in _CHALCOGENS]
-        alike = len({graph.element[b] for b in ends}) < len(ends)
-        return graph.element[atom] in _ACIDIC and alike
-    return any(graph.element[a] == 7 and graph.hydrogens[a] > 0 for a in atoms)
+        repeated = len({graph.element[b] for b in ends}) < len(ends)
+        return graph.element[atom] in _ACIDIC and repeated
+    for nitrogen, carbon in (atoms, atoms[::-1]):
+        if graph.element[nitrogen] == 7:
+            donors = [b for b in graph.near[carbon] if graph.element[b] in _DONORS]
+            if graph.hydrogens[nitrogen] or any(graph.hydrogens[b] for b in donors):
+                return True
+    return False
 
 
 def _ring_neighbours(mol: Chem.Mol) -> dict[int, frozenset[int]]:
