@@ -23,6 +23,7 @@ UNSEEN_IN_SPACE = (
     "C[P@](CC)c1ccccc1",
     "C[As@](CC)c1ccccc1",
     "C[C@H](F)[C@H]([C@@H](C)F)/C(=C/Cl)C([C@@H](C)F)[C@@H](C)F",
+    "O[C@@H](C(CCCC1CCC1)(CCCC1CCC1)CCCC1CCC1)C12CCCC(CCC1)CCC2",  # given up: so many hydrogens
 )
 
 
