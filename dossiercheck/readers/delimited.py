@@ -12,7 +12,6 @@ import io
 from collections import Counter
 from collections.abc import Iterator
 from dataclasses import dataclass
-from itertools import islice
 
 from dossiercheck.limits import DEFAULT, Limits, decode, unify_line_ends
 from dossiercheck.model import Cell, Item, Place, Source, Table, Unread
@@ -165,14 +164,19 @@ def _shape(text: str, tabbed: bool) -> _Shape | None:
 def _shape_with(text: str, delimiter: str) -> _Shape | None:
     widths: list[tuple[int, int]] = []
     reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=False)
-    try:
-        for number, row in enumerate(islice(reader, _SAMPLE_ROWS), 1):
-            if any(cell.strip() for cell in row) and not (number == 1 and row[0][:4] == "sep="):
-                widths.append((number, len(row)))
-    except csv.Error:
-        pass  # the strict reading reports it; what was seen so far decides the layout
+    broken = False
+    for number in range(1, _SAMPLE_ROWS + 1):
+        try:
+            row = next(reader)
+        except StopIteration:
+            break
+        except csv.Error:
+            broken = True  # the strict reading reports it; the other rows decide the layout
+            continue
+        if any(cell.strip() for cell in row) and not (number == 1 and row[0][:4] == "sep="):
+            widths.append((number, len(row)))
     if not widths:
-        return None
+        return _Shape(delimiter, 1, 1, 0, 0) if broken else None
     above = next((i for i, (_, width) in enumerate(widths[:_HEADING_ROWS]) if width > 1), None)
     if above is None:
         return _Shape(delimiter, 1, 1, 0, 0)

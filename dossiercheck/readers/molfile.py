@@ -22,7 +22,8 @@ _ATOM = re.compile(r"[ \d.+\-eE]{30} ?[A-Za-z*]")
 _BOND = re.compile(r"[ \d]{2}\d[ \d]{2}\d[ \d]{2}\d(?:[ \d]|$)")
 _FIELD_NAME = re.compile(r"<(.*)>")
 _FIELD_NUMBER = re.compile(r"\bDT\d+\b")
-_COUNTS_3000 = re.compile(r"M  V30 COUNTS +(\d+) +(\d+)")
+# No count has more digits than a file has characters; `int` raises on thousands of them.
+_COUNTS_3000 = re.compile(r"M  V30 COUNTS +([0-9]{1,9}) +([0-9]{1,9})(?![0-9])")
 
 
 @guarded("")
@@ -162,7 +163,7 @@ def _fault(lines: list[str]) -> str:
     if "V3000" in counts:
         return _fault_3000(lines)
     try:
-        atoms, bonds = int(counts[0:3]), int(counts[3:6])
+        atoms, bonds, lists = int(counts[0:3]), int(counts[3:6]), int(counts[6:9].strip() or 0)
     except ValueError:
         return "The fourth line is not a counts line."
     if atoms < 0 or bonds < 0:
@@ -174,21 +175,21 @@ def _fault(lines: list[str]) -> str:
         return f"Of the {atoms} atoms promised, a line of the atom block is not an atom."
     if not all(map(_BOND.match, lines[first_bond:after])):
         return f"Of the {bonds} bonds promised, a line of the bond block is not a bond."
-    if _BOND.match(lines[after]) and not int(counts[6:9].strip() or 0):
+    if _BOND.match(lines[after]) and not lists:
         return f"The bond block goes on after the {bonds} bonds promised."
     return ""
 
 
 def _fault_3000(lines: list[str]) -> str:
     joined: list[str] = []
-    open_line = ""
+    pieces: list[str] = []
     for line in lines[4:]:
-        body = open_line + (line[6:].lstrip() if open_line else line)
-        if body.startswith("M  V30") and body.endswith("-"):
-            open_line = body[:-1]
+        body = line[6:].lstrip() if pieces else line
+        if body.endswith("-") and (pieces or body.startswith("M  V30")):
+            pieces.append(body[:-1])
             continue
-        open_line = ""
-        joined.append(body.rstrip())
+        joined.append("".join([*pieces, body]).rstrip())
+        pieces = []
     counts = next((m for line in joined if (m := _COUNTS_3000.match(line))), None)
     if not counts:
         return "The counts line of the V3000 table is missing."
