@@ -24,6 +24,7 @@ from dossiercheck.language.running import (
 from dossiercheck.model import Cell, Evidence, Passage, Role, Unread
 
 _END = re.compile(rf"[A-Za-zα-ω\d)\]}}{re.escape(PRIMES)}]")
+_BEGUN = re.compile(r"(?:^|(?<=\s))(\S*\([^()\s]*[RSEZ]\)\S{0,40})(?=\n)")
 _MOST = 6  # line ends on one side of a name that are gone over
 _CUT_WORD = re.compile(r"(?<=[A-Za-z])([-‐\u00ad]\n)(?=[a-z])")
 _TIGHT = (Role.SMILES, Role.INCHI, Role.INCHIKEY, Role.REGISTRY, Role.FORMULA)
@@ -56,6 +57,7 @@ def stretched(text: str) -> Iterator[Stretched]:
         return
     ends = [at for at, character in enumerate(text) if character == "\n"]
     joints = frozenset(at for at in ends if _goes_on(text, at))
+    joints |= _begun(text, joints)
     cut = list(_seen(text, joints | _hyphens(text)))
     for candidate in _seen(text, joints):
         near = [one for one in cut if _overlap(one, candidate)]
@@ -71,6 +73,23 @@ def _seen(text: str, gone: frozenset[int]) -> Iterator[Candidate]:
     view = "".join(text[at] for at in offsets).replace("\n", " ")
     for one in candidates(view):
         yield Candidate(offsets[one.start], offsets[one.end - 1] + 1)
+
+
+def _begun(text: str, joints: frozenset[int]) -> frozenset[int]:
+    """The line ends behind what begins like a name and is one only with the next line, as
+    "(4S)-6-c" before "hloro…"."""
+    begun = [match for match in _BEGUN.finditer(text) if match.end() not in joints]
+    if not begun:
+        return frozenset()
+    found = list(_seen(text, joints))
+    ends = set()
+    for match in begun:
+        start = Candidate(match.start(1), match.end(1))
+        if not any(_overlap(start, one) for one in found) and any(
+            _grown(text, joints | {match.end()}, start)
+        ):
+            ends.add(match.end())
+    return frozenset(ends)
 
 
 def _beyond(text: str, joints: frozenset[int], candidate: Candidate) -> Iterator[Candidate]:

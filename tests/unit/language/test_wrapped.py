@@ -81,3 +81,11 @@ def test_a_name_over_the_lines_of_a_table_cell() -> None:
     (said,) = gather([soft])
     assert isinstance(said, Evidence)
     assert (said.role, said.text) == (Role.NAME, name)
+
+
+def test_a_name_that_is_one_only_with_the_next_lines() -> None:
+    text = "Residual (1R,3R)-3-m\nethylcyclohexane-1-carb\noxylic acid (not more"
+    ((name, others),) = found(text)
+    assert name == "(1R,3R)-3-m\nethylcyclohexane-1-carb"
+    assert others == ["(1R,3R)-3-m\nethylcyclohexane-1-carb\noxylic acid"]
+    assert found("the (S)\nisomer was") == []

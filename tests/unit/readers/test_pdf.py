@@ -369,3 +369,11 @@ def test_codes_at_the_top_of_pages_are_no_running_lines() -> None:
     ]
     texts_ = "\n".join(body(document(*pages)))
     assert all(f"QX-{code}" in texts_ for code in (510, 829, 327))
+
+
+def test_text_over_the_edge_of_the_page_is_listed() -> None:
+    long = "a line that has no end on this page, " * 4
+    items = document(lines(*FILLER) + show(long + "(2R)-2-amino", 72, 300))
+    (entry,) = unread(items)
+    assert entry.reason == "off-page"
+    assert entry.text.startswith("a line that has no end")
