@@ -49,7 +49,8 @@ def build_case(substance: Substance, readings: Sequence[Reading], parser: NamePa
     structural = [r for r in readings if r.structure is not None]
     if not structural:
         return Case(substance, readings, None, ())
-    reference = _reference(structural)
+    firm = [r for r in structural if r.evidence.id not in substance.weak]
+    reference = _reference(firm or structural)
     pairs = tuple(lay(reference, r, parser) for r in structural if r is not reference)
     case = Case(substance, readings, reference, pairs)
     atoms: dict[frozenset[int], None] = {}

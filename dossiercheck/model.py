@@ -278,6 +278,8 @@ class Evidence:
     the place calls the substance, "" where it gives none. `pending` are the tracked changes that
     touch it, their characters counted in `text`. `instead` are other extents of a name that ends
     or begins at a line end, each with its own text and place; none is left once it is settled.
+    `also` are further labels that the place gives, `under` is what the headings above name, and
+    `apart` is true where the sentence speaks of a relative ("its enantiomer, …").
     """
 
     id: str
@@ -288,6 +290,9 @@ class Evidence:
     label: str = ""
     pending: tuple[Pending, ...] = ()
     instead: tuple[Evidence, ...] = ()
+    also: tuple[str, ...] = ()
+    under: str = ""
+    apart: bool = False
 
     @property
     def kind(self) -> Kind:

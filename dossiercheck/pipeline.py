@@ -8,17 +8,19 @@ from itertools import chain
 from pathlib import Path
 
 from dossiercheck import find
+from dossiercheck.attribution import attribute
 from dossiercheck.language import gather
 from dossiercheck.lifecycle import Lifecycle, lifecycle, not_current, sections
 from dossiercheck.limits import DEFAULT, Refused
 from dossiercheck.method import CAUTION, method
 from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, Unread
+from dossiercheck.notes import Notes
 from dossiercheck.readers import reader_for
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.sequences import itself_and_above, submission
 from dossiercheck.settings import Settings
 from dossiercheck.shelf import Shelf
-from dossiercheck.substances import attribute, registered
+from dossiercheck.substances import registered
 from dossiercheck.work import Workers
 
 NO_SUBMISSION = lifecycle(submission(()))
@@ -56,11 +58,14 @@ def _review(
     progress: Progress | None,
     cycle: Lifecycle = NO_SUBMISSION,
 ) -> Review:
-    evidence, unread = _gather(items, settings, sections(cycle.submission))
+    noted = Notes(sections(cycle.submission))
+    evidence, unread = _gather(noted.over(items), settings, noted.filed)
     whole = rulebook.judge_submission(cycle)
     with Workers(settings.jobs, rulebook, progress) as workers:
         evidence = _settled(evidence, unread, workers)
-        substances, unattributed = attribute(evidence, settings.register, workers.survey)
+        substances, unattributed = attribute(
+            evidence, settings.register, workers.survey, noted.terms
+        )
         judged = workers.judge(substances)
     return Review(
         sources=sources,

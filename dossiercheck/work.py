@@ -14,6 +14,7 @@ from typing import Any, Self, TypeVar
 
 from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
+from dossiercheck import certainty
 from dossiercheck.concordance import build_case, table
 from dossiercheck.derivations import with_derivations
 from dossiercheck.interpretation import Reading, interpret
@@ -215,17 +216,18 @@ def _judge_one(substance: Substance, readings: list[Reading]) -> Judged:
     assert _State.rulebook is not None
     case = build_case(substance, readings, _State.parser)
     outcome = _State.rulebook.judge(case, case.kinds)
-    drawn = any(finding.grade is not Grade.REMARK for finding in outcome.findings)
+    graded = certainty.graded(substance, outcome.findings)
+    drawn = any(finding.grade is not Grade.REMARK for finding in graded)
     entry = SubstanceEntry(
         substance.id,
         substance.label,
         tuple(substance.evidence),
         substance.attribution,
-        table(case),
+        certainty.shown(substance, table(case)),
         drawing_of(case.structure) if drawn and case.structure else None,
     )
     unread = [entry for reading in readings for entry in _not_understood(reading)]
-    findings = with_derivations(case, outcome.findings)
+    findings = with_derivations(case, graded)
     return Judged(entry, findings, (*unread, *outcome.unread))
 
 

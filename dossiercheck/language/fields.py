@@ -13,7 +13,15 @@ from dataclasses import dataclass, field, replace
 
 from dossiercheck.language.labels import in_heading, is_label
 from dossiercheck.language.lists import parts, synonyms
-from dossiercheck.language.roles import Aside, Meaning, could_be, is_nothing, meaning_of, plain
+from dossiercheck.language.roles import (
+    Aside,
+    Meaning,
+    could_be,
+    is_nothing,
+    is_other_label,
+    meaning_of,
+    plain,
+)
 from dossiercheck.language.wrapped import stretched
 from dossiercheck.model import Evidence, Place, Role, Unread
 
@@ -107,6 +115,7 @@ class Block:
     number: int
     headings: tuple[str, ...]
     label: str = ""
+    also: tuple[str, ...] = ()
     said: list[Evidence] = field(default_factory=list)
     met: list[Met] = field(default_factory=list)
 
@@ -114,7 +123,15 @@ class Block:
         """The block's evidence with group and label."""
         label = self.label or in_heading(self.headings)
         for said in self.said:
-            yield replace(said, group=f"{self.path}#block{self.number}", label=label)
+            group = f"{self.path}#block{self.number}"
+            yield replace(said, group=group, label=label, also=self.also)
+
+    def called(self, heading: str, label: str) -> None:
+        """Take a label; after the first, one that a code's heading says is the same one's."""
+        if not self.label:
+            self.label = label
+        elif is_other_label(heading):
+            self.also += (label,)
 
 
 def value_evidence(

@@ -23,11 +23,29 @@ CODE = rf"(?!(?:{NO_CODES})\b)[A-Z]{{2,6}}-?\d{{2,7}}[A-Za-z]?(?![\w-])"
 _INVENTED = rf"[A-Z][a-z]{{5,24}}(?: {SALTS}){{0,2}}"
 
 LABEL = re.compile(rf"(?:{CLASSED}|(?<![\w-]){CODE}(?: {SALTS})*)")
-_NAMED = re.compile(_INVENTED)
+NAMED = re.compile(_INVENTED)
+# What part a substance plays; which one it is, the dossier says elsewhere.
+PART = re.compile(
+    r"\b(?:drug substance|active (?:pharmaceutical ingredient|substance|ingredient))\b",
+    re.IGNORECASE,
+)
+_CALLED = re.compile(
+    r"[\s,]*[(\[]?\s*(?:which is |that is )?"
+    r"(?:here(?:in)?after,?(?: (?:referred to as|called|named|designated))?"
+    r"|(?:referred to|known|designated|coded|abbreviated)(?: (?:below|herein|hereafter))? as"
+    rf"|called) (?:the )?[“\"'‘«]?({LABEL.pattern}|{PART.pattern}|{_INVENTED})",
+)
 _RELATION = re.compile(
     r"\b(?:enantiomers?|antipodes?|diastereo(?:iso)?mers?|epimers?|isomers?|racemates?|salts?|esters?"
     r"|analogues?|analogs?|derivatives?|metabolites?|precursors?|impurit(?:y|ies)|forms?|prodrug)"
     r"\s+(?:of|to|from)\s+(?:the\s+)?$",
+    re.IGNORECASE,
+)
+_RELATIVE = re.compile(
+    r"\b(?:enantiomer|antipode|mirror image|diastereo(?:iso)?mer|epimer|isomer|stereoisomer"
+    r"|racemate|analogue|analog|impurity|impurities|precursor|metabolite|intermediate|derivative"
+    r"|by-?product"
+    r"|starting material|reagent|resolving agent|counter-?ion)s?\b[^.;]{0,60}$",
     re.IGNORECASE,
 )
 _LEADS_ELSEWHERE = re.compile(
@@ -60,8 +78,10 @@ def in_title(title: str) -> str:
     bare = re.sub(r"^(?:\d+(?:\.(?:\d+|[SPAR]))*\.?|Table \d+[.:]?)\s+", "", title).strip()
     found = list(LABEL.finditer(bare))
     bracketed = re.search(r"\(([^()]+)\)$", bare)
-    if not found and bracketed and _NAMED.fullmatch(bracketed[1]):
+    if not found and bracketed and NAMED.fullmatch(bracketed[1]):
         return bracketed[1]
+    if len(found) == 2 and re.fullmatch(r"\s*[(\[]", bare[found[0].end() : found[1].start()]):
+        found.pop()  # "Impurity B (DX-102)": the code in brackets is another name of it
     if len({match[0] for match in found}) != 1:
         return ""
     if _RELATION.search(bare[: found[0].start()]):
@@ -80,17 +100,17 @@ def beside(text: str, start: int, end: int) -> str:
     After the name in brackets ("…amine (Impurity B)"), or before it in apposition ("Impurity B,
     …amine", "DX-101 (…amine)").
     """
-    after = re.match(r"[\s,]*[(\[]\s*([^()\[\]]{2,60}?)\s*[)\]]", text[end:])
-    if after:
-        named = _as_label(after[1])
-        if named:
-            return named
+    after = re.match(r"[\s,]*[(\[]\s*([^()\[\]]{2,90}?)\s*[)\]]", text[end:])
+    bracketed = _as_label(after[1]) if after else ""
+    called = _CALLED.match(text, end)
+    if bracketed or called:
+        return bracketed or (called[1] if called else "")
     before = text[max(0, start - 160) : start]
     joint = re.search(r"(?:,\s+|:\s+|\s+[–—=-]\s+|\s+is\s+|\s*[(\[]\s*)$", before)
     if not joint:
         return ""
     words = before[: joint.start()]
-    for pattern in (LABEL, _NAMED):
+    for pattern in (LABEL, PART, NAMED):
         for match in pattern.finditer(words):
             if match.end() != len(words) or re.search(r"[\w-]$", words[: match.start()]):
                 continue
@@ -99,15 +119,36 @@ def beside(text: str, start: int, end: int) -> str:
                 return ""
             if joint[0].startswith(",") and _LEADS_ELSEWHERE.search(lead):
                 return ""
-            return match[0] if pattern is LABEL else _invented(match[0])
+            if pattern is PART:
+                # "DX-101 drug substance, …amine" says which.
+                said = list(LABEL.finditer(lead.rstrip()))
+                known = said and said[-1].end() == len(lead.rstrip())
+                return said[-1][0] if known else match[0]
+            return _invented(match[0]) if pattern is NAMED else match[0]
     return ""
+
+
+def named(text: str) -> bool:
+    """True for a text that has the form of an invented name and is no word of sentences."""
+    return bool(NAMED.fullmatch(text) and _invented(text))
+
+
+def is_relative(before: str) -> bool:
+    """True when a sentence, up to a name, has come to speak of a relative of its subject or of
+    another material."""
+    return _RELATIVE.search(re.split(r"[.;]\s", before)[-1]) is not None
+
+
+def is_relation(before: str) -> bool:
+    """True when the words before a label speak of a relative of what it labels."""
+    return _RELATION.search(before) is not None
 
 
 def _as_label(text: str) -> str:
     found = LABEL.fullmatch(text)
     if found:
         return found[0]
-    return _invented(text) if _NAMED.fullmatch(text) else ""
+    return _invented(text) if NAMED.fullmatch(text) else ""
 
 
 def _invented(word: str) -> str:

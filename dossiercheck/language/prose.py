@@ -135,7 +135,7 @@ def _take(
         if is_nothing(value):
             continue
         if one.meaning is Aside.LABEL:
-            block.label = block.label or value.strip().rstrip(".;")
+            block.called(one.heading, value.strip().rstrip(".;"))
             continue
         if one.meaning in (Aside.IGNORED, Aside.NAME_OR_LABEL):
             continue

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 
 from dossiercheck.language.lists import parts, synonyms
@@ -10,6 +10,7 @@ from dossiercheck.language.roles import (
     Aside,
     Meaning,
     is_nothing,
+    is_other_label,
     is_own,
     looks_systematic,
     meaning_of,
@@ -40,7 +41,16 @@ def record_evidence(record: Record, columns: Mapping[str, str]) -> Iterator[Evid
     """
     group = f"{record.place.source}#record{record.place.record}"
     fields = [(field, _meaning(field, columns)) for field in record.fields]
-    label = next((f.value.strip() for f, m in fields if m is Aside.LABEL), record.title)
+    called = [(f.name, f.value.strip()) for f, m in fields if m is Aside.LABEL]
+    label = called[0][1] if called else record.title
+    also = tuple(value for name, value in called[1:] if is_other_label(name))
+    for said in _said(record, fields, group, label):
+        yield replace(said, also=also) if also and isinstance(said, Evidence) else said
+
+
+def _said(
+    record: Record, fields: Sequence[tuple[Field, Meaning | None]], group: str, label: str
+) -> Iterator[Evidence | Unread]:
     if record.molblock:
         yield Evidence("", Role.MOLFILE, record.molblock, record.place, group, label)
     for field, meaning in fields:

@@ -51,6 +51,15 @@ KEYS: Mapping[str, Meaning] = MappingProxyType(
     }
 )
 
+# Headings under which a second label of the same substance stands. Others that mean a label may
+# name another substance in the same row: an impurity and the intermediate it comes from.
+_OTHER_LABELS = """
+    code | laboratory code | lab code | company code | compound code | substance code
+    impurity code | internal code | INN | INN name | international non-proprietary name
+    recommended INN | trivial name | common name | substance name | compound name | abbreviation
+    impurity name | designation
+    """
+
 NO_COLUMNS: Mapping[str, str] = MappingProxyType({})
 
 _SYNONYMS: Mapping[Meaning, str] = {
@@ -209,6 +218,14 @@ def meaning_of(heading: str, columns: Mapping[str, str] = NO_COLUMNS) -> Meaning
     if len(heading) > 80:
         return None
     return _INDEX.get(plain(heading)) or _INDEX.get(plain(_UNIT.sub("", heading)))
+
+
+_OTHERS = {plain(one) for one in re.split(r"[|\n]", _OTHER_LABELS) if one.strip()}
+
+
+def is_other_label(heading: str) -> bool:
+    """Whether what stands under a heading is another label of the same substance."""
+    return plain(heading) in _OTHERS
 
 
 def is_own(heading: str, columns: Mapping[str, str]) -> bool:

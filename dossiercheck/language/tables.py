@@ -14,6 +14,7 @@ from dossiercheck.language.roles import (
     Meaning,
     could_be,
     is_nothing,
+    is_other_label,
     is_own,
     looks_systematic,
     meaning_of,
@@ -154,6 +155,7 @@ def _from_columns(
         if not any(cell.text for cell in row):
             continue
         label = _row_label(row, roles) or standing
+        also = _row_codes(row, roles, heads)
         group = f"{sheet.name}row{_own_row(row)}"
         seen: set[int] = set()
         for index, cell in enumerate(row):
@@ -161,7 +163,10 @@ def _from_columns(
                 continue
             seen.add(id(cell))
             named = _named(sheet, cell, heads[index].text)
-            yield from _cell(sheet, named, heads[index].text, roles[index], group, label)
+            for said in _cell(sheet, named, heads[index].text, roles[index], group, label):
+                if also and isinstance(said, Evidence) and said.group:
+                    said = replace(said, also=also)
+                yield said
 
 
 def _own_row(row: tuple[Cell, ...]) -> int:
@@ -181,6 +186,19 @@ def _row_label(row: tuple[Cell, ...], roles: list[Meaning | None]) -> str:
         if role is Aside.NAME_OR_LABEL and cell.text and not looks_systematic(cell.text):
             return cell.text
     return ""
+
+
+def _row_codes(
+    row: tuple[Cell, ...], roles: list[Meaning | None], heads: tuple[Cell, ...]
+) -> tuple[str, ...]:
+    """The labels of a row behind the first, where their headings say that they are the same
+    substance's."""
+    labels = [
+        (cell.text, head.text)
+        for cell, role, head in zip(row, roles, heads, strict=True)
+        if role is Aside.LABEL and not is_nothing(cell.text)
+    ]
+    return tuple(text for text, head in labels[1:] if is_other_label(head))
 
 
 def _named(sheet: _Sheet, cell: Cell, heading: str) -> Cell:
@@ -228,6 +246,7 @@ def _one_column(
     met: list[Met] = []
     part = 1
     own = ""
+    also: tuple[str, ...] = ()
     waiting: list[Evidence] = []
     left = ""
     for row in body:
@@ -240,8 +259,8 @@ def _one_column(
         left = beyond or left
         again = role is not None and starts_next(role, head.text, met)
         if changed or again:
-            yield from (replace(said, label=own or label) for said in waiting)
-            waiting, met, own, part = [], [], "", part + 1
+            yield from (replace(said, label=own or label, also=also) for said in waiting)
+            waiting, met, own, also, part = [], [], "", (), part + 1
         if column and beyond:
             own = own or beyond
         if is_nothing(cell.text):
@@ -249,6 +268,8 @@ def _one_column(
         if role is not None:
             met.append((role, plain(head.text)))
         if role is Aside.LABEL or (role is Aside.NAME_OR_LABEL and not looks_systematic(cell.text)):
+            if own and is_other_label(head.text):
+                also += (cell.text,)
             own = own or cell.text
             continue
         group = f"{sheet.name}column{value_column + 1}" + (f"part{part}" if part > 1 else "")
@@ -258,7 +279,7 @@ def _one_column(
                 waiting.append(said)
             else:
                 yield said
-    yield from (replace(said, label=own or label) for said in waiting)
+    yield from (replace(said, label=own or label, also=also) for said in waiting)
 
 
 def _named_field(sheet: _Sheet, cell: Cell, heading: str) -> Cell:

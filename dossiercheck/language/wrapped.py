@@ -12,7 +12,7 @@ from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
-from dossiercheck.language.labels import beside
+from dossiercheck.language.labels import beside, in_heading, is_relative
 from dossiercheck.language.running import (
     HYPHENS,
     PRIMES,
@@ -174,9 +174,18 @@ def loose_name(
 ) -> Evidence | Unread:
     """One name of a line from `start` to `end`, with its other extents."""
     text = holder.text[start:end]
+    under = in_heading(holder.headings) if isinstance(holder, Passage) else ""
     extents = [(found.candidate.start, found.candidate.end), *found.others]
     names = [
-        Evidence("", Role.NAME, text[a:b], holder.at(start + a, start + b), label=label)
+        Evidence(
+            "",
+            Role.NAME,
+            text[a:b],
+            holder.at(start + a, start + b),
+            label=label,
+            under=under,
+            apart=not label and is_relative(text[:a]),
+        )
         for a, b in extents
     ]
     names = [touched(said, holder.pending, holder.text) for said in names]

@@ -74,6 +74,13 @@ def compare_constitution(one: Structure, two: Structure) -> Constitution:
     return Constitution(DIFFERENT, difference(*formulas))
 
 
+def parent(structure: Structure) -> str:
+    """The largest component without charges and stereo, as SMILES: what a salt, a solvate and the
+    free base or acid of a substance have in common."""
+    with quiet():
+        return max((_neutral(part) for part in structure.flat.split(".")), key=_weight)
+
+
 def _neutral(smiles: str, force: bool = False) -> str:
     mol = Chem.MolFromSmiles(smiles)
     if mol is None:

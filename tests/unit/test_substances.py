@@ -6,11 +6,13 @@ from collections.abc import Sequence
 
 import pytest
 
+from dossiercheck.attribution import attribute
+from dossiercheck.calling import key_of
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Evidence, Place, Role
 from dossiercheck.settings import RegisterEntry
 from dossiercheck.stereo.perception import from_smiles
-from dossiercheck.substances import Identity, Substance, attribute, identities, key_of
+from dossiercheck.substances import Identity, Substance, identities
 
 THREONINE = "C[C@@H](O)[C@H](N)C(=O)O"
 ALLO = "C[C@H](O)[C@H](N)C(=O)O"
@@ -45,6 +47,10 @@ def nobody(_: Sequence[Substance]) -> list[frozenset[Identity]]:
         ("(−)-Lavorin", "( - )-lavorin", True),
         ("(+/-)-Lavorin", "(±)-Lavorin", True),
         ("Lavorin (B)", "Lavorin-B", True),
+        ("Imp. B", "Impurity B", True),
+        ("specified impurity B", "Impurity B", True),
+        ("Int-3", "Intermediate 3", True),
+        ("Imperator B", "Impurity B", False),
     ],
 )
 def test_what_makes_two_labels_the_same(one: str, two: str, same: bool) -> None:
@@ -63,7 +69,7 @@ def test_the_same_label_is_one_substance_however_it_is_written() -> None:
         ("s2", "Impurity C", ["e3"]),
     ]
     assert unread == []
-    assert substances[0].attribution["e1"] == "called “Impurity B”"
+    assert substances[0].attribution["e1"] == "firm: called “Impurity B”"
 
 
 def test_a_label_speaks_for_its_whole_group() -> None:

@@ -90,7 +90,8 @@ def test_text_between_ends_a_block() -> None:
     ("headings", "label"),
     [
         (("Impurity B",), "Impurity B"),
-        (("3.2.S.3.2 Impurities", "Impurity B (DX-102)"), ""),
+        (("3.2.S.3.2 Impurities", "Impurity B (DX-102)"), "Impurity B"),
+        (("3.2.S.3.2 Impurities", "Impurity B from DX-102"), ""),
         (("3.2.S.1 General information (DX-101)", "3.2.S.1.2 Structure"), "DX-101"),
         (("3.2.S.1 General information (Dorvaquelan tartrate)",), "Dorvaquelan tartrate"),
         (("DX-101", "Impurities"), ""),
