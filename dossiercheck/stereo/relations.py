@@ -159,11 +159,11 @@ def _related(space: Space, states: tuple[State, State]) -> Relation:
     if any(state.axes for state in states) and kind != DIASTEREOMER:
         return Relation(UNDETERMINED, note="an axis or helix is marked, and is not compared")
     notes += [note] if note else []
-    if kind not in (ENANTIOMER, DIASTEREOMER) or any(state.together for state in states):
-        return Relation(kind, racemic=racemic, note="; ".join(notes))
     settled = any(state.open or state.either for state in states)
     if settled:
-        notes += ["settled by the other units: " + "; ".join(_why(states))]
+        notes += ["settled all the same: " + "; ".join(_why(states))]
+    if kind not in (ENANTIOMER, DIASTEREOMER) or any(state.together for state in states):
+        return Relation(kind, racemic=racemic, note="; ".join(notes))
     mask = ~(states[0].open | states[1].open)
     numbers = _fewest(
         space,

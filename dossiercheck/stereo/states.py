@@ -40,6 +40,7 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
     """What `structure` says of the units of `space`, laid on it by `mapping` (from the space's
     atoms); `graph` is the structure's own. A unit that two computations describe differently is
     open."""
+    confirmed(structure, ())  # from here on `described` is there
     bits = unknown = 0
     doubts = []
     images = [tuple(mapping[atom] for atom in atoms) for atoms in space.atoms]

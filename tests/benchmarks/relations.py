@@ -24,6 +24,7 @@ from random import Random
 from typing import Any
 
 from rdkit import Chem, RDLogger
+from rdkit.Chem import rdMolDescriptors
 
 from dossiercheck.stereo.perception import from_molblock, from_smiles
 from dossiercheck.stereo.relations import relation
@@ -63,10 +64,20 @@ def _same(one: Identity, two: Identity) -> bool:
 
 
 def _identity(mol: Chem.Mol) -> Identity:
-    found = molecules.identity(mol)
+    found = molecules.identity(_directed(mol))
     if found is None or not found.fixed or not found.smiles:
         raise Divided
     return found
+
+
+def _directed(mol: Chem.Mol) -> Chem.Mol:
+    """With the bonds beside double bonds pointing as the geometry says: the writer of line
+    notations would go by the directions as first drawn."""
+    pointed = Chem.Mol(mol)
+    for bond in pointed.GetBonds():
+        bond.SetBondDir(Chem.BondDir.NONE)
+    Chem.SetDoubleBondNeighborDirections(pointed)
+    return pointed
 
 
 def _written(mol: Chem.Mol, dice: Random) -> str:
@@ -74,7 +85,7 @@ def _written(mol: Chem.Mol, dice: Random) -> str:
     that does not show what it should is not used."""
     order = list(range(mol.GetNumAtoms()))
     dice.shuffle(order)
-    again = Chem.RenumberAtoms(mol, order)
+    again = Chem.RenumberAtoms(_directed(mol), order)
     again.RemoveAllConformers()
     wanted = _identity(mol)
     if dice.random() < 0.5:
@@ -134,6 +145,8 @@ def _bond(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, s
         raise LookupError
     unit = dice.choice(bonds)
     other = molecules.with_units(mol, flip=[unit])
+    if molecules.standard_inchi(_directed(mol)) == molecules.standard_inchi(_directed(other)):
+        return other, "same", [unit]  # a C=N at which hydrogen is mobile
     kind = _stereo_relation(mol, other)
     return other, kind + (" geometry" if kind == "diastereomer" else ""), [unit]
 
@@ -193,7 +206,9 @@ def _salt(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, s
 
 def _silent(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, str, list[Unit]]:
     """A centre left open that matters: with either configuration there it is another compound."""
-    centres = [unit for unit, _ in record.units if len(unit) == 1]
+    held: list[int] = []
+    rdMolDescriptors.CalcNumBridgeheadAtoms(mol, held)  # these have no choice of their own
+    centres = [u for u, _ in record.units if len(u) == 1 and u[0] - 1 not in held]
     if not centres:
         raise LookupError
     unit = dice.choice(centres)
@@ -225,9 +240,6 @@ def pairs(records: Sequence[SoundRecord], size: int, left_out: Counter[str]) -> 
         if mol is None:
             left_out["not read by the library"] += 1
             continue
-        # Else the writer of line notations would still go by the directions as drawn.
-        for bond in mol.GetBonds():
-            bond.SetBondDir(Chem.BondDir.NONE)
         for way, change in _WAYS.items():
             if made[way] >= share:
                 continue
