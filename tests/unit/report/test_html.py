@@ -3,6 +3,7 @@
 import html as entities
 import json
 import re
+from dataclasses import replace
 
 import pytest
 from hypothesis import given, settings
@@ -271,3 +272,22 @@ def test_wide_concordance_is_cut_into_parts_that_keep_the_reference() -> None:
     assert [one for block in columns for one in block[1:]] == [f"E{n}" for n in range(2, 15)]
     tree = parser.document_fromstring(rendered(sample.replace(sample.clean(), substances=(wide,))))
     assert "part 2 of 3" in words(tree)
+
+
+def test_each_unit_of_a_finding_has_its_derivation_and_the_first_six_their_picture() -> None:
+    first, *others = sample.FINDINGS
+    drawn = replace(first.exhibits[0], derived=(sample.derived(17),) * 8)
+    finding = replace(first, exhibits=(drawn, *first.exhibits[1:]))
+    made = parser.document_fromstring(
+        rendered(replace(sample.review(), findings=(finding, *others)))
+    )
+    folds = made.xpath("//article[@id='f1']//details[@class='derived']")
+    assert len(folds) == 8
+    assert not any("open" in fold.attrib for fold in folds)
+    assert [len(fold.findall(".//svg")) for fold in folds] == [1] * 6 + [0] * 2
+    for fold in folds:
+        assert words(fold.find("summary")) == "Drawing E1, centre at atom 18: R. How it follows"
+        steps = [words(step) for step in fold.iter("li")]
+        assert steps == list(sample.derived(17).steps)
+    assert "first six units only" in words(folds[7])
+    assert "first six units only" not in words(folds[5])
