@@ -332,6 +332,21 @@ def test_xml_with_a_harmless_document_type_can_be_asked_for() -> None:
     assert caught.value.reason == "entities"
 
 
+@pytest.mark.parametrize("text", ["<a>(2&prime;)-b</a>", "<a b='(2&prime;)-b'/>"])
+def test_an_entity_that_only_an_unread_file_declares_is_not_dropped(text: str) -> None:
+    """XML 1.0, section 4.1: with an external subset such a reference is not a fatal error."""
+    with pytest.raises(Refused) as caught:
+        parse_xml(f"<!DOCTYPE a SYSTEM 'a.dtd'>{text}".encode(), doctype=True)
+    assert caught.value.reason == "entities"
+    assert "prime" in caught.value.detail
+
+
+def test_characters_by_number_and_what_only_looks_like_an_entity_pass() -> None:
+    text = "<a>&amp;&#8242;&#x2032;<!-- &x; --><![CDATA[&y;]]></a>"
+    root = parse_xml(f"<!DOCTYPE a SYSTEM 'a.dtd'>{text}".encode(), doctype=True)
+    assert "".join(map(str, root.xpath("//text()"))) == "&′′&y;"
+
+
 def test_a_damaged_sheet_leaves_the_others() -> None:
     made = openpyxl.Workbook()
     made.active.append(["Code"])
