@@ -20,8 +20,17 @@ _LARGEST = 40  # heavy atoms; larger ones cost time and show no other rule
 
 def handbook() -> tuple[str, ...]:
     """The notations of the hand-ranked cases, but for those that the library gets wrong."""
+    return _notations(library=True)
+
+
+def unknown_to_the_library() -> tuple[str, ...]:
+    """The notations of the hand-ranked cases with a unit that only the engine knows."""
+    return _notations(library=False)
+
+
+def _notations(*, library: bool) -> tuple[str, ...]:
     cases = tomllib.loads(_CASES.read_text("utf-8"))["case"]
-    return tuple(case["smiles"] for case in cases if "smiles" in case and "library" not in case)
+    return tuple(c["smiles"] for c in cases if "smiles" in c and ("library" in c) != library)
 
 
 def dictionary(size: int, seed: int = 1) -> tuple[str, ...]:
