@@ -109,6 +109,7 @@ class Dossier:
     records: Mapping[str, tuple[tuple[str, str], ...]]
     who: tuple[tuple[Words, str], ...]
     mutations: tuple[tuple[str, str, str, str], ...]
+    base: str = ""
     kind: str = ""
     gravity: str = ""
     planted: tuple[Words, ...] = ()
@@ -201,6 +202,7 @@ def _dossier(
         records={path: tuple(listed) for path, listed in records.items()},
         who=tuple(expected),
         mutations=tuple((k, p, _fill(a, known, p), b) for k, p, a, b in data.get("mutations", ())),
+        base=data.get("base", ""),
         kind=data.get("kind", ""),
         gravity=data.get("gravity", ""),
         planted=tuple(planted),
@@ -255,7 +257,7 @@ def changed(path: str, text: str, quotation: str, instead: str) -> tuple[str, Wo
     line = lines[words.line - 1]
     lines[words.line - 1] = line[: words.start] + instead + line[words.end :]
     end = words.start + len(instead)
-    new = lines[words.line - 1] if not instead else instead
+    new = instead or lines[words.line - 1]
     if not instead:
         return "\n".join(lines), Words(path, words.line, 0, len(new), new)
     return "\n".join(lines), Words(path, words.line, words.start, end, instead)

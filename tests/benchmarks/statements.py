@@ -26,6 +26,7 @@ from dossiercheck.model import Finding, Grade, Place, Review, State, Unread
 from tests.benchmarks.dossiers import SETS, Dossier, Words, dossiers
 
 GRAVE = (Grade.CRITICAL, Grade.MAJOR)
+Signature = tuple[Grade, str, str]
 
 
 def review(dossier: Dossier) -> Review:
@@ -66,18 +67,13 @@ def base(key: str) -> str:
     return key.split("/")[0]
 
 
-def attribution(dossier: Dossier, result: Review) -> Counter[str]:
-    """How many expected evidences came to what: right, wrong, unread, silent.
+def attributed(dossier: Dossier, result: Review) -> Iterator[tuple[Words, str, str]]:
+    """Each expected evidence, its substance and its outcome: right, wrong, unread, silent.
 
     Each substance of the review is taken for the one that most of its quoted evidence speaks of;
     of two that claim the same one the larger has it, and the other's evidence is wrong. A form
     kept as a substance of its own is right, and so is one kept with its substance.
     """
-    return Counter(outcome for _, _, outcome in attributed(dossier, result))
-
-
-def attributed(dossier: Dossier, result: Review) -> Iterator[tuple[Words, str, str]]:
-    """Each expected evidence, its substance and its outcome."""
     holders: list[tuple[Words, str, set[str]]] = []
     votes: dict[str, Counter[str]] = defaultdict(Counter)
     for words, key in dossier.who:
@@ -113,16 +109,24 @@ def attributed(dossier: Dossier, result: Review) -> Iterator[tuple[Words, str, s
 # --- contradictions -----------------------------------------------------------------------
 
 
-def planted_found(dossier: Dossier, result: Review) -> str:
-    """Found, only of a lower grade, undetermined (the words are listed as unread), or missed."""
+def planted_found(dossier: Dossier, result: Review, before: Counter[Signature]) -> str:
+    """Found, only of a lower grade, undetermined (the words are listed as unread), or missed.
+    What the sound dossier that it comes from was found with already (`before`) does not count."""
+    left = before.copy()
+    new = []
+    for one in result.findings:
+        if left[_signature(one)]:
+            left[_signature(one)] -= 1
+        else:
+            new.append(one)
     if dossier.missing:
-        for finding in result.findings:
+        for finding in new:
             said = f"{finding.message} {finding.rule}".casefold()
             if finding.rule.startswith("coverage/") and any(w in said for w in dossier.missing):
                 return "found"
         return "missed"
     graver = Grade(dossier.gravity).gravity
-    quoting = [one for one in result.findings if _quotes(one, dossier.planted)]
+    quoting = [one for one in new if _quotes(one, dossier.planted)]
     if any(one.grade.gravity <= graver for one in quoting):
         return "found"
     if quoting:
@@ -163,7 +167,7 @@ def mutation_outcome(before: Review, after: Review, places: Sequence[Words]) -> 
     return "silent"
 
 
-def _signature(finding: Finding) -> tuple[Grade, str, str]:
+def _signature(finding: Finding) -> Signature:
     return finding.grade, finding.rule, finding.message
 
 
@@ -200,7 +204,8 @@ class Outcome:
 def measure(corpus: Iterable[Dossier]) -> Outcome:
     """Run every dossier, and every mutation of the sound ones."""
     total = Outcome()
-    for dossier in corpus:
+    before: dict[str, Counter[Signature]] = {}
+    for dossier in sorted(corpus, key=lambda one: not one.sound):
         result = review(dossier)
         total.dossiers += 1
         for words, key, outcome in attributed(dossier, result):
@@ -208,9 +213,10 @@ def measure(corpus: Iterable[Dossier]) -> Outcome:
             if outcome != "right":
                 total.notes.append(f"{dossier.id}: {outcome}: {words.path}: {words.text} → {key}")
         if dossier.sound:
+            before[dossier.id] = Counter(map(_signature, result.findings))
             _sound(total, dossier, result)
         else:
-            outcome = planted_found(dossier, result)
+            outcome = planted_found(dossier, result, before.get(dossier.base, Counter()))
             total.planted[outcome] += 1
             total.kinds[dossier.kind][outcome] += 1
             if outcome != "found":
@@ -251,7 +257,6 @@ def summary(total: Outcome) -> dict[str, Any]:
         "false_grave_per_20_sound": round(20 * total.alarms / max(total.sound, 1), 2),
         "coverage_findings_on_sound": total.coverage,
         "mutations": {"expected": sum(mutated.values()), **mutated},
-        "mutations_by_kind": {kind: dict(tally) for kind, tally in sorted(total.mutations.items())},
         "mutations_silent_share": _share(mutated["silent"], sum(mutated.values())),
     }
 
@@ -287,6 +292,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         if which == "tuning":
             # Which kinds are missed in the hold-out would be tuned to, so it is not said.
             figures["planted_by_kind"] = {k: dict(v) for k, v in sorted(total.kinds.items())}
+            figures["mutations_by_kind"] = {k: dict(v) for k, v in sorted(total.mutations.items())}
         report[which] = figures
         print(which, *table(figures), sep="\n", end="\n\n")
         if options.list and which == "tuning":
