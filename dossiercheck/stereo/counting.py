@@ -5,7 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from dossiercheck.stereo.graph import Centre
-from dossiercheck.stereo.space import Space, space_of
+from dossiercheck.stereo.possible import space_of
+from dossiercheck.stereo.space import Space
 from dossiercheck.stereo.structure import Structure, is_pyramidal_nitrogen
 from dossiercheck.stereo.symmetry import TooSymmetric
 

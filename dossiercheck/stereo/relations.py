@@ -11,14 +11,14 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 
 from rdkit import Chem
-from rdkit.Chem import rdMolDescriptors
-from rdkit.Chem.MolStandardize import rdMolStandardize
 
 from dossiercheck.stereo import constitution as con
 from dossiercheck.stereo.graph import Centre, Graph, graph_of
+from dossiercheck.stereo.isomers import are_isomers
 from dossiercheck.stereo.mapping import best_mapping
-from dossiercheck.stereo.perception import quiet
-from dossiercheck.stereo.space import Space, moves_of, part_of, space_of
+from dossiercheck.stereo.notation import inchi_of
+from dossiercheck.stereo.possible import space_of
+from dossiercheck.stereo.space import Space, moves_of, part_of
 from dossiercheck.stereo.states import Mixture, State, alternatives, leader, orbit, state_of
 from dossiercheck.stereo.structure import Structure
 from dossiercheck.stereo.symmetry import TooSymmetric
@@ -54,7 +54,9 @@ def relation(one: Structure, two: Structure) -> Relation:
     """Compare two structures, salts by their main components."""
     found = con.compare_constitution(one, two)
     if found.verdict == con.DIFFERENT:
-        return _constitutions(one, two, found)
+        isomers, note = are_isomers(one, two, found)
+        kinds = {True: CONSTITUTIONAL, False: DIFFERENT, None: UNDETERMINED}
+        return Relation(kinds[isomers], note=note)
     if found.verdict == con.TAUTOMER:
         return Relation(UNDETERMINED, note=found.detail)
     graphs = graph_of(one), graph_of(two)
@@ -133,7 +135,9 @@ def _judged(one: Structure, two: Structure, graphs: tuple[Graph, Graph], exact: 
         state_of(two, graphs[1], space, mapped.mapping),
     )
     found = _related(space, states)
-    if not mapped.mapping or (exact or mapped.cost == (0, 0)) or found.kind == UNDETERMINED:
+    if exact and found.geometry and _not_fixed(one, two):
+        return Relation(UNDETERMINED, note="hydrogen or charge can move along the double bond")
+    if exact or mapped.cost == (0, 0) or found.kind == UNDETERMINED:
         return found
     # Hydrogens and charges stand elsewhere: what holds under the symmetries of the structure as
     # drawn and under those of its bare skeleton holds under those in between.
@@ -141,6 +145,13 @@ def _judged(one: Structure, two: Structure, graphs: tuple[Graph, Graph], exact: 
     if _related(loose, states).kind != found.kind:
         return Relation(UNDETERMINED, note="it depends on where the mobile hydrogens stand")
     return found
+
+
+def _not_fixed(one: Structure, two: Structure) -> bool:
+    """Whether the standard InChI sees no fixed double bond where two drawings differ, as in
+    cyanines: a second opinion on a difference in geometry alone."""
+    forms = inchi_of(one), inchi_of(two)
+    return bool(forms[0]) and forms[0] == forms[1]
 
 
 def _related(space: Space, states: tuple[State, State]) -> Relation:
@@ -156,6 +167,8 @@ def _related(space: Space, states: tuple[State, State]) -> Relation:
     if len(outcomes) > 1:
         return Relation(UNDETERMINED, note="; ".join([*notes, *_why(states)]))
     kind, racemic, note = outcomes.pop()
+    if kind == SAME and any(a * b < 0 for a, b in zip(*(s.imines for s in states), strict=True)):
+        return Relation(UNDETERMINED, note="they differ only at a C=N–H")
     if any(state.axes for state in states) and kind != DIASTEREOMER:
         return Relation(UNDETERMINED, note="an axis or helix is marked, and is not compared")
     notes += [note] if note else []
@@ -226,33 +239,3 @@ def _why(states: tuple[State, State]) -> list[str]:
 def _number(bits: int) -> str:
     count = bin(bits).count("1")
     return "one unit" if count == 1 else f"{count} units"
-
-
-# --- constitutions ------------------------------------------------------------------------
-
-
-def _constitutions(one: Structure, two: Structure, found: con.Constitution) -> Relation:
-    with quiet():
-        if found.detail.startswith("isotopes"):
-            return Relation(DIFFERENT, note=found.detail)
-        parents = [Chem.MolFromSmiles(con.parent(structure)) for structure in (one, two)]
-        if None in parents:
-            return Relation(UNDETERMINED, note="the main components cannot be told apart")
-        if _without_isotopes(parents[0]) == _without_isotopes(parents[1]):
-            return Relation(UNDETERMINED, note="they differ in where the isotopes stand")
-        formulas = [rdMolDescriptors.CalcMolFormula(mol, True, True) for mol in parents]
-        if formulas[0] != formulas[1]:
-            return Relation(DIFFERENT, note=found.detail)
-        drawn = {Chem.MolToSmiles(rdMolStandardize.Normalize(mol)) for mol in parents}
-    if len(drawn) == 1:
-        return Relation(UNDETERMINED, note="one constitution, drawn with other bonds or charges")
-    parts = len(one.components()), len(two.components())
-    note = found.detail if parts == (1, 1) else "the main components are compared"
-    return Relation(CONSTITUTIONAL, note=note)
-
-
-def _without_isotopes(mol: Chem.Mol) -> str:
-    bare = Chem.Mol(mol)
-    for atom in bare.GetAtoms():
-        atom.SetIsotope(0)
-    return str(Chem.MolToSmiles(bare))

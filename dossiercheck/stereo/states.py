@@ -23,8 +23,9 @@ Mixture = frozenset[int]
 @dataclass(frozen=True, slots=True)
 class State:
     """`bits` of the units, those in `open` not known; `together` and `either` are the bits that
-    an "and" and an "or" group turn as one. `axes` where an axis or helix is marked, `ignored`
-    where a unit outside the space is. `doubts` say why a marked unit is open all the same."""
+    an "and" and an "or" group turn as one. `axes`: an axis or helix is marked; `ignored`: a unit
+    that the space leaves out is; `strange`: any other unit is. `imines` has +1, -1 or, where it
+    is silent, 0 for each C=N–H. `doubts` say why a marked unit is open all the same."""
 
     bits: int
     open: int
@@ -33,6 +34,7 @@ class State:
     axes: bool
     ignored: bool
     strange: bool
+    imines: tuple[int, ...]
     doubts: tuple[str, ...]
 
 
@@ -68,8 +70,14 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
         )
         if mask:
             groups[group.kind].append(mask)
+    imines = []
+    for imine in space.imines:
+        shown = graph.bonds.get(frozenset(mapping[end] for end in imine.ends))
+        same = None if shown is None else alike(imine, shown, mapping)
+        imines.append(0 if same is None else 1 if same else -1)
     known = {frozenset(image) for image in images}
-    left_out = {frozenset(mapping[atom] for atom in atoms) for atoms in space.left_out}
+    outside = [*space.left_out, *(imine.ends for imine in space.imines)]
+    left_out = {frozenset(mapping[atom] for atom in atoms) for atoms in outside}
     covered = set(mapping.values())
     described_units = [
         one for one in (structure.described or {}).values() if set(one.atoms) <= covered
@@ -88,6 +96,7 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
         bool(axes),
         bool(marked & left_out),
         bool(marked - known - left_out - axes),
+        tuple(imines),
         tuple(dict.fromkeys(filter(None, doubts))),
     )
 

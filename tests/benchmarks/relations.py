@@ -34,6 +34,7 @@ from tests.benchmarks.corpus import SoundRecord
 from tests.benchmarks.molecules import Identity, Unit
 
 _SEED = 5
+WITHHELD = "right, units withheld"  # a unit elsewhere is open, or its wedge ambiguous
 _DONATES = Chem.MolFromSmarts("[#6;!$([#6]=*);!$([#6]#*);!a:1][CH3,F,Cl,Br,I,$([OH][#6]):2]")
 _TAKES = Chem.MolFromSmarts("[CX4;H1,H2,H3]")
 _BASE = Chem.MolFromSmarts("[NX3;!$(N~[!#6]);!$(N-[#6]=,#,:[*]);!$(N#*)]")
@@ -146,7 +147,9 @@ def _bond(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, s
     unit = dice.choice(bonds)
     other = molecules.with_units(mol, flip=[unit])
     if molecules.standard_inchi(_directed(mol)) == molecules.standard_inchi(_directed(other)):
-        return other, "same", [unit]  # a C=N at which hydrogen is mobile
+        # Hydrogen is mobile at a C=N, or a charge runs along a chain of double bonds.
+        nitrogen = any(mol.GetAtomWithIdx(a - 1).GetSymbol() == "N" for a in unit)
+        return other, "same" if nitrogen else "undetermined", [unit]
     kind = _stereo_relation(mol, other)
     return other, kind + (" geometry" if kind == "diastereomer" else ""), [unit]
 
@@ -291,6 +294,10 @@ def judge(pair: Pair) -> tuple[str, bool]:
     first = _read(pair.first)
     found = relation(first, _read(pair.second))
     said = found.kind
+    kind, _, flag = pair.expected.partition(" ")
+    open_elsewhere = found.note.startswith("settled all the same")
+    if flag in ("epimer", "geometry") and said == kind and open_elsewhere:
+        return WITHHELD, True
     said += " epimer" if found.epimer else ""
     said += " geometry" if found.geometry else ""
     if pair.expected.split()[-1] not in ("epimer", "geometry"):
@@ -311,10 +318,12 @@ def measure(size: int) -> dict[str, Any]:
     wrong = []
     for pair in pairs(corpus.load(2 * size).records, size, left_out):
         said, unit = judge(pair)
-        outcome = "right" if said == pair.expected and unit else "wrong"
+        outcome = "right" if said in (pair.expected, WITHHELD) and unit else "wrong"
         if outcome == "wrong" and said == "undetermined":
             outcome = "undetermined"
         ways.setdefault(pair.made, Counter())[outcome] += 1
+        if said == WITHHELD:
+            ways[pair.made][WITHHELD] += 1
         ways[pair.made][f"expected {pair.expected}"] += 1
         if outcome != "right":
             wrong.append(
@@ -325,6 +334,7 @@ def measure(size: int) -> dict[str, Any]:
     return {
         "pairs": total["right"] + total["wrong"] + total["undetermined"],
         "right": total["right"],
+        "of these with the units withheld": total[WITHHELD],
         "wrong": total["wrong"],
         "undetermined though determined": total["undetermined"],
         "ways": {way: dict(counts) for way, counts in ways.items()},
