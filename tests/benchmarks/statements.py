@@ -18,6 +18,7 @@ import tempfile
 from collections import Counter, defaultdict
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, field
+from functools import cache
 from pathlib import Path
 from typing import Any
 
@@ -35,7 +36,13 @@ def review(dossier: Dossier) -> Review:
         folder = Path(place) / "dossier"
         dossier.write(folder)
         chosen = settings.load(settings.find([folder]))
-        return pipeline.review([folder], chosen, rulebook.load(chosen))
+        return pipeline.review([folder], chosen, _rules())
+
+
+@cache
+def _rules() -> rulebook.Rulebook:
+    # No dossier of the corpus changes a rule.
+    return rulebook.load(settings.Settings())
 
 
 # --- places -------------------------------------------------------------------------------
