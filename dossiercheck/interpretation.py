@@ -7,6 +7,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from dossiercheck.language.crystal import CLAIMS, Measured, measured
+from dossiercheck.language.rotation import Rotation, read_rotation
 from dossiercheck.language.statements import Statement, read_statement
 from dossiercheck.model import Evidence, Kind, Role, Unread
 from dossiercheck.names.parser import NameParser
@@ -29,7 +30,8 @@ class Reading:
     """One evidence with what was understood of it.
 
     `structure` is what a drawing, notation or name says; `name` the details of a name;
-    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim;
+    `formula`, `mass` (value, number of printed decimals) of a property, `statement` of a claim,
+    `rotation` of a printed one;
     `flack`, `space_group` and `claim` (a code of `CLAIMS`) come from a crystal structure.
     `refusal` says why nothing was understood, "" where something was; `reason` is its slug.
     `like` is the drawing it was laid on and the mapping from there, so that both can be shown in
@@ -42,6 +44,7 @@ class Reading:
     formula: Formula | None = None
     mass: tuple[float, int] | None = None
     statement: Statement | None = None
+    rotation: Rotation | None = None
     flack: Measured | None = None
     space_group: SpaceGroup | None = None
     claim: str = ""
@@ -146,6 +149,11 @@ def _other(said: Evidence) -> Reading:
                 refusal = "the statement is not one the program understands for certain"
                 return Reading(said, reason="statement-not-understood", refusal=refusal)
             return Reading(said, statement=statement)
+        case Role.ROTATION:
+            rotation = read_rotation(text)
+            if rotation is None:
+                return Reading(said, reason="malformed", refusal="not read as one optical rotation")
+            return Reading(said, rotation=rotation)
     return Reading(said)
 
 

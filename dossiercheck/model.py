@@ -35,6 +35,7 @@ class Role(StrEnum):
     MASS = "relative molecular mass"
     REGISTRY = "registry number"
     STEREO = "stereochemistry statement"
+    ROTATION = "optical rotation"
     ABSOLUTE = "claim of absolute configuration"
     FLACK = "Flack parameter"
     SPACE_GROUP = "space group"
@@ -55,6 +56,7 @@ _KINDS = {
     Role.MASS: Kind.PROPERTY,
     Role.REGISTRY: Kind.PROPERTY,
     Role.STEREO: Kind.STATEMENT,
+    Role.ROTATION: Kind.PROPERTY,
     Role.ABSOLUTE: Kind.STATEMENT,
     Role.FLACK: Kind.PROPERTY,
     Role.SPACE_GROUP: Kind.PROPERTY,
@@ -279,7 +281,9 @@ class Evidence:
     touch it, their characters counted in `text`. `instead` are other extents of a name that ends
     or begins at a line end, each with its own text and place; none is left once it is settled.
     `also` are further labels that the place gives, `under` is what the headings above name, and
-    `apart` is true where the sentence speaks of a relative ("its enantiomer, …").
+    `apart` is true where the sentence speaks of a relative ("its enantiomer, …"). `other` is the label of
+    the substance that a statement compares with, where its words only point to it (“its
+    enantiomer”).
     """
 
     id: str
@@ -290,6 +294,7 @@ class Evidence:
     label: str = ""
     pending: tuple[Pending, ...] = ()
     instead: tuple[Evidence, ...] = ()
+    other: str = ""
     also: tuple[str, ...] = ()
     under: str = ""
     apart: bool = False

@@ -56,6 +56,7 @@ EVIDENCE_KEYS = (
     "name",
     "registry",
     "smiles",
+    "rotation",
     "space_group",
     "stereo",
 )

@@ -29,6 +29,7 @@ COLUMN_ROLES = (
     "stereo",
     "absolute",
     "flack",
+    "rotation",
     "space_group",
     "molfile",
     "ignore",

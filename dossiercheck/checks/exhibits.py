@@ -16,6 +16,7 @@ _TITLES = {
     Role.MASS: "Relative molecular mass as printed",
     Role.REGISTRY: "Registry number as printed",
     Role.STEREO: "Statement",
+    Role.ROTATION: "Optical rotation as printed",
     Role.ABSOLUTE: "Claim of absolute configuration",
     Role.FLACK: "Flack parameter as printed",
     Role.SPACE_GROUP: "Space group as printed",

@@ -7,6 +7,8 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
 from dossiercheck.language.changes import touched
+from dossiercheck.language.claimed import claim_evidence
+from dossiercheck.language.claims import only_label
 from dossiercheck.language.fields import (
     Block,
     Labelled,
@@ -16,7 +18,7 @@ from dossiercheck.language.fields import (
     starts_next,
     value_evidence,
 )
-from dossiercheck.language.labels import beside, is_label
+from dossiercheck.language.labels import beside, in_heading, is_label
 from dossiercheck.language.roles import Aside, is_nothing, plain
 from dossiercheck.language.running import Candidate
 from dossiercheck.language.wrapped import hard_lines, loose_name, placed, stretched
@@ -105,8 +107,20 @@ def _line(line: Line, following: Line | None, state: Prose) -> Iterator[Evidence
         yield from _take(line, following, found, state)
         return
     yield from state.close()
-    state.title = line if is_label(line.text) else None
+    title, state.title = state.title, line if is_label(line.text) else None
     yield from _names(line, following, state.previous)
+    under = in_heading(line.passage.headings)
+    if title and line.follows(title):
+        under = title.text.strip()
+    yield from claim_evidence(line.passage, line.start, line.end, under, _spoken(line, state))
+
+
+def _spoken(line: Line, state: Prose) -> str:
+    """The one substance of which the line before speaks, "" for none or several."""
+    previous = state.previous
+    if previous is None or previous.passage.headings != line.passage.headings:
+        return ""
+    return only_label(previous.text)
 
 
 def _take(

@@ -42,6 +42,7 @@ KEYS: Mapping[str, Meaning] = MappingProxyType(
         "mass": Role.MASS,
         "registry": Role.REGISTRY,
         "stereo": Role.STEREO,
+        "rotation": Role.ROTATION,
         "absolute": Role.ABSOLUTE,
         "flack": Role.FLACK,
         "space_group": Role.SPACE_GROUP,
@@ -109,6 +110,11 @@ _SYNONYMS: Mapping[Meaning, str] = {
         stereochemical configuration | isomeric form | isomer type | stereo type
         stereochemical type | chirality statement | chiral form | stereochemical purity
         stereochemistry type | optical activity | optical activity type
+        """,
+    Role.ROTATION: """
+        specific rotation | optical rotation | specific optical rotation | specific rotation [α]D
+        specific optical rotation [α]D | optical rotation [α]D | [α]D | [α]D20 | [α]20D | [α]D25
+        specific rotatory power | angle of optical rotation
         """,
     Role.ABSOLUTE: "_chemical_absolute_configuration",
     Role.FLACK: """

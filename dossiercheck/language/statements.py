@@ -7,16 +7,15 @@ must never count as "racemate".
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
 
-_NUMBERS = {
-    word: number
-    for number, word in enumerate(
-        ("no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten")
-    )
-}
+from dossiercheck.language.claims import only_statement
+from dossiercheck.language.predicates import NUMBERS, Statement
+
+__all__ = ["Statement", "read_statement"]
+
+_WORDS = tuple(word for word in NUMBERS if word not in ("a", "a single"))
 _COUNT = re.compile(
-    r"\b(\d+|" + "|".join(_NUMBERS) + r")\s+(?:defined\s+|specified\s+|tetrahedral\s+)?"
+    r"\b(\d+|" + "|".join(_WORDS) + r")\s+(?:defined\s+|specified\s+|tetrahedral\s+)?"
     r"(?:stereo(?:genic\s+|chemical\s+)?|chiral(?:ity)?\s+|asymmetric\s+)"
     r"(?:cent(?:er|re)s?|carbons?(?:\s+atoms?)?)\b",
     re.IGNORECASE,
@@ -24,7 +23,7 @@ _COUNT = re.compile(
 # A count field with its heading before it, as `records` and `tables` put the two together.
 _COUNTED = re.compile(
     r"(?:number\s+of\s+|no\.?\s+of\s+)?(?:stereo(?:genic\s+|chemical\s+)?|chiral\s+|asymmetric\s+)"
-    r"(?:cent(?:er|re)s?|carbon\s+atoms?)\s*[:=]?\s*(\d+|" + "|".join(_NUMBERS) + r")",
+    r"(?:cent(?:er|re)s?|carbon\s+atoms?)\s*[:=]?\s*(\d+|" + "|".join(_WORDS) + r")",
     re.IGNORECASE,
 )
 # Codes that structured exports use whole; inside a sentence the words mean other things.
@@ -64,16 +63,6 @@ _KINDS = (
 )
 
 
-@dataclass(frozen=True, slots=True)
-class Statement:
-    """`kind` is racemic, relative, absolute, achiral, "mixture" (of stereoisomers, in whatever
-    ratio: epimers, or several), "active" (rotates polarised light), or "" where none is claimed;
-    `centres` is the number claimed, None where none is."""
-
-    kind: str = ""
-    centres: int | None = None
-
-
 def read_statement(text: str) -> Statement | None:
     """The claim of a stereochemistry field, None where it is not understood for certain."""
     counted = _COUNTED.fullmatch(text.strip())
@@ -82,6 +71,9 @@ def read_statement(text: str) -> Statement | None:
     code = _CODES.get(re.sub(r"\s", "", text).casefold())
     if code:
         return Statement(code)
+    said = only_statement(text)
+    if said is not None:
+        return said
     counts = {_number(found) for found in _COUNT.findall(text)}
     rest = _COUNT.sub(" ", text)
     if _DOUBT.search(rest) or len(counts) > 1:
@@ -93,4 +85,4 @@ def read_statement(text: str) -> Statement | None:
 
 
 def _number(word: str) -> int:
-    return int(word) if word.isdigit() else _NUMBERS[word.lower()]
+    return int(word) if word.isdigit() else NUMBERS[word.lower()]

@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
+from dossiercheck.language.claimed import claim_evidence
 from dossiercheck.language.fields import Met, starts_next
 from dossiercheck.language.labels import in_heading, in_title
 from dossiercheck.language.lists import parts, synonyms
@@ -324,6 +325,8 @@ def _said(
         yield Evidence("", role, text, cell.place, group, label)
     elif role is None:
         yield from _loose_names(cell)
+        for start, end in hard_lines(text, cell.breaks):
+            yield from claim_evidence(cell, start, end, label, group=group)
 
 
 def _names(cell: Cell, group: str, label: str) -> Iterator[Evidence | Unread]:
