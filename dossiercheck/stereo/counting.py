@@ -20,14 +20,17 @@ class Count:
     by all).
 
     `centres` stereogenic in at least one stereoisomer (pseudoasymmetric ones included, IUPAC 2013
-    P-91.2.1.1), `nitrogens` of them: bridgehead nitrogens held by small rings, which some count
-    and some do not. `bonds` stereogenic double bonds. `stereoisomers` possible, `achiral` among
-    them. `exact` is false where the true numbers of stereoisomers may be others, and `bound` says
-    how: "at most", "at least" (axes are not counted) or "about" (both); `note` says why.
+    P-91.2.1.1). Of them, `nitrogens` are bridgehead nitrogens held by small rings, and
+    `conditional` are stereogenic in some stereoisomers only, as C3 of 2,3,4-trihydroxyglutaric
+    acid is; some count either and some do not. `bonds` are stereogenic double bonds,
+    `stereoisomers` those possible, `achiral` those of them that are.
+    `exact` is false where the true numbers of stereoisomers may be others, and `bound` says how:
+    "at most", "at least" (axes are not counted) or "about" (both); `note` says why.
     """
 
     centres: int
     nitrogens: int
+    conditional: int
     bonds: int
     stereoisomers: int
     achiral: int
@@ -76,17 +79,19 @@ def _counted(structure: Structure, space: Space, main: tuple[int, ...], parts: i
         bits = sum(1 << unit for place, unit in enumerate(bound) if chosen >> place & 1)
         if bits not in leader and space.exists(bits):
             leader.update(dict.fromkeys(space.orbit(bits), bits))
-    stereogenic = set(free)
+    sometimes, always = set(free), set(free)
     for unit in bound:
-        block = space.block(unit)
-        if any(leader[bits] != leader[bits ^ block] for bits in leader):
-            stereogenic.add(unit)
+        turned = [_matters(space, leader, bits, unit) for bits in sorted(set(leader.values()))]
+        if any(turned):
+            sometimes.add(unit)
+        if all(turned):
+            always.add(unit)
     mirror = space.centres & sum(1 << unit for unit in bound)
     kinds = set(leader.values())
     achiral = sum(leader[bits ^ mirror] == bits for bits in kinds)
     if any(isinstance(space.units[n], Centre) for n in free):
         achiral = 0
-    centres = [n for n in stereogenic if isinstance(space.units[n], Centre)]
+    centres = [n for n in sometimes if isinstance(space.units[n], Centre)]
     axes = bool(structure.axis_atoms & set(main))
     notes = [space.unsure]
     if axes:
@@ -96,7 +101,8 @@ def _counted(structure: Structure, space: Space, main: tuple[int, ...], parts: i
     return Count(
         centres=len(centres),
         nitrogens=sum(is_pyramidal_nitrogen(structure, space.atoms[n][0]) for n in centres),
-        bonds=len(stereogenic) - len(centres),
+        conditional=len(set(centres) - always),
+        bonds=len(sometimes) - len(centres),
         stereoisomers=len(kinds) << len(free),
         achiral=achiral << len(free),
         exact=not (space.unsure or axes),
@@ -105,3 +111,27 @@ def _counted(structure: Structure, space: Space, main: tuple[int, ...], parts: i
         ),
         note="; ".join(filter(None, notes)),
     )
+
+
+def _matters(space: Space, leader: dict[int, int], bits: int, unit: int) -> bool:
+    """Whether a unit is stereogenic in a stereoisomer: turned round, with what rings bind to it,
+    it makes another one, or the same one with the unit elsewhere.
+
+    C1 and C5 of tropine are of the second kind: each has four different ligands although together
+    they have no choice; C1 of norbornane is of neither.
+    """
+    block = space.block(unit)
+    goal = bits ^ block
+    if leader[goal] != leader[bits]:
+        return True
+    if block == 1 << unit:
+        return False
+    seen, queue = {(bits, unit)}, [(bits, unit)]
+    while queue:
+        here, place = queue.pop()
+        for move in space.moves:
+            there = move(here), move.to[place]
+            if there not in seen:
+                seen.add(there)
+                queue.append(there)
+    return (goal, unit) not in seen

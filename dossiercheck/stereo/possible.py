@@ -19,9 +19,11 @@ from dossiercheck.stereo.graph import (
 from dossiercheck.stereo.space import Space, moves_of, part_of
 from dossiercheck.stereo.structure import Structure, is_pyramidal_nitrogen
 
-_ACIDIC = frozenset((15, 16, 33, 34))
+_ACIDIC = frozenset((15, 16, 33, 34, 51, 52))
 _CHALCOGENS = frozenset((8, 16, 34))
 _DONORS = _CHALCOGENS | {7}
+# B, C, N, Si, P, S, Ge, As, Se: tetrahedral, or pyramidal with a lone pair.
+_USUAL = frozenset((5, 6, 7, 14, 15, 16, 32, 33, 34))
 # Rings with a double bond of either geometry: from twelve atoms on nothing stands in its way.
 _WIDE_RING = 12
 
@@ -105,10 +107,12 @@ def _sense(unit: Centre | Geometry, first: tuple[int, int, int]) -> bool | None:
 
 
 def _is_fluxional(graph: Graph, kind: str, atoms: tuple[int, ...]) -> bool:
-    """A unit that proton transfer undoes: P or S with two oxygens of which one is acidic, and C=N
+    """A unit that proton transfer undoes: N⁺–H, P or S with two oxygens of which one is acidic, C=N
     beside N–H, O–H or S–H or with both N–H and N, as in the standard InChI's mobile hydrogen."""
     if kind == "centre":
         atom = atoms[0]
+        if graph.element[atom] == 7 and graph.hydrogens[atom]:
+            return True
         ends = [b for b in graph.near[atom] if len(graph.near[b]) == 1]
         ends = [b for b in ends if graph.element[b] in _CHALCOGENS]
         repeated = len({graph.element[b] for b in ends}) < len(ends)
@@ -151,6 +155,8 @@ def _unsure(
     said = []
     if any(frozenset((a,)) in number and frozenset((b,)) in number for a, b in pairs):
         said.append("small or bridged rings may not allow every combination")
+    if any(len(a) == 1 and mol.GetAtomWithIdx(a[0]).GetAtomicNum() not in _USUAL for a in atoms):
+        said.append("a centre at an element whose geometry may be another")
     info = mol.GetRingInfo()
     for pair in atoms:
         if len(pair) == 2:

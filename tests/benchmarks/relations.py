@@ -310,13 +310,13 @@ def judge(pair: Pair) -> tuple[str, bool]:
     return said, named == meant
 
 
-def measure(size: int) -> dict[str, Any]:
-    """Every pair judged; nothing is left out of `wrong`."""
+def measure(size: int, skip: int = 0) -> dict[str, Any]:
+    """Every pair judged, from the records after the first `skip`."""
     RDLogger.DisableLog("rdApp.*")
     left_out: Counter[str] = Counter()
     ways: dict[str, Counter[str]] = {}
     wrong = []
-    for pair in pairs(corpus.load(2 * size).records, size, left_out):
+    for pair in pairs(corpus.load(2 * size + skip).records[skip:], size, left_out):
         said, unit = judge(pair)
         outcome = "right" if said in (pair.expected, WITHHELD) and unit else "wrong"
         if outcome == "wrong" and said == "undetermined":
@@ -357,9 +357,10 @@ def main() -> None:
     """Measure and print."""
     parser = argparse.ArgumentParser(description=__doc__)
     parser.add_argument("--size", type=int, default=1000, help="pairs, about")
+    parser.add_argument("--skip", type=int, default=0, help="sound records passed over")
     parser.add_argument("--json", type=Path)
     given = parser.parse_args()
-    figures = measure(given.size)
+    figures = measure(given.size, given.skip)
     text = json.dumps(figures, indent=1, ensure_ascii=False)
     if given.json:
         given.json.write_text(text + "\n", encoding="utf-8")

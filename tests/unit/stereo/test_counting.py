@@ -44,6 +44,8 @@ TEXTBOOK = {
     "cocaine skeleton": ("COC(=O)C1C(OC(=O)c2ccccc2)CC2CCC1N2C", 4, 0, 8, 0, COMMON),
     "cholesterol": ("CC(C)CCCC(C)C1CCC2C1(C)CCC1C2CC=C2CC(O)CCC12C", 8, 0, 256, 0, COMMON),
     "Troeger's base": ("Cc1ccc2N3CN(Cc2c1)c1ccc(C)cc1C3", 2, 0, 2, 0, ELIEL),
+    "tropane-3-ol": ("CN1C2CCC1CC(O)C2", 3, 0, 2, 2, "tropine and pseudotropine: " + COMMON),
+    "bicyclo[3.3.1]nonan-9-ol": ("OC1C2CCCC1CCC2", 0, 0, 1, 1, COMMON),
     "quinuclidine": ("C1CN2CCC1CC2", 0, 0, 1, 1, COMMON),
     "norbornane": ("C1CC2CCC1C2", 0, 0, 1, 1, COMMON),
     "adamantane with four substituents": ("FC12CC3(Cl)CC(Br)(C1)CC(I)(C2)C3", 4, 0, 2, 0, ELIEL),
@@ -71,6 +73,34 @@ def test_meso_needs_chiral_members_in_the_set() -> None:
     # IUPAC Basic Terminology of Stereochemistry 1996, "meso-compound".
     counts = [stereoisomers(from_smiles(TEXTBOOK[name][0])) for name in ("inositols", "decalin")]
     assert [(c.meso, c.pairs) for c in counts if c is not None] == [(7, 1), (0, 0)]
+
+
+def test_perhydrotriphenylene_has_ten_diastereomers() -> None:
+    # Four achiral ones and six pairs (Farina and Audisio, Tetrahedron 1970, 26, 1827; from memory).
+    count = stereoisomers(from_smiles("C1CCC2C(C1)C1CCCCC1C1CCCCC21"))
+    assert count is not None
+    assert count.pairs + count.achiral == 10
+
+
+@pytest.mark.parametrize(
+    ("smiles", "conditional"),
+    [
+        ("OC(=O)C(O)C(O)C(O)C(=O)O", 1),
+        ("OC(=O)C(O)C(O)C(=O)O", 0),
+        ("CC1CCC(C)CC1", 0),
+        ("CC(C)C1OC(CN)C(CN)O1", 1),  # C2 between like centres is none
+    ],
+)
+def test_centres_that_depend_on_others(smiles: str, conditional: int) -> None:
+    count = stereoisomers(from_smiles(smiles))
+    assert count is not None
+    assert count.conditional == conditional
+
+
+def test_a_proton_on_nitrogen_makes_no_centre() -> None:
+    bases = ["CC[NH+](C)CCO", "CN1C2CCC1CC(O)C2", "C[NH+]1C2CCC1CC(O)C2"]
+    counts = [stereoisomers(from_smiles(smiles)) for smiles in bases]
+    assert [c.centres for c in counts if c is not None] == [0, 3, 3]
 
 
 def test_marks_have_no_influence() -> None:
