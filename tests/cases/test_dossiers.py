@@ -11,19 +11,22 @@ from __future__ import annotations
 import csv
 import io
 import re
+from collections import Counter
+from dataclasses import replace
 
 import pytest
 from rdkit import Chem
 from rdkit.Chem import rdCIPLabeler
 
-from dossiercheck.model import Grade
+from dossiercheck.model import Grade, Place
 from dossiercheck.names import NameParser, clean
 from tests.benchmarks import statements
-from tests.benchmarks.dossiers import SETS, dossiers, structures
+from tests.benchmarks.dossiers import SETS, dossiers, find_words, structures
+from tests.benchmarks.statements import touches
 
 ATTRIBUTED = 0.4
 FOUND = 0.1
-FALSE_GRAVE_PER_20 = 1.0
+FALSE_GRAVE = 1  # hydrochloride-and-base: the formula of the salt is held against the base
 
 _SMALL = re.compile(r",\d+[rs](?=,)")
 
@@ -88,9 +91,41 @@ def _line(extended: str) -> str:
     return Chem.MolToSmiles(Chem.MolFromSmiles(extended.split(" ")[0]))
 
 
+def test_words_are_found_by_line_and_span() -> None:
+    words = find_words("a.md", "first\nThe word is not here", "word is «not» here")
+    assert (words.line, words.start, words.end, words.text) == (2, 12, 15, "not")
+    place = Place("dossier/a.md", line=2, span=(9, 20))
+    assert touches(place, "is not here", words)
+    assert not touches(replace(place, span=(0, 8)), "The word", words)
+    assert not touches(replace(place, line=1), "not", words)
+    assert not touches(replace(place, source="dossier/b.md"), "not", words)
+
+
+def test_words_that_stand_twice_are_refused() -> None:
+    with pytest.raises(ValueError, match="2 times"):
+        find_words("a.md", "R and R", "R")
+
+
+def test_scoring_tells_wrong_from_right() -> None:
+    """The same review against the truth, and against one in which two substances are mixed."""
+    dossier = next(one for one in dossiers("tuning") if one.id == "three-centres-epimers")
+    result = statements.review(dossier)
+    right = Counter(outcome for *_, outcome in statements.attributed(dossier, result))
+    mixed = tuple(
+        (words, "pyrandol-ent" if key == "pyrandol-e3" and words.drawn else key)
+        for words, key in dossier.who
+    )
+    wrong = replace(dossier, who=mixed)
+    tally = Counter(outcome for *_, outcome in statements.attributed(wrong, result))
+    assert right["wrong"] == 0
+    assert tally["wrong"] > 0
+    as_planted = replace(dossier, gravity="minor", planted=(dossier.who[0][0],))
+    assert statements.planted_found(as_planted, result, Counter()) != "found"
+
+
 @pytest.fixture(scope="module")
 def total() -> statements.Outcome:
-    return statements.measure(dossiers("tuning")[::9])
+    return statements.measure(dossiers("tuning")[::9], mutated=0)
 
 
 def test_attribution(total: statements.Outcome) -> None:
@@ -102,5 +137,5 @@ def test_planted_contradictions_are_found(total: statements.Outcome) -> None:
 
 
 def test_false_alarms_are_few(total: statements.Outcome) -> None:
-    figures = statements.summary(total)
-    assert figures["false_grave_per_20_sound"] <= FALSE_GRAVE_PER_20, total.notes
+    assert total.sound >= 5
+    assert total.alarms <= FALSE_GRAVE, total.notes
