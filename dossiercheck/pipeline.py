@@ -9,6 +9,7 @@ from pathlib import Path
 
 from dossiercheck import find
 from dossiercheck.attribution import attribute
+from dossiercheck.dossier import Portrait, dossier
 from dossiercheck.language import gather
 from dossiercheck.lifecycle import Lifecycle, lifecycle, not_current, sections
 from dossiercheck.limits import DEFAULT, Refused
@@ -16,6 +17,7 @@ from dossiercheck.method import CAUTION, method
 from dossiercheck.model import Evidence, Finding, Item, Place, Review, Source, Unread
 from dossiercheck.notes import Notes
 from dossiercheck.readers import reader_for
+from dossiercheck.relatives import relatives
 from dossiercheck.rulebook import Rulebook
 from dossiercheck.sequences import itself_and_above, submission
 from dossiercheck.settings import Settings
@@ -66,15 +68,21 @@ def _review(
         substances, unattributed = attribute(
             evidence, settings.register, workers.survey, noted.terms
         )
-        judged = workers.judge(substances)
+        judged = workers.judge(substances, relatives(substances, settings.register))
+    unread += [*whole.unread, *unattributed, *(u for one in judged for u in one.unread)]
+    unread = list(_in_order(sources, unread))
+    portraits = [
+        Portrait(substance, one.entry, one.identities, one.single, one.reference)
+        for substance, one in zip(substances, judged, strict=True)
+    ]
+    together = rulebook.judge_dossier(dossier(portraits, noted, unread))
+    of_each = together.by_substance()
+    findings = [(*one.findings, *of_each.get(one.entry.id, ())) for one in judged]
     return Review(
         sources=sources,
-        unread=_in_order(
-            sources,
-            [*unread, *whole.unread, *unattributed, *(u for one in judged for u in one.unread)],
-        ),
+        unread=_in_order(sources, [*unread, *together.unread]),
         substances=tuple(one.entry for one in judged),
-        findings=tuple(_numbered([*(one.findings for one in judged), whole.findings])),
+        findings=tuple(_numbered([*findings, whole.findings])),
         rules=rulebook.entries(),
         method=method(settings),
         caution=CAUTION,

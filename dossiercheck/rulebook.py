@@ -20,6 +20,7 @@ from dossiercheck.settings import RuleOverride, Settings, SettingsError
 
 if TYPE_CHECKING:
     from dossiercheck.concordance import Case
+    from dossiercheck.dossier import Dossier
     from dossiercheck.lifecycle import Lifecycle
 
 
@@ -30,6 +31,13 @@ class Outcome:
 
     findings: tuple[Finding, ...]
     unread: tuple[Unread, ...]
+
+    def by_substance(self) -> dict[str, list[Finding]]:
+        """The findings by the id of their substance."""
+        found: dict[str, list[Finding]] = {}
+        for finding in self.findings:
+            found.setdefault(finding.substance, []).append(finding)
+        return found
 
 
 @dataclass(frozen=True, slots=True)
@@ -65,6 +73,13 @@ class Rulebook:
             return Outcome((), ())
         place = Place(posixpath.join(sequences[0].folder, INDEX))
         return self._judge(case, frozenset({rulefile.SEQUENCE}), "", place)
+
+    def judge_dossier(self, whole: Dossier) -> Outcome:
+        """Apply the rules that need "dossier"; each finding is of the substance it names."""
+        if not whole.portraits:
+            return Outcome((), ())
+        place = whole.portraits[0].entry.evidence[0].place
+        return self._judge(whole, frozenset({rulefile.DOSSIER}), "", place)
 
     def _judge(self, case: Any, needs: frozenset[str] | None, about: str, at: Place) -> Outcome:
         findings: list[Finding] = []
@@ -122,7 +137,7 @@ def _findings(rule: Rule, case: Any, substance: str) -> Iterator[Finding]:
             id="",
             rule=rule.id,
             grade=rule.grade,
-            substance=substance,
+            substance=seen.substance or substance,
             message=rule.message.format(**seen.values),
             remedy=rule.remedy,
             exhibits=seen.exhibits,
@@ -133,7 +148,7 @@ def _findings(rule: Rule, case: Any, substance: str) -> Iterator[Finding]:
 
 
 def _breakdown(rule: Rule, substance: str, place: Place, trouble: Exception) -> Unread:
-    about = f"the substance {substance}" if substance else "the submission"
+    about = f"the substance {substance}" if substance else "the dossier as a whole"
     return Unread(
         place=place,
         reason="check-failed",

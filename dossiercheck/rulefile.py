@@ -31,6 +31,7 @@ FAMILIES = (
 )
 STRUCTURE = "structure"  # a need that any evidence meets from which a structure can be had
 SEQUENCE = "sequence"  # a need that only a submission as a whole meets
+DOSSIER = "dossier"  # a need that only all substances together meet
 _GIVES_STRUCTURE = frozenset({Kind.DRAWING, Kind.NOTATION, Kind.COORDINATES, Kind.NAME})
 _KEYS = (
     "basis",
@@ -55,8 +56,8 @@ EVIDENCE_KEYS = (
     "molfile",
     "name",
     "registry",
-    "smiles",
     "rotation",
+    "smiles",
     "space_group",
     "stereo",
 )
@@ -183,7 +184,7 @@ def _check(file: TomlFile) -> Check:
 
 def _needs(file: TomlFile) -> tuple[str, ...]:
     needs = file.texts("needs")
-    known = (*Kind, STRUCTURE, SEQUENCE)
+    known = (*Kind, STRUCTURE, SEQUENCE, DOSSIER)
     for need in needs:
         if need not in known:
             hint = tomlfile.suggestion(need, known)

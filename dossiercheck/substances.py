@@ -75,10 +75,15 @@ def registered(settings: Settings) -> Iterator[Evidence]:
                 yield Evidence("", role, text, place, f"{REGISTER}{entry.id}", entry.id)
 
 
-def identities(readings: Sequence[Reading]) -> frozenset[Identity]:
-    """What the structures among the readings are."""
+def identities(readings: Sequence[Reading], *, parents: bool = True) -> frozenset[Identity]:
+    """What the structures among the readings are; their parents cost as much as the rest."""
     return frozenset(
-        Identity(r.structure.flat, r.structure.smiles, r.structure.kind, parent(r.structure))
+        Identity(
+            r.structure.flat,
+            r.structure.smiles,
+            r.structure.kind,
+            parent(r.structure) if parents else "",
+        )
         for r in readings
         if r.structure is not None
     )

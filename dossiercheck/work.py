@@ -6,7 +6,7 @@ does not depend on the number of processes.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, replace
 from multiprocessing import get_context
 from types import TracebackType
@@ -15,15 +15,18 @@ from typing import Any, Self, TypeVar
 from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
 from dossiercheck import certainty
-from dossiercheck.concordance import build_case, table
+from dossiercheck.concordance import build_case, reference_of, table
 from dossiercheck.derivations import with_derivations
 from dossiercheck.interpretation import Reading, interpret
 from dossiercheck.model import Evidence, Finding, Grade, Role, SubstanceEntry, Unread
 from dossiercheck.names.joining import choose
 from dossiercheck.names.parser import NameParser
 from dossiercheck.names.reading import read_names
+from dossiercheck.relatives import Relatives
 from dossiercheck.rulebook import Rulebook
+from dossiercheck.stereo.alignment import mirror_smiles
 from dossiercheck.stereo.drawing import drawing_of
+from dossiercheck.stereo.structure import Structure
 from dossiercheck.substances import Identity, Substance, identities
 
 PIECE = 100
@@ -34,11 +37,15 @@ _Out = TypeVar("_Out")
 
 @dataclass(frozen=True, slots=True)
 class Judged:
-    """One substance, judged: plain data, fit to travel between processes."""
+    """One substance, judged: plain data, fit to travel between processes. What its structures
+    are, and which evidence is the reference, is for the rules on the dossier as a whole."""
 
     entry: SubstanceEntry
     findings: tuple[Finding, ...]
     unread: tuple[Unread, ...]
+    identities: frozenset[Identity] = frozenset()
+    single: bool = False
+    reference: Evidence | None = None
 
 
 class Workers:
@@ -95,9 +102,13 @@ class Workers:
         """What the structures of each substance are, in order."""
         return self._spread("surveying", _survey, substances, lambda _: frozenset())
 
-    def judge(self, substances: Sequence[Substance]) -> list[Judged]:
-        """Interpret each substance, build its concordance and apply the rules, in order."""
-        return self._spread("judging", _judge, substances, _lost)
+    def judge(
+        self, substances: Sequence[Substance], relatives: Sequence[Relatives] = ()
+    ) -> list[Judged]:
+        """Interpret each substance, build its concordance and apply the rules, in order.
+        `relatives` are the others that the statements of each one name."""
+        asked = list(zip(substances, relatives or [{}] * len(substances), strict=True))
+        return self._spread("judging", _judge, asked, _lost)
 
     def _spread(
         self,
@@ -195,26 +206,43 @@ def _survey(substances: Sequence[Substance]) -> list[frozenset[Identity]]:
     return [identities(readings) for readings in _readings(substances)]
 
 
-def _judge(substances: Sequence[Substance]) -> list[Judged]:
+def _judge(asked: Sequence[tuple[Substance, Relatives]]) -> list[Judged]:
+    substances = [one for one, _ in asked]
+    others = _references([other for _, some in asked for other in some.values()])
     return [
-        _judge_safely(substance, readings)
-        for substance, readings in zip(substances, _readings(substances), strict=True)
+        _judge_safely(substance, readings, {k: others[one.id] for k, one in some.items()})
+        for (substance, some), readings in zip(asked, _readings(substances), strict=True)
     ]
 
 
-def _judge_safely(substance: Substance, readings: list[Reading]) -> Judged:
+def _references(substances: Sequence[Substance]) -> dict[str, Reading | None]:
+    """What each substance is, by its id; read once however often it is named."""
+    once = list({one.id: one for one in substances}.values())
+    return {
+        one.id: reference_of(one, readings)
+        for one, readings in zip(once, _readings(once), strict=True)
+    }
+
+
+def _judge_safely(
+    substance: Substance, readings: list[Reading], others: Mapping[str, Reading | None]
+) -> Judged:
     """A substance that the program stumbles over is listed as unread; the others go on."""
     try:
-        return _judge_one(substance, readings)
+        known = {key: one for key, one in others.items() if one is not None}
+        return _judge_one(substance, readings, known)
     except Exception as error:
         said = f"judging stopped with {type(error).__name__}: {error}".splitlines()[0]
         return _not_judged(substance, "judging-failed", said)
 
 
-def _judge_one(substance: Substance, readings: list[Reading]) -> Judged:
+def _judge_one(
+    substance: Substance, readings: list[Reading], others: Mapping[str, Reading]
+) -> Judged:
     assert _State.parser is not None
     assert _State.rulebook is not None
     case = build_case(substance, readings, _State.parser)
+    case.others = others
     outcome = _State.rulebook.judge(case, case.kinds)
     graded = certainty.graded(substance, outcome.findings)
     drawn = any(finding.grade is not Grade.REMARK for finding in graded)
@@ -228,7 +256,22 @@ def _judge_one(substance: Substance, readings: list[Reading]) -> Judged:
     )
     unread = [entry for reading in readings for entry in _not_understood(reading)]
     findings = with_derivations(case, graded)
-    return Judged(entry, findings, (*unread, *outcome.unread))
+    firm = [one for one in readings if one.evidence.id not in substance.weak]
+    return Judged(
+        entry,
+        findings,
+        (*unread, *outcome.unread),
+        identities(firm, parents=False),
+        _is_single(case.structure),
+        case.reference.evidence if case.reference else None,
+    )
+
+
+def _is_single(structure: Structure | None) -> bool:
+    """One enantiomer of a chiral substance, as far as its units tell for certain."""
+    if structure is None or structure.doubt or structure.kind != "absolute":
+        return False
+    return not structure.undefined and mirror_smiles(structure) != structure.smiles
 
 
 def _not_understood(reading: Reading) -> list[Unread]:
@@ -242,8 +285,8 @@ def _not_understood(reading: Reading) -> list[Unread]:
     return [Unread(said.place, "descriptors-undetermined", detail, text)]
 
 
-def _lost(substance: Substance) -> Judged:
-    return _not_judged(substance, "worker-died", "the process that judged it died on it")
+def _lost(asked: tuple[Substance, Relatives]) -> Judged:
+    return _not_judged(asked[0], "worker-died", "the process that judged it died on it")
 
 
 def _not_judged(substance: Substance, reason: str, detail: str) -> Judged:

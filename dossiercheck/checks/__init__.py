@@ -6,9 +6,11 @@ from dossiercheck.checks import (  # noqa: F401
     changes,
     configuration,
     constitution,
+    coverage,
     drawings,
     identity,
     names,
     statements,
     submission,
+    together,
 )

@@ -15,7 +15,8 @@ Params = Mapping[str, Any]
 class Observation:
     """What a check saw, not yet graded or worded: the rule does that.
 
-    `values` fill the rule's message template; `unit` is the concordance's unit id.
+    `values` fill the rule's message template; `unit` is the concordance's unit id. `substance` is
+    filled by a check that sees the whole dossier: the id of the substance it speaks of.
     """
 
     values: Mapping[str, str]
@@ -23,9 +24,11 @@ class Observation:
     unit: str = ""
     locant: str = ""
     derivation: tuple[str, ...] = ()
+    substance: str = ""
 
 
-# What a check is given: a substance's case, or for a check that needs "sequence" the submission.
+# What a check is given: a substance's case; for one that needs "sequence" the submission; for one
+# that needs "dossier" all substances together.
 Function = Callable[[Any, Params], Iterator[Observation]]
 
 
