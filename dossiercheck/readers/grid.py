@@ -1,4 +1,4 @@
-"""Small helpers for what is laid out in rows and columns."""
+"""Small helpers for what is laid out in rows and columns, and for numbers in attributes."""
 
 from __future__ import annotations
 
@@ -19,3 +19,11 @@ def column_index(letters: str) -> int:
     for letter in letters.upper():
         index = index * 26 + ord(letter) - 64
     return index - 1
+
+
+def number_of(text: str, default: int) -> int:
+    """The number that up to twelve ASCII digits write, the default for any other text.
+
+    `str.isdigit` takes raised digits that `int` does not, and `int` refuses thousands of digits.
+    """
+    return int(text) if text.isascii() and text.isdigit() and len(text) <= 12 else default

@@ -13,6 +13,7 @@ from dataclasses import dataclass, field
 from lxml import etree
 
 from dossiercheck.limits import Archive, parse_xml
+from dossiercheck.readers.grid import number_of
 from dossiercheck.readers.package import attribute, child, local
 from dossiercheck.readers.symbolfont import UNKNOWN
 from dossiercheck.readers.wordstyles import Styles, list_of
@@ -66,7 +67,7 @@ class Numbering:
             return ""
         abstract, own_levels, _ = self.numbers[number]
         level = at or style_at
-        index = self.by_style.get((abstract, style), 0) if not level.isdigit() else int(level)
+        index = number_of(level, self.by_style.get((abstract, style), 0))
         return self._next(number, index, {**self.levels.get(abstract, {}), **own_levels})
 
     def _next(self, number: str, index: int, levels: Mapping[int, _Level]) -> str:
@@ -126,12 +127,12 @@ def read_numbering(archive: Archive, parts: Iterable[str], styles: Styles) -> Nu
 
 
 def _take_level(made: Numbering, abstract: str, node: etree._Element) -> None:
-    at = attribute(node, "ilvl")
-    if at.isdigit():
-        made.levels[abstract][int(at)] = _level(node)
+    at = number_of(attribute(node, "ilvl"), -1)
+    if at >= 0:
+        made.levels[abstract][at] = _level(node)
         style = child(node, "pStyle")
         if style is not None:
-            made.by_style[abstract, attribute(style, "val")] = int(at)
+            made.by_style[abstract, attribute(style, "val")] = at
 
 
 def _take_number(made: Numbering, node: etree._Element) -> None:
@@ -139,13 +140,13 @@ def _take_number(made: Numbering, node: etree._Element) -> None:
     levels: dict[int, _Level] = {}
     starts: dict[int, int] = {}
     for one in node:
-        at = attribute(one, "ilvl")
-        if local(one) == "lvlOverride" and at.isdigit():
+        at = number_of(attribute(one, "ilvl"), -1)
+        if local(one) == "lvlOverride" and at >= 0:
             start, level = child(one, "startOverride"), child(one, "lvl")
             if level is not None:
-                levels[int(at)] = _level(level)
+                levels[at] = _level(level)
             if start is not None:
-                starts[int(at)] = _whole(attribute(start, "val"), 1)
+                starts[at] = _whole(attribute(start, "val"), 1)
     abstract = attribute(base, "val") if base is not None else ""
     made.numbers[attribute(node, "numId")] = (abstract, levels, starts)
 
@@ -161,13 +162,13 @@ def _level(node: etree._Element) -> _Level:
         _whole(value("start", "0"), 0),
         value("numFmt", "decimal"),
         value("lvlText", ""),
-        int(restart) if restart.isdigit() else None,
+        number_of(restart, -1) if restart.isdigit() else None,
         legal,
     )
 
 
 def _whole(text: str, default: int) -> int:
-    return int(text) if text.isdigit() and len(text) < 7 else default
+    return number_of(text, default) if len(text) < 7 else default
 
 
 def _written(value: int, form: str) -> str:

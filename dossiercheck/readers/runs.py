@@ -9,6 +9,7 @@ from dataclasses import dataclass, field, replace
 from lxml import etree
 
 from dossiercheck.model import Pending
+from dossiercheck.readers.grid import number_of
 from dossiercheck.readers.package import Relation, attribute, child, local
 from dossiercheck.readers.paragraph import ParagraphText, mark_removed, shifted
 from dossiercheck.readers.symbolfont import FONTS, UNKNOWN, is_private, symbol
@@ -207,9 +208,7 @@ class _Walk:
         if font.strip().lower() in FONTS or any(is_private(ord(c)) for c in text):
             text = "".join(self._character(c, font) for c in text)
         position = form.get("position", "")
-        raised = form.get("vertAlign") == "superscript" or (
-            position.isdigit() and int(position) >= _RAISED_BY
-        )
+        raised = form.get("vertAlign") == "superscript" or (number_of(position, 0) >= _RAISED_BY)
         if raised:
             return text.translate(_RAISED)
         if "1" in (form.get("caps"), form.get("smallCaps")):
@@ -288,4 +287,5 @@ def _chosen(node: etree._Element) -> str:
     if result is None:
         result = child(found, "default")
     at = attribute(result, "val") if result is not None else "0"
-    return entries[int(at)] if at.isdigit() and int(at) < len(entries) else ""
+    chosen = number_of(at, len(entries))
+    return entries[chosen] if chosen < len(entries) else ""

@@ -10,9 +10,10 @@ from lxml import etree
 
 from dossiercheck.limits import Limits, iterate_xml
 from dossiercheck.model import Cell, Item, Place, Table, Unread
-from dossiercheck.readers.grid import column_index, column_letter
+from dossiercheck.readers.grid import column_index, column_letter, number_of
 from dossiercheck.readers.numberformat import shown
 from dossiercheck.readers.package import attribute, child, local
+from dossiercheck.readers.symbolfont import UNKNOWN
 
 _REFERENCE = re.compile(r"\$?([A-Z]{1,3})\$?(\d{1,7})")
 
@@ -28,7 +29,7 @@ class Style:
 
     def code(self, style: str) -> str:
         """The format of a cell's style number as written, General where it has none."""
-        number = int(style) if style.isdigit() else 0
+        number = number_of(style, 0)
         return self.formats[number] if number < len(self.formats) else "General"
 
 
@@ -49,7 +50,12 @@ def text_of(element: etree._Element) -> str:
         elif local(node) == "r":
             inner = child(node, "t")
             parts.append((inner.text or "") if inner is not None else "")
-    return re.sub(r"_x([0-9A-Fa-f]{4})_", lambda match: chr(int(match[1], 16)), "".join(parts))
+    text = re.sub(r"_x([0-9A-Fa-f]{4})_", lambda match: chr(int(match[1], 16)), "".join(parts))
+    if not any("\ud800" <= c <= "\udfff" or c == "\0" for c in text):
+        return text
+    # Two halves make a character; one alone, or a NUL, is a character that nobody knows.
+    paired = text.encode("utf-16-le", "surrogatepass").decode("utf-16-le", "replace")
+    return paired.replace("\0", UNKNOWN)
 
 
 def read_sheet(
@@ -74,7 +80,7 @@ def read_sheet(
         if full:
             continue
         given = attribute(element, "r")
-        row_number = int(given) if given.isdigit() else row_number + 1
+        row_number = number_of(given, row_number + 1)
         row: dict[int, Cell] = {}
         column = -1
         for node in element:
@@ -126,8 +132,9 @@ def _value(
             unread.append(Unread(where, "formula-without-value", detail, formula.text or ""))
         return ""
     if kind == "s":
-        if raw.isdigit() and int(raw) < len(strings):
-            return strings[int(raw)]
+        index = number_of(raw, len(strings))
+        if index < len(strings):
+            return strings[index]
         unread.append(Unread(where, "missing-text", "The text of the cell is not in the file."))
         return ""
     if kind == "e":

@@ -10,6 +10,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator
 from dataclasses import dataclass, field, replace
+from itertools import islice
 
 from lxml import etree
 
@@ -22,6 +23,7 @@ HL7 = "urn:hl7-org:v3"
 _BLOCKS = {"paragraph", "item", "caption", "list", "table"}
 _SPAN = 200
 _CELLS = 200_000
+_ELEMENTS = 10_000  # each is found by counting those beside it
 
 
 @dataclass(eq=False, slots=True)
@@ -48,6 +50,10 @@ def section_items(
     headings = (*above, title) if title else above
     place = Place(source.path, section=title or None)
     for text in section.iterchildren(f"{{{HL7}}}text"):
+        if sum(1 for _ in islice(text.iter(), _ELEMENTS + 1)) > _ELEMENTS:
+            detail = f"The section has more than {_ELEMENTS} elements; its text is not read."
+            yield Unread(replace(place, path=path_of(text)), "size-budget", detail)
+            continue
         yield from _blocks(text, place, headings, numbers)
     for inner in section.iterfind(f"{{{HL7}}}component/{{{HL7}}}section"):
         yield from section_items(source, inner, numbers, headings)

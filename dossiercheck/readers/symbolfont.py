@@ -55,7 +55,11 @@ def symbol(code: int, font: str) -> str:
         low = code - 0xF000 if 0xF000 <= code <= 0xF0FF else code
         if low in _SYMBOL:
             return _SYMBOL[low]
-        return chr(code) if low > 0xFF and not is_private(code) else UNKNOWN
+        return (
+            chr(code)
+            if low > 0xFF and not is_private(code) and not 0xD800 <= code < 0xE000
+            else UNKNOWN
+        )
     if is_private(code) or code < 0x20 or 0xD800 <= code < 0xE000:
         return UNKNOWN
     return chr(code)

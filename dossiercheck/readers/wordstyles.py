@@ -11,6 +11,7 @@ from dataclasses import dataclass, field
 from lxml import etree
 
 from dossiercheck.limits import Archive, parse_xml
+from dossiercheck.readers.grid import number_of
 from dossiercheck.readers.package import attribute, child, local
 
 _OFF = ("0", "false", "off")
@@ -140,6 +141,6 @@ def _heading_level(style: etree._Element) -> int | None:
         return outline_level(attribute(outline, "val"))
     name_node = child(style, "name")
     name = attribute(name_node, "val").lower() if name_node is not None else ""
-    if name.startswith("heading ") and name[8:].isdigit():
-        return int(name[8:])
+    if name.startswith("heading ") and number_of(name[8:], 0):
+        return number_of(name[8:], 0)
     return 1 if name == "title" else None

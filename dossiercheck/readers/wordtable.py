@@ -9,7 +9,7 @@ from lxml import etree
 
 from dossiercheck.limits import DEFAULT, Refused
 from dossiercheck.model import Cell, Pending, Place, Table
-from dossiercheck.readers.grid import column_letter
+from dossiercheck.readers.grid import column_letter, number_of
 from dossiercheck.readers.package import attribute, child, local
 from dossiercheck.readers.paragraph import ParagraphText, joined, shifted
 from dossiercheck.readers.runs import Surroundings, gather_runs
@@ -132,7 +132,7 @@ def _spans(properties: etree._Element | None) -> tuple[int, bool, bool]:
         return 1, False, False
     span = child(properties, "gridSpan")
     columns = attribute(span, "val") if span is not None else ""
-    count = min(max(int(columns), 1), 200) if columns.isdigit() else 1
+    count = min(max(number_of(columns, 1), 1), 200)
     return count, _continues(properties, "vMerge"), _continues(properties, "hMerge")
 
 
@@ -144,7 +144,7 @@ def _continues(properties: etree._Element, name: str) -> bool:
 def _skipped(properties: etree._Element | None, name: str, place: Place, index: int) -> list[Cell]:
     node = child(properties, name) if properties is not None else None
     value = attribute(node, "val") if node is not None else ""
-    count = min(int(value), 200) if value.isdigit() else 0
+    count = min(number_of(value, 0), 200)
     return [Cell("", replace(place, column=column_letter(index + n))) for n in range(count)]
 
 

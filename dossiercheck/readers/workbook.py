@@ -12,6 +12,7 @@ from dataclasses import dataclass
 from dossiercheck.limits import DEFAULT, Archive, Limits, Refused, iterate_xml, parse_xml
 from dossiercheck.model import Item, Place, Source, Unread
 from dossiercheck.readers.content import guarded
+from dossiercheck.readers.grid import number_of
 from dossiercheck.readers.numberformat import BUILT_IN
 from dossiercheck.readers.package import (
     OLE,
@@ -92,10 +93,10 @@ def _formats(archive: Archive, part: str) -> list[str]:
     own = child(root, "numFmts")
     for node in own if own is not None else ():
         if local(node) == "numFmt":
-            codes[int(attribute(node, "numFmtId", "0"))] = attribute(node, "formatCode")
+            codes[number_of(attribute(node, "numFmtId", "0"), -1)] = attribute(node, "formatCode")
     styles = child(root, "cellXfs")
     return [
-        codes.get(int(attribute(node, "numFmtId", "0")), "General")
+        codes.get(number_of(attribute(node, "numFmtId", "0"), -1), "General")
         for node in (styles if styles is not None else ())
     ]
 

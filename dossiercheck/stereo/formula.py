@@ -50,6 +50,12 @@ class Formula:
         return f"{text}{sign}" if self.charge else text
 
 
+# No substance has such a formula; brackets in brackets would else count to any number.
+_LONGEST = 1000
+_MOST = 10**9
+_MANY_DIGITS = re.compile(r"\d{10}")
+
+
 def molecular_formula(structure: Structure) -> Formula:
     """The formula of all components together, hydrogens included; deuterium is D."""
     body, charge = structure.hill, 0
@@ -75,6 +81,8 @@ def parse_formula(text: str) -> Formula | None:
     "2 C8H11N . H2SO4") and brackets ("(C8H11N)2·H2SO4"). A half of a component is read where the
     whole comes to full atoms. None for a charge that could be part of a count ("SO42-").
     """
+    if len(text) > _LONGEST or _MANY_DIGITS.search(text):
+        return None
     raised = _RAISED.sub(lambda m: f"^{unicodedata.normalize('NFKC', m[0])}", text)
     plain = re.sub(r"</?su[bp]>|[\s_{}$\u200b]", "", raised.translate(_SUBSCRIPTS))
     charge = 0
@@ -120,7 +128,9 @@ def _count(part: str) -> tuple[Fraction, Counter[str]] | None:
     factor = Fraction(1)
     if lead:
         head, _, tail = lead.group().partition("/")
-        factor = Fraction(head) / (int(tail) if tail else 1)
+        if tail and not int(tail):
+            return None
+        factor = Fraction(head) / int(tail or 1)
         part = part[lead.end() :].lstrip("x×")
     counts: Counter[str] = Counter()
     stack: list[Counter[str]] = []
@@ -146,7 +156,9 @@ def _count(part: str) -> tuple[Fraction, Counter[str]] | None:
             return None
         counts[found.group(1)] += int(found.group(2) or 1)
         position = found.end()
-    return None if stack or not counts else (factor, counts)
+    if stack or not counts or max(counts.values()) > _MOST:
+        return None
+    return factor, counts
 
 
 def relative_mass(formula: Formula) -> float:
