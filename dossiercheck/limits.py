@@ -124,6 +124,18 @@ def unify_line_ends(text: str) -> str:
 # --- zip -----------------------------------------------------------------------------------
 
 
+# ValueError: an offset that lies before the file. RuntimeError: a local header that says encrypted.
+_DAMAGE = (
+    zipfile.BadZipFile,
+    zlib.error,
+    EOFError,
+    NotImplementedError,
+    OSError,
+    ValueError,
+    RuntimeError,
+)
+
+
 class Archive:
     """A zip archive whose directory has passed the guards; members are read within budget."""
 
@@ -156,7 +168,7 @@ class Archive:
                     self._spent += len(piece)
                     self._weigh(name, taken, info.compress_size)
                     yield piece
-        except (zipfile.BadZipFile, zlib.error, EOFError, NotImplementedError, OSError) as error:
+        except _DAMAGE as error:
             raise Refused("damaged-archive", f"Part {name} does not unpack: {error}.") from error
 
     def _weigh(self, name: str, taken: int, stored: int) -> None:

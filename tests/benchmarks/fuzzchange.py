@@ -60,7 +60,10 @@ def _package(data: bytes, random: Random) -> bytes:
         elif kind < 0.97:
             parts.append((name, random.choice(contents)))
         else:
-            parts[at] = (_change(name.encode(), [b"../x"], random).decode("latin-1"), content)
+            parts[at] = (
+                _change(name.encode(), [b"../x"], random).decode("latin-1") or "x",
+                content,
+            )
     with warnings.catch_warnings(), zipfile.ZipFile(stream, "w", zipfile.ZIP_DEFLATED) as new:
         warnings.simplefilter("ignore")
         for name, content in parts:
