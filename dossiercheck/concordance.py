@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.interpretation import Reading
@@ -21,13 +21,15 @@ _RANK = {Kind.DRAWING: 0, Kind.COORDINATES: 1, Kind.NOTATION: 2, Kind.NAME: 3}
 class Case:
     """What a check is given: a substance, its readings, the reference among them, and every
     other structural reading laid on it. `unit_ids` names the units of the table ("u1") by the
-    reference's atoms."""
+    reference's atoms. `others` are the references of the substances that its statements name, by
+    the keys of their labels."""
 
     substance: Substance
     readings: Sequence[Reading]
     reference: Reading | None
     pairs: tuple[Pair, ...]
     unit_ids: dict[frozenset[int], str] = field(default_factory=dict)
+    others: Mapping[str, Reading] = field(default_factory=dict)
 
     def of_role(self, role: Role) -> list[Reading]:
         """The substance's readings in a role that were understood."""
@@ -47,10 +49,9 @@ class Case:
 def build_case(substance: Substance, readings: Sequence[Reading], parser: NameParser) -> Case:
     """Choose the reference and lay everything else on it."""
     structural = [r for r in readings if r.structure is not None]
-    if not structural:
+    reference = reference_of(substance, readings)
+    if reference is None:
         return Case(substance, readings, None, ())
-    firm = [r for r in structural if r.evidence.id not in substance.weak]
-    reference = _reference(firm or structural)
     pairs = tuple(lay(reference, r, parser) for r in structural if r is not reference)
     case = Case(substance, readings, reference, pairs)
     atoms: dict[frozenset[int], None] = {}
@@ -65,6 +66,13 @@ def build_case(substance: Substance, readings: Sequence[Reading], parser: NamePa
     ordered = sorted(atoms, key=lambda unit: (len(unit), sorted(unit)))
     case.unit_ids = {unit: f"u{number}" for number, unit in enumerate(ordered, 1)}
     return case
+
+
+def reference_of(substance: Substance, readings: Sequence[Reading]) -> Reading | None:
+    """The structural reading that the others are held against, None where there is none."""
+    structural = [r for r in readings if r.structure is not None]
+    firm = [r for r in structural if r.evidence.id not in substance.weak]
+    return _reference(firm or structural) if structural else None
 
 
 def table(case: Case) -> Concordance | None:

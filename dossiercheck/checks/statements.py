@@ -11,6 +11,7 @@ from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
 from dossiercheck.model import Role
 from dossiercheck.stereo.alignment import mirror_smiles
+from dossiercheck.stereo.counting import stereoisomers
 from dossiercheck.stereo.descriptors import all_certain
 from dossiercheck.stereo.structure import Structure
 
@@ -31,7 +32,7 @@ def statement_kind_differs(case: Case, params: Params) -> Iterator[Observation]:
         stated = reading.statement.kind if reading.statement else ""
         if not stated or not _contradicts(stated, found, case.structure):
             continue
-        if hand_open(case.structure) and stated in ("absolute", "racemic", "relative", "active"):
+        if hand_open(case.structure) and stated not in ("achiral", "chiral", "mixture"):
             continue
         if _drawn_for_both(case, stated):
             continue
@@ -100,6 +101,9 @@ def statement_count_differs(case: Case, params: Params) -> Iterator[Observation]
         stated = reading.statement.centres if reading.statement else None
         if stated is None or stated == len(atoms) or stated in _per_component(structure, atoms):
             continue
+        counted = stereoisomers(structure)
+        if counted and stated in (counted.centres, counted.centres - counted.nitrogens):
+            continue
         if not all_certain(structure):
             continue
         yield Observation(
@@ -110,13 +114,20 @@ def statement_count_differs(case: Case, params: Params) -> Iterator[Observation]
 
 def _contradicts(stated: str, found: str, structure: Structure) -> bool:
     """A mixture of stereoisomers is contradicted by one that is wholly specified and by a
-    structure that has none; optical activity by a racemate and by what is achiral."""
+    structure that has none; optical activity by a racemate and by what is achiral, optical
+    inactivity by one enantiomer."""
     if found in ("silent", "") or found.startswith("partly"):
         return False
     if stated == "mixture":
         return found == "achiral" or (found == "absolute" and not structure.undefined)
-    if stated == "active":
+    if stated in ("active", "scalemic"):
         return found in ("racemic", "achiral")
+    if stated == "chiral":
+        return found == "achiral"
+    if stated == "inactive":
+        return found == "absolute"
+    if stated == "not racemic":
+        return found == "racemic"
     return stated != found
 
 

@@ -9,6 +9,7 @@ import pytest
 
 from dossiercheck import rulebook, work
 from dossiercheck.model import Evidence, Place, Role
+from dossiercheck.relatives import Relatives
 from dossiercheck.settings import Settings
 from dossiercheck.substances import Identity, Substance
 from dossiercheck.work import Judged, Workers
@@ -36,11 +37,11 @@ def pair() -> Iterator[Workers]:
         yield workers
 
 
-def dying(substances: Sequence[Substance]) -> list[Judged]:
+def dying(asked: Sequence[tuple[Substance, Relatives]]) -> list[Judged]:
     """Stands for a structure that brings the structure library down."""
-    if any(one.label == "S7" for one in substances):
+    if any(one.label == "S7" for one, _ in asked):
         os._exit(1)
-    return [Judged(work._not_judged(one, "", "").entry, (), ()) for one in substances]
+    return [Judged(work._not_judged(one, "", "").entry, (), ()) for one, _ in asked]
 
 
 def raising(_: Sequence[Substance]) -> list[Judged]:
@@ -60,7 +61,7 @@ def test_one_process_and_two_say_the_same(pair: Workers) -> None:
 
 def test_a_process_that_dies_costs_one_substance(pair: Workers) -> None:
     substances = [substance(n, *SOUND) for n in range(1, 31)]
-    judged = pair._spread("judging", dying, substances, work._lost)
+    judged = pair._spread("judging", dying, [(one, {}) for one in substances], work._lost)
     assert [one.entry.id for one in judged] == [one.id for one in substances]
     lost = [one for one in judged if one.unread]
     assert [one.entry.label for one in lost] == ["S7"]
@@ -72,7 +73,7 @@ def test_a_process_that_dies_costs_one_substance(pair: Workers) -> None:
 
 def test_a_mistake_of_the_program_is_not_hidden(pair: Workers) -> None:
     with pytest.raises(RuntimeError, match="of the program"):
-        pair._spread("judging", raising, [substance(1, *SOUND)], work._lost)
+        pair._spread("judging", raising, [(substance(1, *SOUND), {})], work._lost)
 
 
 def test_a_substance_on_which_judging_stops_is_unread(monkeypatch: pytest.MonkeyPatch) -> None:
