@@ -24,8 +24,8 @@ from tests.benchmarks import statements
 from tests.benchmarks.dossiers import SETS, dossiers, find_words, structures
 from tests.benchmarks.statements import touches
 
-ATTRIBUTED = 0.4
-FOUND = 0.1
+ATTRIBUTED = 0.5
+FOUND = 0.25
 FALSE_GRAVE = 1  # hydrochloride-and-base: the formula of the salt is held against the base
 
 _SMALL = re.compile(r",\d+[rs](?=,)")
