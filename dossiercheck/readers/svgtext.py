@@ -64,7 +64,8 @@ def svg_items(root: etree._Element, place: Place) -> Iterator[Item]:
 def _walk(node: etree._Element, sheet: Sheet, place: Place) -> Iterator[Item]:
     for child in node.iterchildren(tag=etree.Element):
         tag = tag_of(child)
-        if tag in _SKIPPED:
+        bare = child.text is None and not len(child)
+        if tag in _SKIPPED or (bare and tag in _DRAWN):
             continue
         where = _at(child, place)
         style = _style(child, tag, sheet)

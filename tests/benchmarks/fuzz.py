@@ -41,7 +41,7 @@ from tests.benchmarks.fuzzchange import changed
 from tests.benchmarks.fuzzseeds import SEEDS
 from tests.unit.sequence import BOOK
 
-LIMIT = 20.0  # seconds for two readings, on a machine that does other things beside
+LIMIT = 60.0  # seconds by the clock for two readings; other work on the machine counts in
 MEMORY = 1 << 30  # beside what the program itself takes
 _SLUG = re.compile(r"[a-z0-9]+(-[a-z0-9]+)*")
 
