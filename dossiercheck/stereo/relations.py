@@ -172,29 +172,34 @@ def _related(space: Space, states: tuple[State, State]) -> Relation:
     if any(state.axes for state in states) and kind != DIASTEREOMER:
         return Relation(UNDETERMINED, note="an axis or helix is marked, and is not compared")
     notes += [note] if note else []
-    settled = any(state.open or state.either for state in states)
-    if settled:
+    notes += ["a possible axis is not compared"] if any(s.axial for s in states) else []
+    bits = [[b for group in side.values() for b in group] for side in (first, second)]
+    varied = [_varied(side) for side in bits]
+    # Where all alternatives are one compound, what is open is no stereogenic unit there.
+    several = len(first) > 1 or len(second) > 1
+    held = any(s.open & ~v for s, v in zip(states, varied, strict=True))
+    if several or held:
         notes += ["settled all the same: " + "; ".join(_why(states))]
     if kind not in (ENANTIOMER, DIASTEREOMER) or any(state.together for state in states):
         return Relation(kind, racemic=racemic, note="; ".join(notes))
-    mask = ~(states[0].open | states[1].open)
-    numbers = _fewest(
-        space,
-        [b for bits in first.values() for b in bits],
-        [b for x in second.values() for b in x],
-        mask,
-    )
-    units = tuple(space.atoms[n] for n in numbers)
+    numbers = _fewest(space, bits[0], bits[1], ~(varied[0] | varied[1]))
     centres = [n for n in numbers if isinstance(space.units[n], Centre)]
-    several = bin(space.centres).count("1") > 1
-    single = kind == DIASTEREOMER and len(numbers) == 1 and not settled
+    single = kind == DIASTEREOMER and len(numbers) == 1 and not several
     return Relation(
         kind,
-        units,
-        epimer=single and len(centres) == 1 and several,
+        tuple(space.atoms[n] for n in numbers),
+        epimer=single and len(centres) == 1 and bin(space.centres).count("1") > 1,
         geometry=bool(numbers) and not centres,
         note="; ".join(notes),
     )
+
+
+def _varied(alternatives: list[int]) -> int:
+    """The bits that are not alike in all of them."""
+    found = 0
+    for bits in alternatives:
+        found |= bits ^ alternatives[0]
+    return found
 
 
 def _of_mixtures(space: Space, one: Mixture, two: Mixture) -> tuple[str, str, str]:

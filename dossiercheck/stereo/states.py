@@ -23,15 +23,17 @@ Mixture = frozenset[int]
 @dataclass(frozen=True, slots=True)
 class State:
     """`bits` of the units, those in `open` not known; `together` and `either` are the bits that
-    an "and" and an "or" group turn as one. `axes`: an axis or helix is marked; `ignored`: a unit
-    that the space leaves out is; `strange`: any other unit is. `imines` has +1, -1 or, where it
-    is silent, 0 for each C=N–H. `doubts` say why a marked unit is open all the same."""
+    an "and" and an "or" group turn as one. `axes`: an axis or helix is marked; `axial`: there may
+    be one; `ignored`: a unit that the space leaves out is marked; `strange`: any other unit is.
+    `imines` has +1, -1 or, where it is silent, 0 for each C=N–H. `doubts` say why a marked unit
+    is open all the same."""
 
     bits: int
     open: int
     together: tuple[int, ...]
     either: tuple[int, ...]
     axes: bool
+    axial: bool
     ignored: bool
     strange: bool
     imines: tuple[int, ...]
@@ -94,6 +96,7 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
         tuple(groups["and"]),
         tuple(groups["or"]),
         bool(axes),
+        bool(structure.axis_atoms & covered),
         bool(marked & left_out),
         bool(marked - known - left_out - axes),
         tuple(imines),

@@ -160,6 +160,23 @@ def test_drawings() -> None:
     assert (found.kind, found.epimer, found.units) == ("diastereomer", True, ((2,),))
 
 
+def test_what_is_open_and_no_unit_takes_nothing_away() -> None:
+    four = "C(C[C@H](F)Cl)(C[C@H](F)Cl)(C[C@H](F)Cl)C[C@{}H](F)Cl"
+    found = of(four.format(""), four.format("@"))
+    assert (found.kind, found.epimer, found.note) == ("diastereomer", True, "")
+
+
+def test_an_imine_hydrogen_decides_nothing() -> None:
+    one, two = "[H]/N=C(\\C)CC", "[H]/N=C(/C)CC"
+    assert of(one, two).kind == "undetermined"
+    assert of(one, one).kind == "same"
+
+
+def test_a_possible_axis_is_named() -> None:
+    biaryl = "Cc1cccc([C@H](C)O)c1-c1c(C)cccc1O"
+    assert of(biaryl, biaryl.replace("@", "@@")).note == "a possible axis is not compared"
+
+
 def test_an_axis_that_is_marked_is_not_passed_over() -> None:
     found = of("CC=[C@]=CC", "CC=[C@@]=CC")
     assert found.kind == "undetermined"
