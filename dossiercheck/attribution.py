@@ -209,6 +209,8 @@ class Fitting:
         """The home of a group, the reason and its strength; without a home the reason says why
         nobody can be held to be spoken of, "" where the group stands for itself."""
         alone = not group[0].group
+        if not seen and tied is None:
+            return None, "", WEAK
         if not seen:
             unlike = group[0].kind is Kind.NAME
             return tied, f"without a label; {why}", WEAK if unlike else strength

@@ -13,7 +13,7 @@ from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.language.glossary import Term
-from dossiercheck.language.labels import PART
+from dossiercheck.language.labels import CLASS, MARK, PART
 from dossiercheck.settings import RegisterEntry
 
 DRUG_SUBSTANCE = "drug substance"
@@ -31,7 +31,7 @@ _SHORT = {
 }
 _ABBREVIATED = re.compile(r"(imp|int|cpd|cmpd|sm|deg)\b\.?[\s-]*([a-z]{1,2}\d{0,3}|\d{1,3}[a-z]?)")
 _QUALIFIED = re.compile(r"(?:the|specified|process|potential|related)\s+(?=\S)")
-_MARKED = re.compile(r"(.*[^\W\d_])[\s-]+(?:[A-Z]{1,2}\d{0,3}|\d{1,3}[A-Za-z]?|[IVX]{1,5})")
+_MARKED = re.compile(rf"({CLASS})[ \u00a0-]{MARK}")
 
 # Whether two labels may be one substance's, as far as what stands under them tells; the last
 # argument is true for a definition in so many words.
@@ -102,7 +102,7 @@ class Callings:
             already = self.called(other) if self.knows(other) else None
             if already and key_of(already.title) == key_of(title):
                 continue
-            several = len(given[key_of(term.other)]) > 1
+            several = other == term.other and len(given[key_of(other)]) > 1
             if already or several or plays_a_part(label) or not joins(label, other, term.plain):
                 self.refused.append(term)
                 continue

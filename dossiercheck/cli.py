@@ -20,7 +20,7 @@ import click
 from rich.console import Console
 from rich.progress import Progress
 
-from dossiercheck import __version__, derive, pipeline, report, rulebook, rulepage
+from dossiercheck import __version__, derive, pipeline, proposal, report, rulebook, rulepage
 from dossiercheck import settings as settings_file
 from dossiercheck.model import Grade, Review
 from dossiercheck.names import ParserMissing
@@ -109,6 +109,13 @@ def _commands() -> None:
 @_with_rules
 @_with_settings
 @click.option("--jobs", metavar="N", type=click.IntRange(min=1), help="Workers. [default: 1]")
+@click.option(
+    "--propose-register",
+    "register",
+    metavar="FILE",
+    type=_FOLDER,
+    help="Write the substances as inferred to a new settings file, for you to correct.",
+)
 @click.option("--quiet", is_flag=True, help="No progress and no summary.")
 def _check(
     paths: tuple[Path, ...],
@@ -118,6 +125,7 @@ def _check(
     folders: tuple[Path, ...],
     settings_path: Path | None,
     jobs: int | None,
+    register: Path | None,
     quiet: bool,
 ) -> int:
     """Check dossiers: files, or folders with all they hold.
@@ -129,6 +137,8 @@ def _check(
     found = settings_file.load(settings_path or settings_file.find(paths))
     formats = tuple(dict.fromkeys(formats)) or (found.formats if out else ("text",))
     _output_possible(out, formats, paths)
+    if register is not None:
+        _proposal_possible(register, paths)
     settings = replace(
         found,
         fail_on=Grade(fail_on) if fail_on else found.fail_on,
@@ -138,6 +148,8 @@ def _check(
     rules = rulebook.load(settings, folders)
     with _progress(quiet) as progress:
         review = pipeline.review(paths, settings, rules, progress=progress)
+    if register is not None:
+        _propose(review, register)
     made = document(review)
     files = tuple(name for name in formats if name != "text")
     if files and out is None:
@@ -277,6 +289,28 @@ def _output_possible(out: Path | None, formats: Sequence[str], paths: Sequence[P
         raise click.UsageError(f"cannot write to {out}: {nearest} is not a folder")
     if not os.access(nearest, os.W_OK):
         raise click.UsageError(f"cannot write to {out}: no permission to write in {nearest}")
+
+
+def _proposal_possible(register: Path, paths: Sequence[Path]) -> None:
+    if register.exists():
+        raise click.UsageError(f"{register} exists; a register is never overwritten")
+    inside = any(register.resolve().is_relative_to(path.resolve()) for path in paths)
+    if inside and register.name != settings_file.FILE_NAME:
+        raise click.UsageError(
+            f"{register} would be read as a part of the dossier; call it {settings_file.FILE_NAME}"
+            " or put it elsewhere"
+        )
+    if not register.absolute().parent.is_dir():
+        raise click.UsageError(f"there is no folder {register.parent}")
+
+
+def _propose(review: Review, register: Path) -> None:
+    """Write a new file whole; one that came to be in the meantime is left alone."""
+    try:
+        with register.open("x", encoding="utf-8") as file:
+            file.write(proposal.proposed(review))
+    except OSError as trouble:
+        raise click.UsageError(f"cannot write {register}: {trouble.strerror}") from trouble
 
 
 @contextmanager

@@ -465,8 +465,9 @@ class Finding:
 
 @dataclass(frozen=True, slots=True)
 class SubstanceEntry:
-    """A substance as the report lists it; `attribution` gives for each evidence why it is held
-    to speak of this substance."""
+    """A substance as the report lists it; `attribution` gives for each evidence how firmly and why
+    it is held to speak of this substance. `role` is the part that it plays, by the register or, as
+    `inferred` says, by the dossier; `smiles` its reference structure where a SMILES can say it."""
 
     id: str
     label: str
@@ -474,6 +475,9 @@ class SubstanceEntry:
     attribution: Mapping[str, str]
     concordance: Concordance | None
     drawing: Drawing | None = None
+    role: str = ""
+    inferred: str = ""
+    smiles: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -253,6 +253,9 @@ def _judge_one(
         substance.attribution,
         certainty.shown(substance, table(case)),
         drawing_of(case.structure) if drawn and case.structure else None,
+        substance.role,
+        substance.inferred,
+        case.structure.smiles if case.structure and not case.structure.groups else "",
     )
     unread = [entry for reading in readings for entry in _not_understood(reading)]
     findings = with_derivations(case, graded)

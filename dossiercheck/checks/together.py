@@ -11,6 +11,8 @@ from dossiercheck.concordance import Case
 from dossiercheck.dossier import Dossier, Portrait
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import Evidence, Exhibit, Role
+from dossiercheck.stereo.perception import from_smiles
+from dossiercheck.stereo.structure import Unreadable
 
 _STRUCTURAL = (Role.MOLFILE, Role.SMILES, Role.INCHI, Role.NAME)
 
@@ -40,7 +42,7 @@ def structure_for_two_labels(case: Dossier, params: Params) -> Iterator[Observat
     met: dict[tuple[str, object], Portrait] = {}
     for portrait in case.portraits:
         kind = kind_of(portrait.substance.label)
-        if not kind or len(portrait.identities) != 1:
+        if not kind or len(portrait.identities) != 1 or not _is_settled(portrait):
             continue
         earlier = met.setdefault((kind, next(iter(portrait.identities))), portrait)
         if earlier is portrait or _names(earlier) & _names(portrait):
@@ -105,6 +107,18 @@ def _firm(portrait: Portrait) -> list[Evidence]:
 
 def _structural(portrait: Portrait) -> Evidence:
     return next(said for said in _firm(portrait) if said.role in _STRUCTURAL)
+
+
+def _is_settled(portrait: Portrait) -> bool:
+    """Whether a SMILES says which stereoisomer it is: nothing is open, and there is no axis."""
+    (identity,) = portrait.identities
+    if identity.kind not in ("absolute", "achiral"):
+        return False
+    try:
+        structure = from_smiles(identity.smiles)
+    except Unreadable:
+        return False
+    return not structure.undefined and not structure.axis_atoms
 
 
 def _names(portrait: Portrait) -> set[str]:

@@ -11,14 +11,14 @@ import re
 from dossiercheck.language.roles import meaning_of
 from dossiercheck.language.words import NO_CODES, SALTS, SENTENCE_WORDS
 
-_CLASS = (
+CLASS = (
     r"(?:[Ss]pecified |[Pp]rocess |[Pp]otential |[Rr]elated )?"
     r"(?:[Ii]mpurity|[Ii]ntermediate|[Cc]ompound|[Dd]egrada(?:tion product|nt)|[Mm]etabolite"
     r"|[Ss]tarting [Mm]aterial|[Rr]eagent|[Bb]y-?product|[Rr]elated [Ss]ubstance|[Ii]somer"
     r"|[Dd]iastereomer|[Ee]pimer|[Pp]recursor|[Bb]uilding [Bb]lock|[Rr]eference [Ss]tandard)"
 )
-_MARK = r"(?:[A-Z]{1,2}\d{0,3}|\d{1,3}[A-Za-z]?|[IVX]{1,5}|RRT ?\d\.\d+)"
-CLASSED = rf"{_CLASS}[ \u00a0-]{_MARK}(?![\w])"
+MARK = r"(?:[A-Z]{1,2}\d{0,3}|\d{1,3}[A-Za-z]?|[IVX]{1,5}|RRT ?\d\.\d+)"
+CLASSED = rf"{CLASS}[ \u00a0-]{MARK}(?![\w])"
 CODE = rf"(?!(?:{NO_CODES})\b)[A-Z]{{2,6}}-?\d{{2,7}}[A-Za-z]?(?![\w-])"
 _INVENTED = rf"[A-Z][a-z]{{5,24}}(?: {SALTS}){{0,2}}"
 

@@ -33,6 +33,7 @@ IMPURITIES = f"{ROOT}/32s3-charac/impurities.xlsx"
 IMPURITY_DRAWINGS = f"{ROOT}/32s3-charac/impurities.sdf"
 STEREOCHEMISTRY = f"{ROOT}/32s3-charac/stereochemistry.md"
 SPECIFICATION = f"{ROOT}/32s4-contr-drug-sub/specification.tsv"
+IDENTIFICATION = f"{ROOT}/32s4-contr-drug-sub/identification.txt"
 STANDARDS = f"{ROOT}/32s5-ref-stand/reference-standards.sdf"
 
 
@@ -49,6 +50,7 @@ def documents(say: Say, draw: Draw) -> dict[str, bytes]:
         IMPURITY_DRAWINGS: _impurity_drawings(say, draw),
         STEREOCHEMISTRY: _stereochemistry(say),
         SPECIFICATION: _specification(say),
+        IDENTIFICATION: _identification(),
         STANDARDS: _standards(draw),
     }
     return {
@@ -117,6 +119,7 @@ def _properties(say: Say) -> str:
         f"InChIKey: {say(PROPERTIES, base, 'inchikey', base.inchikey)}\n"
         "\n"
         "White to off-white crystals, freely soluble in methanol, sparingly soluble in water.\n"
+        "The specific rotation of Dorvaquelan is −31.4° (c 1.0, methanol, 20 °C, 589 nm).\n"
     )
 
 
@@ -303,6 +306,14 @@ def _specification(say: Say) -> str:
     # the company code is an alias in the settings
     rows.append(("BQT-2291", say(SPECIFICATION, drug, "name", drug.other_name), ""))
     return _delimited(rows, "\t")
+
+
+def _identification() -> str:
+    return (
+        "3.2.S.4.2 Analytical procedures\n"
+        "\n"
+        "Identity is tested by infrared spectrum, and on a chiral column against the standard.\n"
+    )
 
 
 def _standards(draw: Draw) -> str:

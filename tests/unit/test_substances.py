@@ -9,6 +9,7 @@ import pytest
 from dossiercheck.attribution import attribute
 from dossiercheck.calling import key_of
 from dossiercheck.interpretation import Reading
+from dossiercheck.language.glossary import Term
 from dossiercheck.model import Evidence, Place, Role
 from dossiercheck.settings import RegisterEntry
 from dossiercheck.stereo.perception import from_smiles
@@ -144,3 +145,153 @@ def test_nothing_is_lost_and_the_order_is_the_dossiers() -> None:
     assert [s.id for s in substances] == [f"s{n}" for n in range(1, len(substances) + 1)]
     firsts = [int(s.evidence[0].id[1:]) for s in substances]
     assert firsts == sorted(firsts)
+
+
+# --- where evidence stands ------------------------------------------------------------------
+
+
+def at(
+    number: int,
+    text: str,
+    section: str,
+    *,
+    source: str = "a.txt",
+    role: Role = Role.SMILES,
+    **more: object,
+) -> Evidence:
+    place = Place(source, section=section, line=number)
+    return Evidence(f"e{number}", role, text, place, **more)  # type: ignore[arg-type]
+
+
+def held(substances: Sequence[Substance]) -> dict[str, list[str]]:
+    return {one.label: [said.id for said in one.evidence] for one in substances}
+
+
+def test_structure_without_a_label_in_the_section_on_structure_is_the_drug_substances() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, ALLO, "3.2.S.1.2", group="b"),
+        at(3, ALLO, "3.2.S.3.2", group="c", label="Impurity B"),
+    ]
+    substances, unread = attribute(said, (), survey)
+    # It is exactly Impurity B, and stands where the drug substance is drawn: that has to be said.
+    assert held(substances) == {"Dorvaline": ["e1"], "Impurity B": ["e2", "e3"]}
+    assert unread == []
+    substances, _ = attribute(said[:2], (), survey)
+    assert held(substances) == {"Dorvaline": ["e1", "e2"]}
+    assert substances[0].attribution["e2"].startswith("firm: without a label; stands in 3.2.S.1")
+
+
+def test_a_name_in_running_text_there_is_only_weakly_the_drug_substances() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, ALLO, "3.2.S.1.2", role=Role.NAME),
+    ]
+    (substance,), unread = attribute(said, (), survey)
+    assert substance.weak == {"e2"}
+    assert substance.attribution["e2"].startswith("weak: ")
+    assert unread == []
+
+
+def test_a_name_that_a_sentence_gives_to_a_relative_is_not_the_drug_substances() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, ALLO, "3.2.S.1.2", role=Role.NAME, apart=True),
+    ]
+    (substance,), (unread,) = attribute(said, (), survey)
+    assert held([substance]) == {"Dorvaline": ["e1"]}
+    assert unread.reason == "not-attributed"
+
+
+def test_another_skeleton_is_another_substance_wherever_it_stands() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, "C[C@@H](O)C(=O)O", "3.2.S.1.2", group="b"),
+    ]
+    assert len(attribute(said, (), survey)[0]) == 2
+
+
+def test_a_salt_without_a_label_is_a_form_of_the_drug_substance() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, f"{THREONINE}.Cl", "3.2.S.1.2", group="b"),
+    ]
+    (substance,), _ = attribute(said, (), survey)
+    assert substance.attribution["e2"].endswith("is a form of it")
+
+
+def test_two_substances_named_in_a_section_leave_it_open() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, "CCO", "3.2.S.1.1", group="b", label="Ramoxane"),
+        at(3, "C4H9NO3", "3.2.S.1.3", group="c", role=Role.FORMULA),
+    ]
+
+    def surveyed(substances: Sequence[Substance]) -> list[frozenset[Identity]]:
+        return [
+            identities(
+                [Reading(e, from_smiles(e.text)) for e in one.evidence if e.role is Role.SMILES]
+            )
+            for one in substances
+        ]
+
+    assert len(attribute(said, (), surveyed)[0]) == 3
+    assert held(attribute([said[0], said[2]], (), surveyed)[0]) == {"Dorvaline": ["e1", "e3"]}
+
+
+def test_a_salt_and_its_base_are_named_as_one_drug_substance() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.1.1", group="a", label="Dorvaline"),
+        at(2, f"{THREONINE}.Cl", "3.2.S.1.1", group="b", label="Dorvaline hydrochloride"),
+        at(3, "C4H10ClNO3", "3.2.P.1", group="c", role=Role.FORMULA, label="the drug substance"),
+    ]
+    substances, _ = attribute(said, (), nobody)
+    assert held(substances) == {"Dorvaline": ["e1"], "Dorvaline hydrochloride": ["e2", "e3"]}
+    assert substances[1].role == "drug substance"
+    assert substances[1].inferred == "the only substance named in 3.2.S.1.1 and 3.2.S.1.2"
+
+
+def test_a_heading_speaks_for_a_name_below_it_but_weakly_where_it_contradicts() -> None:
+    said = [
+        at(1, THREONINE, "3.2.S.3.2", group="a", label="Impurity A"),
+        at(2, ALLO, "3.2.S.3.2", role=Role.NAME, under="Impurity A"),
+        at(3, THREONINE, "3.2.S.3.2", role=Role.NAME, under="Impurity A"),
+    ]
+    (substance,), _ = attribute(said, (), survey)
+    assert substance.weak == {"e2"}
+
+
+# --- definitions ------------------------------------------------------------------------------
+
+
+def test_a_definition_brings_two_labels_together() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="Dorvaline"),
+        say(2, ALLO, group="b", label="DX-101"),
+    ]
+    term = Term("Dorvaline", "DX-101", "is defined as", Place("a.txt"))
+    (substance,), _ = attribute(said, (), survey, [term])
+    assert "which is defined as “Dorvaline”" in substance.attribution["e2"]
+
+
+def test_a_definition_is_not_followed_to_another_skeleton() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="Dorvaline"),
+        say(2, "CCO", group="b", label="DX-101"),
+    ]
+    term = Term("Dorvaline", "DX-101", "is defined as", Place("a.txt"))
+    substances, (unread,) = attribute(said, (), survey, [term])
+    assert len(substances) == 2
+    assert unread.reason == "label-not-followed"
+
+
+def test_a_bracket_does_not_make_two_stereoisomers_one() -> None:
+    # "Impurity B (DX-101)" may say that B is an impurity of DX-101.
+    said = [
+        say(1, THREONINE, group="a", label="DX-101"),
+        say(2, ALLO, group="b", label="Impurity B"),
+    ]
+    term = Term("Impurity B", "DX-101", "stands in brackets behind", Place("a.txt"), plain=False)
+    substances, (unread,) = attribute(said, (), survey, [term])
+    assert len(substances) == 2
+    assert unread.reason == "label-not-followed"
