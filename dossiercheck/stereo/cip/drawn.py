@@ -11,7 +11,13 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 
 from dossiercheck.stereo.cip.helices import helices
 from dossiercheck.stereo.cip.linear import cumulated, double_chains
-from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR, Molecule, others
+from dossiercheck.stereo.cip.molecule import (
+    HYDROGEN,
+    LONE_PAIR,
+    Molecule,
+    holds_lone_pair,
+    others,
+)
 from dossiercheck.stereo.cip.units import AXIS, CENTRE, DOUBLE_BOND, Marked
 from dossiercheck.stereo.cip.vectors import (
     Vector,
@@ -169,7 +175,7 @@ class Drawn:
         if len(outer) == 1 and hydrogens <= 1:
             if hydrogens == 1:
                 return outer[0], HYDROGEN
-            if hydrogens == 0 and self.molecule.number[atom] in (7, 15, 33):
+            if hydrogens == 0 and self.molecule.number[atom] in _LONE_PAIRED:
                 return outer[0], LONE_PAIR
         return None
 
@@ -241,6 +247,7 @@ class Drawn:
 # Elements whose four (or three and a lone pair) ligands hold their places (IUPAC 2013, P-93.2 and
 # P-93.3); the geometries of metals are more than tetrahedral and are not read.
 _TETRAHEDRAL = frozenset((5, 6, 7, 14, 15, 16, 32, 33, 34, 50, 51, 52))
+_LONE_PAIRED = frozenset((7, 15, 16, 33, 34))
 _PYRAMIDAL = frozenset((15, 16, 33, 34, 51, 52))
 
 
@@ -273,33 +280,6 @@ def _twins(molecule: Molecule, ligands: Iterable[int]) -> bool:
         if len(molecule.near[other]) == 1
     ]
     return len(single) > len(set(single))
-
-
-def holds_lone_pair(molecule: Molecule, atom: int) -> bool:
-    """Whether a nitrogen cannot invert: in a ring of three, or at the head of a bridge, where two
-    of its rings run on together; where two rings only share a bond it inverts freely."""
-    near = list(molecule.near[atom])
-    if not all(molecule.in_ring(atom, other) for other in near):
-        return any(two in molecule.near[one] for one in near for two in near if one < two)
-    ways = (_way_round(molecule, atom, one, two) for one in near for two in near if one < two)
-    smallest, next_one, _ = sorted((set(way) for way in ways), key=len)
-    return len(smallest) == 2 or len(smallest & next_one) > 1
-
-
-def _way_round(molecule: Molecule, atom: int, start: int, goal: int) -> list[int]:
-    """A shortest path between two neighbours of an atom that does not pass through it."""
-    paths, seen = [[start]], {atom, start}
-    while paths:
-        onward = []
-        for path in paths:
-            if path[-1] == goal:
-                return path
-            for other in molecule.near[path[-1]]:
-                if other not in seen:
-                    seen.add(other)
-                    onward.append([*path, other])
-        paths = onward
-    return []
 
 
 def is_trigonal(molecule: Molecule, atom: int) -> bool:

@@ -11,7 +11,7 @@ import re
 from collections.abc import Iterator
 from dataclasses import dataclass, field
 
-from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR, Molecule
+from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR, Molecule, holds_lone_pair
 from dossiercheck.stereo.cip.units import AXIS, CENTRE, DOUBLE_BOND, Marked
 
 _TOKEN = re.compile(
@@ -19,6 +19,7 @@ _TOKEN = re.compile(
     r"|(?P<bare>Cl|Br|[BCNOPSFI*bcnops])"
     r"|(?P<bond>[-=#$:/\\~]|->|<-)|(?P<ring>%\(\d+\)|%\d\d|\d)|(?P<other>[().])"
 )
+_BENT = frozenset((16, 34, 52))
 _SENSE = {"@": 1, "@@": -1, "@TH1": 1, "@TH2": -1, "@AL1": 1, "@AL2": -1}
 
 
@@ -97,10 +98,21 @@ def marked_in_text(text: str, molecule: Molecule) -> Iterator[Marked]:
             yield from _axis(found, molecule, chain, sense)
             continue
         ligands = _around(found, molecule, atom)
-        if len(set(ligands)) == 4:
+        if len(set(ligands)) == 4 and not _inverts(molecule, atom):
             yield Marked(CENTRE, (atom,), tuple(ligands), sense)
     if found.up:
         yield from _planes(found, molecule)
+
+
+def _inverts(molecule: Molecule, atom: int) -> bool:
+    """Whether an atom is an amine's nitrogen, whose mark means nothing because its lone pair swings
+    over (IUPAC 2013, P-93.2; common practice)."""
+    return (
+        molecule.number[atom] == 7
+        and not molecule.charge[atom]
+        and len(molecule.near[atom]) + molecule.hydrogens[atom] == 3
+        and not (len(molecule.near[atom]) == 3 and holds_lone_pair(molecule, atom))
+    )
 
 
 def _around(found: Written, molecule: Molecule, atom: int) -> list[int]:
@@ -122,8 +134,10 @@ def _precedes(found: Written, atom: int) -> bool:
 
 def cumulated(molecule: Molecule, atom: int) -> tuple[int, ...]:
     """The atoms of the row of cumulated double bonds through an atom, from end to end; the atom
-    alone where it is in none."""
+    alone where it is in none. Sulfur between two double bonds is bent and joins no row."""
     chain = [atom]
+    if molecule.number[atom] in _BENT:
+        return (atom,)
     doubles = [other for other, order in molecule.near[atom].items() if order == 2]
     if len(doubles) != 2 or len(molecule.near[atom]) != 2:
         return (atom,)
@@ -136,7 +150,8 @@ def cumulated(molecule: Molecule, atom: int) -> tuple[int, ...]:
                 for other, order in molecule.near[here].items()
                 if order == 2 and other != before
             ]
-            if len(onward) != 1 or len(molecule.near[here]) != 2 or onward[0] in chain:
+            straight = len(molecule.near[here]) == 2 and molecule.number[here] not in _BENT
+            if len(onward) != 1 or not straight or onward[0] in chain:
                 break
             before, here = here, onward[0]
     return tuple(chain if chain[0] < chain[-1] else reversed(chain))

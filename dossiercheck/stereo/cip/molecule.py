@@ -127,3 +127,30 @@ def around(mol: Chem.Mol, atoms: Iterable[int]) -> Molecule:
 def others(near: Iterable[int], *taken: int) -> list[int]:
     """Neighbours without those already taken."""
     return [atom for atom in near if atom not in taken]
+
+
+def holds_lone_pair(molecule: Molecule, atom: int) -> bool:
+    """Whether a nitrogen cannot invert: in a ring of three, or at the head of a bridge, where two
+    of its rings run on together; where two rings only share a bond it inverts freely."""
+    near = list(molecule.near[atom])
+    if not all(molecule.in_ring(atom, other) for other in near):
+        return any(two in molecule.near[one] for one in near for two in near if one < two)
+    ways = (_way_round(molecule, atom, one, two) for one in near for two in near if one < two)
+    smallest, next_one, _ = sorted((set(way) for way in ways), key=len)
+    return len(smallest) == 2 or len(smallest & next_one) > 1
+
+
+def _way_round(molecule: Molecule, atom: int, start: int, goal: int) -> list[int]:
+    """A shortest path between two neighbours of an atom that does not pass through it."""
+    paths, seen = [[start]], {atom, start}
+    while paths:
+        onward = []
+        for path in paths:
+            if path[-1] == goal:
+                return path
+            for other in molecule.near[path[-1]]:
+                if other not in seen:
+                    seen.add(other)
+                    onward.append([*path, other])
+        paths = onward
+    return []

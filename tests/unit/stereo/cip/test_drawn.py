@@ -165,7 +165,7 @@ def holds(smiles: str, atom: int) -> bool:
         ("CN1CC1C", 1, True),
         ("C1CC2CCN1CC2C", 5, True),
         ("C1N2CCC(C1)C2", 1, True),
-        # Four ligands hold their places on N+; a protonated amine loses its proton again.
+        # Four ligands hold their places on N+.
         ("C[N+](CC)(CCC)CC(C)C", 1, True),
         ("C[N+]([O-])(CC)CCC", 1, True),
         # Phosphorus, arsenic, sulfur and selenium keep the lone pair.

@@ -101,6 +101,26 @@ def test_axes(smiles: str, expected: list[str]) -> None:
     assert letters(smiles) == expected
 
 
+@pytest.mark.parametrize(
+    ("smiles", "expected"),
+    [
+        # An amine inverts, in a ring or not: its mark is no configuration (common practice).
+        ("C[N@](CC)CCC", []),
+        ("C[N@]1CCC[C@H]1C", ["R"]),
+        ("C[N@H]CC", []),
+        # In a ring of three, at the head of a bridge, or with four ligands it is one.
+        ("C[N@]1CC1C", ["S"]),
+        ("C1CC[N@@]2CCC1C2", ["R"]),
+        ("C[N@+](CC)(CCC)CCCC", ["S"]),
+        # A phosphane and a sulfoxide keep theirs.
+        ("CC[P@](C)c1ccccc1", ["S"]),
+        ("C[S@](=O)CC", ["S"]),
+    ],
+)
+def test_a_lone_pair_that_is_held_or_not(smiles: str, expected: list[str]) -> None:
+    assert letters(smiles) == expected
+
+
 def test_neighbours_in_written_order() -> None:
     found = written("C1O[C@H]1F")
     assert found.near[2] == [1, HYDROGEN, 0, 3]
