@@ -40,6 +40,7 @@ def attribute(
         sorting.draft(group)
     sorting.join([*terms, *_codes(groups)])
     sorting.find_drug_substance()
+    sorting.follow_hints()
     unread = [*sorting.settle(), *sorting.not_followed()]
     substances = list(sorting.homes.values())
     order = {said.id: number for number, said in enumerate(evidence)}
@@ -116,6 +117,22 @@ class _Sorting:
         if plain:
             return any(a.like(b) for a in one for b in two)
         return bool(one & two)
+
+    def follow_hints(self) -> None:
+        """A name beside words that are a label elsewhere is what that label means."""
+        left = []
+        for group in self.homeless:
+            label = next(filter(self._is_label, group[0].hints), "")
+            if label:
+                home = self.homes[key_of(self.callings.called(label).title)]
+                home.add(group[0], f"set beside “{label}”, which is a label elsewhere")
+                self.seen.pop(key_of(home.label), None)
+            else:
+                left.append(group)
+        self.homeless = left
+
+    def _is_label(self, text: str) -> bool:
+        return key_of(self.callings.called(text).title) in self.homes
 
     def find_drug_substance(self) -> None:
         """Which substance is the drug substance, and with it what the words mean."""

@@ -281,8 +281,9 @@ class Evidence:
     touch it, their characters counted in `text`. `instead` are other extents of a name that ends
     or begins at a line end, each with its own text and place; none is left once it is settled.
     `also` are further labels that the place gives, `under` is what the headings above name, and
-    `apart` is true where the sentence speaks of a relative ("its enantiomer, …"). `other` is the label of
-    the substance that a statement compares with, where its words only point to it (“its
+    `apart` is true where the sentence speaks of a relative ("its enantiomer, …"). `hints` are words
+    set beside a name that are a label if the dossier uses one of them as such. `other` is the label
+    of the substance that a statement compares with, where its words only point to it (“its
     enantiomer”).
     """
 
@@ -298,6 +299,7 @@ class Evidence:
     also: tuple[str, ...] = ()
     under: str = ""
     apart: bool = False
+    hints: tuple[str, ...] = ()
 
     @property
     def kind(self) -> Kind:

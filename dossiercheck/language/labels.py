@@ -48,6 +48,7 @@ _RELATIVE = re.compile(
     r"|starting material|reagent|resolving agent|counter-?ion)s?\b[^.;]{0,60}$",
     re.IGNORECASE,
 )
+_JOINT = re.compile(r"(?:,\s+|:\s+|\s+[–—=-]\s+|\s+is\s+|\s*[(\[]\s*)$")
 _LEADS_ELSEWHERE = re.compile(
     r"(?:^|[.;:]\s+)(?:from|with|using|by|after|for|in|on|of|unlike|like)\s+$", re.I
 )
@@ -106,7 +107,7 @@ def beside(text: str, start: int, end: int) -> str:
     if bracketed or called:
         return bracketed or (called[1] if called else "")
     before = text[max(0, start - 160) : start]
-    joint = re.search(r"(?:,\s+|:\s+|\s+[–—=-]\s+|\s+is\s+|\s*[(\[]\s*)$", before)
+    joint = _JOINT.search(before)
     if not joint:
         return ""
     words = before[: joint.start()]
@@ -126,6 +127,20 @@ def beside(text: str, start: int, end: int) -> str:
                 return said[-1][0] if known else match[0]
             return _invented(match[0]) if pattern is NAMED else match[0]
     return ""
+
+
+def hinted(text: str, start: int, end: int) -> tuple[str, ...]:
+    """Words set beside a name at `start` to `end` as a label is, the longest first: "TA-L is …",
+    "the Amine (…)", "… (TA-L)". Whether they are a label, the rest of the dossier tells."""
+    after = re.match(r"\s*[(\[]\s*([^()\[\]]{2,40}?)\s*[)\]]", text[end:])
+    found = [after[1]] if after else []
+    before = text[max(0, start - 80) : start]
+    joint = _JOINT.search(before)
+    words = re.split(r"[.;]\s", before[: joint.start()])[-1].split() if joint else []
+    nearest = range(len(words) - min(4, len(words)), len(words))
+    if not any(_RELATION.search(f"{' '.join(words[:n])} ") for n in nearest):
+        found += [" ".join(words[n:]) for n in nearest]
+    return tuple(one for one in found if len(one) > 1 and re.search(r"[A-Z\d]", one))
 
 
 def named(text: str) -> bool:

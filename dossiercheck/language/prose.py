@@ -19,7 +19,7 @@ from dossiercheck.language.fields import (
     value_evidence,
 )
 from dossiercheck.language.labels import beside, in_heading, is_label
-from dossiercheck.language.roles import Aside, is_nothing, plain
+from dossiercheck.language.roles import Aside, is_nothing, looks_systematic, plain
 from dossiercheck.language.running import Candidate
 from dossiercheck.language.wrapped import hard_lines, loose_name, placed, stretched
 from dossiercheck.model import Evidence, Passage, Place, Role, Unread
@@ -130,7 +130,11 @@ def _take(
     place = line.passage.place
     gap = state.previous is not None and not line.follows(state.previous)
     for one in found:
-        if state.block and starts_next(one.meaning, one.heading, state.block.met, gap):
+        if one.meaning is Aside.NAME_OR_LABEL:
+            systematic = looks_systematic(line.text[one.start : one.end])
+            one = replace(one, meaning=Role.NAME if systematic else Aside.LABEL)
+        begins = gap and one.meaning is Aside.LABEL and state.block and state.block.said
+        if state.block and (begins or starts_next(one.meaning, one.heading, state.block.met, gap)):
             yield from state.close()
         if state.block is None:
             number = state.counts.get(place.source, 0) + 1
@@ -151,11 +155,11 @@ def _take(
         if one.meaning is Aside.LABEL:
             block.called(one.heading, value.strip().rstrip(".;"))
             continue
-        if one.meaning in (Aside.IGNORED, Aside.NAME_OR_LABEL):
+        if one.meaning is Aside.IGNORED:
             continue
         start, end = line.start + one.start, line.start + one.end
         if (
-            one is found[-1]
+            one.end == found[-1].end
             and following
             and one.meaning is Role.NAME
             and (breaks_off(value) or _indented_rest(line, following, state))

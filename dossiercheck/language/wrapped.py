@@ -12,7 +12,7 @@ from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
 
 from dossiercheck.language.changes import touched
-from dossiercheck.language.labels import beside, in_heading, is_relative
+from dossiercheck.language.labels import beside, hinted, in_heading, is_relative
 from dossiercheck.language.running import (
     HYPHENS,
     PRIMES,
@@ -185,6 +185,7 @@ def loose_name(
             label=label,
             under=under,
             apart=not label and is_relative(text[:a]),
+            hints=() if label else hinted(text, a, b),
         )
         for a, b in extents
     ]

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 import pytest
 
@@ -295,3 +296,19 @@ def test_a_bracket_does_not_make_two_stereoisomers_one() -> None:
     substances, (unread,) = attribute(said, (), survey, [term])
     assert len(substances) == 2
     assert unread.reason == "label-not-followed"
+
+
+# --- labels of no usual form ------------------------------------------------------------------
+
+
+def test_words_beside_a_name_are_a_label_where_the_dossier_uses_them_as_one() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="TA-L"),
+        replace(say(2, ALLO), hints=("material TA-L", "TA-L")),
+        replace(say(3, THREONINE), hints=("TA-X",)),
+    ]
+    (substance,), unread = attribute(said, (), survey)
+    assert [one.id for one in substance.evidence] == ["e1", "e2", "e3"]
+    assert substance.attribution["e2"] == "firm: set beside “TA-L”, which is a label elsewhere"
+    assert substance.attribution["e3"].endswith("says exactly what this substance is")
+    assert unread == []

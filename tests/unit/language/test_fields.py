@@ -179,3 +179,30 @@ def test_blocks_are_numbered_anew_in_each_source() -> None:
         Passage(f"Chemical name: {OTHER}", Place("b", paragraph=1)),
     ]
     assert [one.group for one in evidence(items)] == ["a#block1", "b#block1"]
+
+
+def test_a_name_that_is_a_label_begins_its_block() -> None:
+    # The hydrochloride's formula, cut off by an unknown field, must not join the base below it.
+    text = f"Name: Dorvaline hydrochloride\nGrade: pure\nMW: 75\n\nName: Dorvaline\nChemical name: {NAME}\nMW: 74"
+    said = {one.text: one for one in evidence(lines(text))}
+    assert said["75"].group != said["74"].group == said[NAME].group
+    assert said["74"].label == "Dorvaline"
+
+
+def test_a_systematic_name_under_name_is_a_name() -> None:
+    (name, _) = evidence(lines(f"Name: {NAME}\nMW: 74"))
+    assert (name.role.name, name.text, name.label) == ("NAME", NAME, "")
+
+
+@pytest.mark.parametrize(
+    ("text", "hints"),
+    [
+        ("TA-L is (2R,3R)-2,3-dihydroxybutanedioic acid.", ("TA-L",)),
+        ("Then the Amine, (2S)-butan-2-amine, is added.", ("Then the Amine", "the Amine", "Amine")),
+        ("It is (2S)-butan-2-amine (TA-L).", ("TA-L", "It")),
+        ("The enantiomer of TA-L, (2S)-butan-2-amine, is limited.", ()),
+    ],
+)  # fmt: skip
+def test_words_beside_a_name_that_may_be_a_label(text: str, hints: tuple[str, ...]) -> None:
+    said = [one for one in evidence(lines(text)) if one.role.name == "NAME"]
+    assert [one.hints for one in said] == [hints]
