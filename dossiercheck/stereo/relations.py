@@ -176,15 +176,18 @@ def _related(space: Space, states: tuple[State, State]) -> Relation:
     bits = [[b for group in side.values() for b in group] for side in (first, second)]
     varied = [_varied(side) for side in bits]
     # Where all alternatives are one compound, what is open is no stereogenic unit there.
-    several = len(first) > 1 or len(second) > 1
-    held = any(s.open & ~v for s, v in zip(states, varied, strict=True))
-    if several or held:
+    certain = len(first) == len(second) == 1
+    for state, side in zip(states, varied, strict=True):
+        # What only the rings settle is good enough for the kind, not for which units differ.
+        certain &= not state.open & ~side
+    if not certain:
         notes += ["settled all the same: " + "; ".join(_why(states))]
     if kind not in (ENANTIOMER, DIASTEREOMER) or any(state.together for state in states):
         return Relation(kind, racemic=racemic, note="; ".join(notes))
-    numbers = _fewest(space, bits[0], bits[1], ~(varied[0] | varied[1]))
+    unclear = varied[0] | varied[1] | states[0].open | states[1].open
+    numbers = _fewest(space, bits[0], bits[1], ~unclear)
     centres = [n for n in numbers if isinstance(space.units[n], Centre)]
-    single = kind == DIASTEREOMER and len(numbers) == 1 and not several
+    single = kind == DIASTEREOMER and len(numbers) == 1 and certain
     return Relation(
         kind,
         tuple(space.atoms[n] for n in numbers),
