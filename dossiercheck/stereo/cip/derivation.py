@@ -40,8 +40,8 @@ class Side:
 class Comparison:
     """Why `higher` ranks above `lower`: the sequence rule, and the sphere of the first difference.
 
-    For Rule 4b the sets are those of like and unlike pairs with the reference descriptor, which
-    `reference` names for both sides.
+    For Rule 4b the sets are those of like and unlike pairs with the reference descriptor of each
+    side's own branch; `reference` names that of the higher one.
     """
 
     rule: str

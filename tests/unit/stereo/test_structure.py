@@ -73,7 +73,7 @@ def test_a_ranking_that_was_given_up_is_doubt_and_no_descriptor() -> None:
         # through the difference of C2 and C4.
         ("C[C@@H](O)[C@H](O)[C@@H](O)C", ["R", "S", "r"]),
         ("C[C@@H](O)[C@@H](O)[C@@H](O)C", ["R", "S", "s"]),
-        # C2 and C4 alike: C3 is no centre however it is marked (P-93.4.1.2, VS016, VS017).
+        # C2 and C4 alike: C3 is no centre however it is marked (P-93.4.1.2).
         ("C[C@@H](O)[C@H](O)[C@H](O)C", ["R", "R"]),
         ("C[C@@H](O)[C@@H](O)[C@H](O)C", ["R", "R"]),
         # trans-1,4 is r,r and cis-1,4 s,s in cyclohexanes with two equal ligands (P-93.5.1.1.2).

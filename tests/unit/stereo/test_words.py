@@ -1,7 +1,7 @@
 """Comparisons in a chemist's words, one structure for each sequence rule.
 
-The structures of Rules 1b to 6 are entries of the validation suite of R. M. Hanson et al., J. Chem.
-Inf. Model. 2018, 58, 1755 (VS numbers), which says what rule decides each. The wording is ours.
+Those of Rules 1b to 6 are cases of `tests/cases/descriptors.toml`, ranked there by hand, or
+isotopes. The wording is ours.
 """
 
 import pytest
@@ -47,11 +47,12 @@ def said(smiles: str, *atoms: int) -> list[str]:
             "C6 > C3: in sphere 3, {Cl,H,H} > {C,H,H} (Rule 1a)."
             " The sets are those along C4–C6–C7 and along C4–C3–C2.",
         ),
-        # VS014: a sulfonate's ester oxygen and its terminal oxygen.
+        # Alpha-pinene, the bridgehead beside the double bond: {C,C,H} and {H,H,H} tie, then a methyl group against a duplicate.
         (
-            "[O-][N+](C=1C=CC(=CC1)[S@@](OCC)=O)=O",
-            (9,),
-            "O10 > O13: in sphere 2, {C} > {0} (Rule 1a; 0 is a phantom atom).",
+            "CC1=CC[C@@H]2C[C@H]1C2(C)C",
+            (7,),
+            "C8 > C2: in sphere 3, {H,H,H} > {0,0,0} (Rule 1a; 0 is a phantom atom)."
+            " The sets are those along C7–C8–C10 and along C7–C2–C3.",
         ),
         # Mean of C and N, 6½, at the carbon beside a pyridine's nitrogen (P-92.1.4.4).
         (
@@ -61,43 +62,43 @@ def said(smiles: str, *atoms: int) -> list[str]:
             " a number in brackets is the mean atomic number of a duplicate).",
         ),
         (
-            "C1[C@H]2CC=C[C@@H]12",  # VS172
+            "O1[C@H]2OC=C[C@@H]12",
             (2,),
-            "C1 > C3: in sphere 3, duplicate atoms at root distance {0} > {2} (Rule 1b: the nearer"
-            " one ranks higher). The sets are those along C2–C1–C6 and along C2–C3–C4.",
+            "O1 > O3: in sphere 3, duplicate atoms at root distance {0} > {2} (Rule 1b: the nearer"
+            " one ranks higher). The sets are those along C2–O1–C6 and along C2–O3–C4.",
         ),
         (
-            "C[C@](CC)(CO)[13CH2]C",  # VS175
+            "C[C@@H](O)[13CH3]",
             (2,),
-            "¹³C7 > C3: mass 13.003 against 12.011 (Rule 2), sphere 1.",
+            "¹³C4 > C1: mass 13.003 against 12.011 (Rule 2), sphere 1.",
         ),
         (
-            "O[C@@H](C[125I])CI",  # VS179
+            "O[C@@H](C[37Cl])C[35Cl]",
             (2,),
-            "C5 > C3: in sphere 2, {I,H,H} > {¹²⁵I,H,H} (Rule 2: mass 126.904 against 124.905).",
+            "C3 > C5: in sphere 2, {³⁷Cl,H,H} > {³⁵Cl,H,H} (Rule 2: mass 36.966 against 34.969).",
         ),
         (
-            "C/C=C/1\\CC/C(/CC1)=C\\C",  # VS189
-            (2, 3),
-            "C4 > C8: in sphere 3, auxiliary descriptor Z at C6 against E at C6 (Rule 3: Z before E"
-            " before none). The sets are those along C3–C4–C5 and along C3–C8–C7.",
-        ),
-        (
-            "C[C@H]([C@@H]([C@H](C([C@@H](C)Cl)[C@H](Cl)C)O)[C@H](C)Cl)Cl",  # VS251
+            "C/C=C\\[C@H](O)/C=C/C",
             (4,),
-            "C3 > C5: auxiliary descriptor s against none, chiral before pseudoasymmetric before"
+            "C3 > C6: auxiliary descriptor Z against E, Z before E before none (Rule 3), sphere 1.",
+        ),
+        (
+            "C[C@H](F)[C@H]([C@@H](C)F)[C@@H](N)C([C@@H](C)F)[C@@H](C)F",
+            (8,),
+            "C4 > C10: auxiliary descriptor r against none, chiral before pseudoasymmetric before"
             " none (Rule 4a), sphere 1.",
         ),
         (
-            "Cl[C@H]1[C@H]([C@H]([C@@H]([C@@H]([C@H]1Cl)Cl)Cl)Cl)Cl",  # VS196
-            (2,),
-            "C3 > C7: in sphere 2, C4 (S) is like the reference S and C6 (S) is unlike the reference"
-            " R (Rule 4b: like before unlike).",
+            "C[C@H](O)[C@H](O)[C@@H](N)[C@H](O)[C@H](C)O",
+            (6,),
+            "C8 > C4: in sphere 2, C10 (S) is like the reference S and C2 (S) is unlike the"
+            " reference R (Rule 4b: like before unlike).",
         ),
         (
-            "C[C@H]1CC[C@@H]([C@@]2([C@@H]3CC[C@@H](C)CC3)CC[C@@H](C)CC2)CC1",  # VS207
-            (6,),
-            "C7 > C5: auxiliary descriptor r against s, r before s before none (Rule 4c), sphere 1.",
+            "N[C@@H]([C@H]1CC[C@@H](O)CC1)[C@H]1CC[C@H](O)CC1",
+            (2,),
+            "C10 > C3: auxiliary descriptor r against s, r before s before none (Rule 4c), sphere"
+            " 1.",
         ),
         (
             "C[C@H](O)[C@H](O)[C@@H](C)O",
@@ -105,11 +106,17 @@ def said(smiles: str, *atoms: int) -> list[str]:
             "C6 > C2: auxiliary descriptor R against S, R before S before none (Rule 5), sphere 1.",
         ),
         (
-            "C1C[C@]23CCC[C@@]24CCC[C@@]45CCC[C@@]56CCC[C@]36C1",  # VS280
-            (3,),
-            "C4 > C2: in sphere 4, C7 is the favoured ligand and C19 is not (Rule 6: the favoured"
-            " ligand, met again, ranks higher). The sets are those along C3–C4–C5–C6 and along"
-            " C3–C2–C1–C20.",
+            "C[C@@H]1CC/C(=C/C(O)=O)CC1",
+            (5, 6),
+            "C10 > C4: in sphere 3, auxiliary descriptor R at C2 against S at C2 (Rule 5: R before S"
+            " before none). The sets are those along C5–C10–C11 and along C5–C4–C3.",
+        ),
+        (
+            "C1CCO[C@@]2(C1)CCCCO2",
+            (5,),
+            "C6 > C7: in sphere 5, O4 is the favoured ligand and O11 is not (Rule 6: the favoured"
+            " ligand, met again, ranks higher). The sets are those along C5–C6–C1–C2–C3 and along"
+            " C5–C7–C8–C9–C10.",
         ),
     ],
 )
