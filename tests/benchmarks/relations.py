@@ -125,8 +125,21 @@ def _mirror(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol,
     return image, "same" if _same(_identity(mol), _identity(image)) else "enantiomer", units
 
 
+def _centres(record: SoundRecord, mol: Chem.Mol) -> list[Unit]:
+    """The centres, less those that proton transfer undoes by the standard InChI, as P of a
+    phosphate drawn with =O and –OH."""
+    found = []
+    for unit in (unit for unit, _ in record.units if len(unit) == 1):
+        if mol.GetAtomWithIdx(unit[0] - 1).GetSymbol() != "C":
+            changed = molecules.with_units(mol, flip=[unit])
+            if molecules.standard_inchi(mol) == molecules.standard_inchi(changed):
+                continue
+        found.append(unit)
+    return found
+
+
 def _centre(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, str, list[Unit]]:
-    centres = [unit for unit, _ in record.units if len(unit) == 1]
+    centres = _centres(record, mol)
     if len(centres) < 2:
         raise LookupError
     unit = dice.choice(centres)
@@ -136,7 +149,7 @@ def _centre(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol,
 
 
 def _several(record: SoundRecord, mol: Chem.Mol, dice: Random) -> tuple[Chem.Mol, str, list[Unit]]:
-    centres = [unit for unit, _ in record.units if len(unit) == 1]
+    centres = _centres(record, mol)
     if len(centres) < 4:
         raise LookupError
     units = sorted(dice.sample(centres, 2))
