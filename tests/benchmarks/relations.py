@@ -252,8 +252,8 @@ _WAYS: dict[str, Callable[[SoundRecord, Chem.Mol, Random], tuple[Chem.Mol, str, 
 
 
 def pairs(records: Sequence[SoundRecord], size: int, left_out: Counter[str]) -> Iterator[Pair]:
-    """About `size` pairs, as many of each way as can be; with dictionary isomers among them."""
-    share = -(-size // (len(_WAYS) + 1))
+    """At least `size` pairs, as many of each way as can be; dictionary isomers besides."""
+    share = -(-size // len(_WAYS))
     made: Counter[str] = Counter()
     for record in records:
         if all(made[way] >= share for way in _WAYS):
@@ -409,7 +409,7 @@ def table(figures: dict[str, Any]) -> str:
 def main() -> None:
     """Measure and print."""
     parser = argparse.ArgumentParser(description=__doc__)
-    parser.add_argument("--size", type=int, default=1000, help="pairs, about")
+    parser.add_argument("--size", type=int, default=1000, help="pairs, at least")
     parser.add_argument("--skip", type=int, default=0, help="sound records passed over")
     parser.add_argument("--json", type=Path)
     given = parser.parse_args()
