@@ -13,13 +13,15 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
 
 from dossiercheck.calling import DRUG_SUBSTANCE, Callings, key_of, kind_of, plays_a_part
+from dossiercheck.fitting import Fitting, Seen
 from dossiercheck.language.glossary import Term, beside
+from dossiercheck.language.labels import words_of
 from dossiercheck.model import Evidence, Kind, Unread
 from dossiercheck.settings import RegisterEntry
 from dossiercheck.standing import Standing
-from dossiercheck.substances import FIRM, WEAK, Identity, Substance, Survey
+from dossiercheck.substances import FIRM, WEAK, Substance, Survey
 
-Seen = frozenset[Identity]
+_STRUCTURAL = (Kind.NAME, Kind.DRAWING, Kind.NOTATION, Kind.COORDINATES)
 
 
 def attribute(
@@ -36,6 +38,8 @@ def attribute(
     """
     groups = _groups(evidence)
     sorting = _Sorting(Callings(register), survey)
+    for group in groups:
+        sorting.used.add(key_of(_label(group)))
     for group in groups:
         sorting.draft(group)
     sorting.join([*terms, *_codes(groups)])
@@ -62,16 +66,19 @@ class _Sorting:
     homes: dict[str, Substance] = field(default_factory=dict)
     homeless: list[list[Evidence]] = field(default_factory=list)
     seen: dict[str, Seen] = field(default_factory=dict)
+    used: set[str] = field(default_factory=set)
     standing: Standing = field(default_factory=Standing)
     drug: Substance | None = None
 
     def draft(self, group: list[Evidence]) -> None:
         """Give a labelled group the home of its label; the register knows some already."""
-        label = next((said.label for said in group if said.label), "")
+        label = _label(group)
         if not key_of(label):
             self.homeless.append(group)
             return
-        self._house(label, group)
+        # "DS Impurity A" is another one than "Impurity A" where the dossier uses it as a label.
+        longer = (h for h in group[0].hints if h.endswith(f" {label}") and key_of(h) in self.used)
+        self._house(next(longer, label), group)
 
     def _house(self, label: str, group: Sequence[Evidence]) -> None:
         called = self.callings.called(label)
@@ -84,7 +91,7 @@ class _Sorting:
         """Follow the definitions, and bring together what they make one substance."""
         if not terms:
             return
-        used = {key_of(said.label) for home in self.homes.values() for said in home.evidence}
+        used = self.used
         terms = [
             term
             for term in terms
@@ -104,7 +111,7 @@ class _Sorting:
         before, self.homes = self.homes, {}
         for home in before.values():
             for group in _groups(home.evidence):
-                self._house(next(said.label for said in group if said.label), group)
+                self._house(home.label if home.label in group[0].hints else _label(group), group)
         if len(self.homes) != len(before):
             self.seen.clear()
 
@@ -183,15 +190,26 @@ class _Sorting:
         said = group[0]
         if said.apart:
             return None, "", WEAK
-        if said.under:
-            called = self.callings.called(said.under)
-            home = self.homes.get(key_of(called.title))
-            if home is not None:
-                why = f"stands under a heading that names “{said.under}”"
-                return home, why, WEAK if said.kind is Kind.NAME else FIRM
+        home, named = self._in_title(said.under)
+        if home is not None:
+            structural = any(one.kind in _STRUCTURAL for one in group)
+            why = f"stands under a title that names “{named}”"
+            return home, why, WEAK if structural else FIRM
         home, why = self.standing.subject(said.place, self.drug)
         loose = not said.group and said.kind is Kind.NAME
         return home, why, WEAK if loose else FIRM
+
+    def _in_title(self, title: str) -> tuple[Substance | None, str]:
+        """The one substance that a title names by a label known from elsewhere."""
+        found: dict[int, tuple[Substance, str]] = {}
+        whole = self.homes.get(key_of(self.callings.called(title).title)) if title else None
+        if whole is not None:
+            return whole, title
+        for words in words_of(title):
+            home = self.homes.get(key_of(self.callings.called(words).title))
+            if home is not None and len(key_of(words)) > 2:
+                found.setdefault(id(home), (home, words))
+        return next(iter(found.values())) if len(found) == 1 else (None, "")
 
     def not_followed(self) -> Iterator[Unread]:
         """The definitions that were not followed, where a label was left to itself by that."""
@@ -208,53 +226,10 @@ class _Sorting:
             yield Unread(term.place, "label-not-followed", detail, f"{term.label} ({term.other})")
 
 
-@dataclass(slots=True)
-class Fitting:
-    """Which substances have a structure: by constitution and by parent."""
-
-    _by_form: dict[str, list[tuple[Substance, Identity]]] = field(default_factory=dict)
-
-    def enter(self, home: Substance, seen: Seen) -> None:
-        """Take what a substance is."""
-        for identity in sorted(seen, key=lambda one: (one.smiles, one.kind)):
-            for form in {identity.flat, identity.parent} - {""}:
-                self._by_form.setdefault(form, []).append((home, identity))
-
-    def home(
-        self, group: Sequence[Evidence], seen: Seen, tied: Substance | None, why: str, strength: str
-    ) -> tuple[Substance | None, str, str]:
-        """The home of a group, the reason and its strength; without a home the reason says why
-        nobody can be held to be spoken of, "" where the group stands for itself."""
-        alone = not group[0].group
-        if not seen and tied is None:
-            return None, "", WEAK
-        if not seen:
-            unlike = group[0].kind is Kind.NAME
-            return tied, f"without a label; {why}", WEAK if unlike else strength
-        alike = [entry for one in seen for entry in self._by_form.get(one.flat, [])]
-        exact = {id(home): home for home, identity in alike if seen == {identity}}
-        if tied is not None and id(tied) in exact:
-            return tied, f"without a label; says exactly what this substance is, and {why}", FIRM
-        if len(exact) == 1 or (exact and alone):
-            return (
-                next(iter(exact.values())),
-                "without a label; says exactly what this substance is",
-                FIRM,
-            )
-        related = [*alike, *(entry for one in seen for entry in self._by_form.get(one.parent, []))]
-        if tied is not None and any(home is tied for home, _ in related):
-            same = any(home is tied for home, _ in alike)
-            form = "has its constitution" if same else "is a form of it"
-            return tied, f"without a label; {why}; {form}", strength
-        if alone and alike:
-            return None, _nobody([home.label for home, _ in alike]), WEAK
-        return None, "", WEAK
-
-
 def _codes(groups: Sequence[Sequence[Evidence]]) -> Iterator[Term]:
     """The codes that stand beside labels."""
     for group in groups:
-        label = next((said.label for said in group if said.label), "")
+        label = _label(group)
         others = dict.fromkeys(other for said in group for other in said.also)
         yield from beside(label, others, group[0].place)
 
@@ -266,19 +241,15 @@ def _groups(evidence: Sequence[Evidence]) -> list[list[Evidence]]:
     return list(groups.values())
 
 
+def _label(group: Sequence[Evidence]) -> str:
+    return next((said.label for said in group if said.label), "")
+
+
 def _reason(said: Evidence, label: str, why: str) -> str:
-    called = f"called “{said.label or label}”"
+    called = f"called “{label if label in said.hints else said.label or label}”"
     if not said.label:
         called = f"stands together with what is called “{label}”"
     return f"{called}, {why}" if why else called
-
-
-def _nobody(labels: Sequence[str]) -> str:
-    names = " or ".join(f"“{label}”" for label in list(dict.fromkeys(labels))[:3])
-    return (
-        f"has the constitution of {names} but not the same configuration, and the text does not"
-        " say of which substance it speaks"
-    )
 
 
 def _title(group: Sequence[Evidence]) -> str:

@@ -122,9 +122,10 @@ class Block:
     def evidence(self) -> Iterator[Evidence]:
         """The block's evidence with group and label."""
         label = self.label or in_heading(self.headings)
+        under = self.headings[-1] if self.headings and not label else ""
         for said in self.said:
             group = f"{self.path}#block{self.number}"
-            yield replace(said, group=group, label=label, also=self.also)
+            yield replace(said, group=group, label=label, also=self.also, under=under)
 
     def called(self, heading: str, label: str) -> None:
         """Take a label; after the first, one that a code's heading says is the same one's."""

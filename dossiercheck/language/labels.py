@@ -143,6 +143,16 @@ def hinted(text: str, start: int, end: int) -> tuple[str, ...]:
     return tuple(one for one in found if len(one) > 1 and re.search(r"[A-Z\d]", one))
 
 
+def words_of(title: str) -> tuple[str, ...]:
+    """The runs of words of a heading or caption that may be a label, the longest first; none
+    where it speaks of many substances, or of a relative of one."""
+    if _MANY.search(title) or _RELATIVE.search(title):
+        return ()
+    words = re.findall(r"[^\s,;:()\[\]]+", title)
+    runs = (words[n : n + size] for size in (3, 2, 1) for n in range(len(words) - size + 1))
+    return tuple(" ".join(run) for run in runs)
+
+
 def named(text: str) -> bool:
     """True for a text that has the form of an invented name and is no word of sentences."""
     return bool(NAMED.fullmatch(text) and _invented(text))

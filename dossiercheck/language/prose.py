@@ -106,13 +106,24 @@ def _line(line: Line, following: Line | None, state: Prose) -> Iterator[Evidence
     if found:
         yield from _take(line, following, found, state)
         return
-    yield from state.close()
+    if not _other_field(line, state):
+        yield from state.close()
     title, state.title = state.title, line if is_label(line.text) else None
     yield from _names(line, following, state.previous)
     under = in_heading(line.passage.headings)
     if title and line.follows(title):
         under = title.text.strip()
     yield from claim_evidence(line.passage, line.start, line.end, under, _spoken(line, state))
+
+
+def _other_field(line: Line, state: Prose) -> bool:
+    """True for a field of unknown meaning among those of a block ("Salt form: maleate")."""
+    if state.block is None or state.previous is None or not line.follows(state.previous):
+        return False
+    return _UNKNOWN_FIELD.fullmatch(line.text) is not None
+
+
+_UNKNOWN_FIELD = re.compile(r"\s*[A-Z][^.:;,]{1,40}:\s+\S[^.:]{0,60}\.?\s*")
 
 
 def _spoken(line: Line, state: Prose) -> str:

@@ -73,8 +73,11 @@ def table_evidence(table: Table, columns: Mapping[str, str]) -> Iterator[Evidenc
     else:
         found = _from_cells(sheet)
     said = 0
+    title = table.caption or (table.headings[-1] if table.headings else "")
     for one in found:
         said += 1
+        if title and isinstance(one, Evidence) and not one.label:
+            one = replace(one, under=one.under or title)
         yield one
     place = table.place
     if (
@@ -315,6 +318,9 @@ def _said(
     if role is Aside.COUNT:
         # The number says nothing without its heading.
         yield Evidence("", Role.STEREO, f"{heading}: {text}", cell.place, group, label)
+    elif role is Role.ROTATION and "(" in heading:
+        # The conditions stand in the heading.
+        yield Evidence("", role, f"{heading}: {text}", cell.place, group, label)
     elif role is Aside.SYNONYMS:
         for span in synonyms(text, 0, len(text)):
             place = replace(cell.place, span=span)

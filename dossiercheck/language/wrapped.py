@@ -174,7 +174,8 @@ def loose_name(
 ) -> Evidence | Unread:
     """One name of a line from `start` to `end`, with its other extents."""
     text = holder.text[start:end]
-    under = in_heading(holder.headings) if isinstance(holder, Passage) else ""
+    headings = holder.headings if isinstance(holder, Passage) else ()
+    under = in_heading(headings) or (headings[-1] if headings else "")
     extents = [(found.candidate.start, found.candidate.end), *found.others]
     names = [
         Evidence(
@@ -185,7 +186,7 @@ def loose_name(
             label=label,
             under=under,
             apart=not label and is_relative(text[:a]),
-            hints=() if label else hinted(text, a, b),
+            hints=hinted(text, a, b),
         )
         for a, b in extents
     ]
