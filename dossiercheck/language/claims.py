@@ -11,24 +11,37 @@ import re
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
-from dossiercheck.language.frames import CLAIMED, TRIGGER, Framed, framed
+from dossiercheck.language.frames import Framed, framed
 from dossiercheck.language.labels import LABEL
-from dossiercheck.language.predicates import INVENTED, PART, Statement, is_name_of_one, predicate
+from dossiercheck.language.predicates import (
+    INVENTED,
+    LOWER,
+    PART,
+    SHORT_CODE,
+    Statement,
+    is_name_of_one,
+    predicate,
+)
 from dossiercheck.language.rotation import read_rotation, speaks_of_rotation
 from dossiercheck.language.scope import CONDITION, is_certain, masked, sentences
+from dossiercheck.language.wording import CLAIMED, TRIGGER
 
 ROTATION = "rotation"
 STEREO = "stereo"
 
-_LABELS = re.compile(rf"{LABEL.pattern}|\b{PART}\b|(?<![\w-]){INVENTED}(?![\w-])")
+_LABELS = re.compile(rf"{LABEL.pattern}|{SHORT_CODE}|\b{PART}\b|(?<![\w-]){INVENTED}(?![\w-])")
 _RELATIVE = re.compile(
     r"\b(?:enantiomer|antipode|diastereo(?:iso)?mer|epimer|isomer|racemate|salt|precursor|solution"
     r"|mixture)s?\s+(?:of|to|in)\s+(?:the\s+)?$",
     re.IGNORECASE,
 )
-_JOINED = re.compile(r", and |, while |, whereas |, but | and | while | whereas ")
+_JOINED = re.compile(
+    r", and |, while |, whereas |, but | and | while | whereas |, (?=[A-Z]|the double bond)"
+    r"|: (?=C-?\d)"
+)
+_OF_SMALL = re.compile(rf"\brotation of ({LOWER})(?![\w-])")
 _MEASURED = re.compile(
-    r"°|\bdeg(?:rees?)?\b|\]\s?\S{0,8}\s*(?:=|:|of|is)?\s*[+−–-]?\s?\d", re.IGNORECASE
+    r"°(?!\s?C)|\bdeg(?:rees?)?\b|\]\s?\S{0,8}\s*(?:=|:|of|is)?\s*[+−–-]?\s?\d", re.IGNORECASE
 )
 
 
@@ -62,6 +75,7 @@ def claims(text: str, under: str = "", before: str = "") -> Iterator[Claim]:
     for start, end in sentences(shown):
         for first, stop in _clauses(shown, start, end):
             clause = shown[first:stop]
+            spoken = ""
             for one in _of_clause(clause):
                 pointed = before if last is None else last
                 label = one.label or (under if last is None else last)
@@ -72,7 +86,8 @@ def claims(text: str, under: str = "", before: str = "") -> Iterator[Claim]:
                 if not why and not label:
                     why = "the text does not say of which substance it speaks"
                 yield Claim(first + one.start, first + one.end, one.form, label, other, why)
-            named = _labels(clause)
+                spoken = one.label
+            named = _labels(clause) or ([spoken] if spoken else [])
             if named:
                 last = named[0] if len(named) == 1 else ""
 
@@ -115,14 +130,22 @@ def _clauses(shown: str, start: int, end: int) -> list[tuple[int, int]]:
     cuts = [start]
     for joint in _JOINED.finditer(shown, start, end):
         rest = shown[joint.end() : end]
-        if framed(shown[cuts[-1] : joint.start()]) and framed(rest):
+        if (joint[0] == ": " or framed(shown[cuts[-1] : joint.start()])) and _opens(rest):
             cuts.append(joint.end())
     ends = [*(_before(shown, cut) for cut in cuts[1:]), end]
     return list(zip(cuts, ends, strict=True))
 
 
+def _opens(rest: str) -> bool:
+    """Whether a frame begins here, as far as the next place where another may begin."""
+    joint = _JOINED.search(rest)
+    return framed(rest) is not None or (
+        joint is not None and framed(rest[: joint.start()]) is not None
+    )
+
+
 def _before(shown: str, cut: int) -> int:
-    words = re.search(r",?\s+(?:and|while|whereas|but)\s$", shown[:cut])
+    words = re.search(r",?\s+(?:and|while|whereas|but)\s$|[,:]\s$", shown[:cut])
     return words.start() if words else cut
 
 
@@ -139,6 +162,9 @@ def _of_clause(clause: str) -> Iterator[Framed]:
 
 def _rotation(clause: str) -> Framed:
     named = _labels(clause)
+    small = _OF_SMALL.search(clause)
+    if small and not named:
+        named = [small[1]]
     whole = Framed(0, len(clause.rstrip(" .;")), form=ROTATION)
     if not is_certain(re.sub(r"\b(?:not (?:less|more) than|or)\b", "", clause)):
         return replace(whole, why=NOT_UNDERSTOOD)

@@ -16,9 +16,11 @@ from dossiercheck.language.predicates import (
     AT_ANY,
     INVENTED,
     LETTERS,
+    LOWER,
     NUMBERS,
     PART,
     RELATION,
+    SHORT_CODE,
     Statement,
     is_name_of_one,
     letters_of,
@@ -29,13 +31,6 @@ from dossiercheck.language.predicates import (
     tail_is_plain,
 )
 from dossiercheck.language.scope import NAME, is_certain
-
-TRIGGER = re.compile(
-    r"enantio|antipode|racem|scalemic|diastereo|epimer|\bmeso\b|chiral|stereo|asymmetric|isomer"
-    r"|optical|rotat|configur|retention|inversion|\[\s?(?:α|alpha)|\bcis\b|\btrans\b|threo|erythro"
-    r"|mirror image|\be\.?e\.?\b|-form\b",
-    re.IGNORECASE,
-)
 
 
 @dataclass(frozen=True, slots=True)
@@ -57,26 +52,34 @@ _KINDS_OF = (
     r"|[Ss]tarting material"
     r"|[Pp]roduct|[Cc]ompound|[Ss]alt|[Ff]ree base|[Rr]eagent|[Mm]etabolite)"
 )
-_NAMED = rf"(?:{LABEL.pattern}|{INVENTED})"
+_NAMED = rf"(?:{LABEL.pattern}|{SHORT_CODE}|{INVENTED})"
 _GENERIC = (
     r"(?:[Tt]he|[Tt]his) (?:compound|molecule|substance|material|structure|product)|[Ii]t|[Tt]hey"
+    r"|[Tt]he (?:only |one )?(?:stereogenic |chiral |asymmetric )?(?:centre|center|stereocentre)"
+    r"|[Tt]he (?:stereogenic )?double bond"
 )
 _LEAD = (
     r"(?:[A-Z][\w /-]{2,40}: )?"
     r"(?:(?:Therefore|Thus|Hence|Accordingly|Consequently|Moreover|Furthermore|In contrast"
     r"(?: to [^,]{2,40})?"
     r"|Unlike [^,]{2,40}|As (?:shown|drawn|confirmed|described|established)[^,]{0,60}"
-    r"|By X-ray[^,]{0,60}),? )?"
+    r"|By X-ray[^,]{0,60}"
+    r"|By (?:single-crystal )?X-ray (?:diffraction|crystallography)[^,;]{0,80}?"
+    r"(?= the absolute)),? )?"
 )
 
 
-def _subject(tag: str = "") -> str:
+def _subject(tag: str = "", lower: str = "") -> str:
+    """`lower` lets an invented name stand in small letters, where nothing else can stand."""
+    small = rf"|(?P<low{tag}>{LOWER})(?![\w-])" if lower else ""
     return (
         rf"(?:(?:{_KINDS_OF},? )??(?P<label{tag}>{_NAMED})(?![\w-])(?:'s)?"
-        rf"|(?P<part{tag}>{PART})(?!\w)|(?P<generic{tag}>{_GENERIC})){ASIDE}?"
+        rf"|(?P<part{tag}>{PART})(?!\w)|(?P<generic{tag}>{_GENERIC})(?!\w){small})"
+        rf"(?:{ASIDE}|, the [a-z]+,)?"
     )
 
 
+_SMALL, _SMALL_1, _SMALL_2 = (_subject(tag, lower="y") for tag in ("", "1", "2"))
 _IS = (
     r"(?:is|are|was|were|remains|(?:has|have) been (?:shown|found|confirmed|proved) to be"
     r"|(?:is|was|were|are) (?:shown|found|confirmed|proved|established) to be"
@@ -96,8 +99,8 @@ _BETWEEN = re.compile(
     rf"(?: at (?P<at>{AT_ANY}))?(?: of (?:each other|one another))?(?P<tail>.*)"
 )
 _REVERSED = re.compile(
-    rf"{_LEAD}[Tt]he {RELATION} of (?:the )?(?P<other>{_NAMED}|{PART})"
-    rf"(?!\w){ASIDE}? is {_subject()}(?P<tail>.*)"
+    rf"{_LEAD}[Tt]he {RELATION} of (?:the )?(?P<other>{_NAMED}|{PART}|{LOWER})"
+    rf"(?![\w-]){ASIDE}? is {_SMALL}(?P<tail>.*)"
 )
 _PLAIN = re.compile(
     rf"{_LEAD}(?:[Tt]he (?:molecule|structure) of )?{_subject()} (?:{_IS}|{_HAS}) (?P<said>.+)"
@@ -121,26 +124,28 @@ _CENTRE = (
 _CONFIGURATION = tuple(
     re.compile(pattern)
     for pattern in (
-        rf"{_LEAD}{_ABSOLUTE} (?:at|of) {_CENTRE}{_AT}(?: (?:in|of) {_subject()})? {_DETERMINED} "
+        rf"{_LEAD}{_ABSOLUTE} (?:at|of) {_CENTRE}{_AT}(?: (?:in|of) {_SMALL})? {_DETERMINED} "
         rf"(?P<letters>{LETTERS})(?P<tail>.*)",
-        rf"{_LEAD}{_ABSOLUTE} of {_subject()}(?: at {_AT})? {_DETERMINED} (?P<letters>{LETTERS})"
+        rf"{_LEAD}{_ABSOLUTE} of {_SMALL}(?: at {_AT})? {_DETERMINED} (?P<letters>{LETTERS})"
         rf"(?P<tail>.*)",
-        rf"{_LEAD}[Ii]n {_subject()}, ?{_ABSOLUTE} (?:at|of) {_CENTRE}{_AT} {_DETERMINED} "
+        rf"{_LEAD}[Ii]n {_SMALL}, ?{_ABSOLUTE} (?:at|of) {_CENTRE}{_AT} {_DETERMINED} "
         rf"(?P<letters>{LETTERS})(?P<tail>.*)",
-        rf"{_LEAD}{_AT}(?: (?:in|of) {_subject()})? (?:is|are|has|have) (?:the )?(?:absolute )?"
+        rf"{_LEAD}{_AT}(?: (?:in|of) {_SMALL})? (?:is|are|has|have) (?:the )?(?:absolute )?"
         rf"(?P<letters>{LETTERS})"
         r"(?:[- ]configur(?:ed|ation))?(?P<tail>.*)",
         rf"{_LEAD}{_ABSOLUTE} {_DETERMINED} (?P<letters>{LETTERS})(?P<at>(?!))?(?P<tail>.*)",
+        rf"{_LEAD}{_AT}(?: (?:in|of) {_SMALL})? (?:is a pseudoasymmetric centre and )?has the "
+        rf"descriptor (?P<letters>{LETTERS}|[rs])(?P<tail>.*)",
     )
 )
 _THERE = re.compile(
-    rf"{_LEAD}(?:[Tt]here are (?P<said>.+?) in {_subject('1')}|[Ii]n {_subject('2')},? there "
+    rf"{_LEAD}(?:[Tt]here are (?P<said>.+?) in {_SMALL_1}|[Ii]n {_SMALL_2},? there "
     rf"(?:are|is) (?P<more>.+))"
     r"(?P<tail>[.\s]*)"
 )
 _COUNTS = "|".join(sorted(NUMBERS, key=len, reverse=True))
 _POSSIBLE = re.compile(
-    rf"{_LEAD}(?:(?P<count>(?i:\d{{1,3}}|{_COUNTS})) stereoisomers (?:of {_subject('1')} )?are "
+    rf"{_LEAD}(?:(?P<count>(?i:\d{{1,3}}|{_COUNTS})) stereoisomers (?:of {_SMALL_1} )?are "
     rf"(?:theoretically )?possible"
     rf"(?: for {_subject('2')})?|{_subject('3')} can (?:theoretically )?exist (?:in|as) (?P<more>"
     rf"(?i:\d{{1,3}}|{_COUNTS})) "
@@ -150,17 +155,25 @@ _STEP = tuple(
     re.compile(pattern)
     for pattern in (
         rf"{_LEAD}{_subject('1')} is (?:converted|transformed|taken|turned) "
-        rf"(?:in)?to {_subject()} with (?:clean |complete |full |overall )?"
+        rf"(?:in)?to {_SMALL} with (?:clean |complete |full |overall )?"
         rf"(?P<step>retention|inversion)(?: of (?:the )?configuration)?(?: at {_AT})?(?P<tail>.*)",
         rf"{_LEAD}[Tt]he (?:conversion|transformation|reaction|substitution"
-        rf"|displacement) of {_subject('1')} (?:in)?to {_subject()}"
+        rf"|displacement) of {_subject('1')} (?:in)?to {_SMALL}"
         r" (?:proceeds|occurs|takes place|runs|goes)"
         rf" with (?:clean |complete |full |overall )?(?P<step>retention|inversion)(?: of "
         rf"(?:the )?configuration)?(?: at {_AT})?(?P<tail>.*)",
         rf"{_LEAD}{_subject()} is (?:obtained|formed|prepared|made) from {_subject('1')} with "
         rf"(?:clean |complete |full |overall )?"
         rf"(?P<step>retention|inversion)(?: of (?:the )?configuration)?(?: at {_AT})?(?P<tail>.*)",
+        rf"{_LEAD}[A-Z][a-z]{{4,20}} of {_SMALL_1} with (?:clean |complete |full |overall )?"
+        rf"(?P<step>retention|inversion)(?: of (?:the )?configuration)?(?: at {_AT})? "
+        rf"(?:gives|yields|affords|leads to|furnishes) {_SMALL}(?P<tail>.*)",
     )
+)
+_RELATIONSHIP = re.compile(
+    rf"{_LEAD}[Ii]n {_SMALL},? the [^,.;]{{3,80}} (?:are|is|stand) (?:in (?:the |a )?)?"
+    r"(?P<word>cis|trans)(?: relationship| to (?:each other|one another)| to the [^,.;]{3,40})?"
+    r"(?P<tail>.*)"
 )
 _EXCESS = tuple(
     re.compile(pattern)
@@ -168,7 +181,7 @@ _EXCESS = tuple(
         rf"{_LEAD}{_subject()} (?:has|had|shows|showed|was obtained with|is obtained with) "
         rf"(?:an? )?(?:enantiomeric excess|e\.?e\.?)"
         r" of (?:>|≥|not less than |at least )?(?P<excess>\d+(?:\.\d+)?) ?%(?P<tail>.*)",
-        rf"{_LEAD}[Tt]he enantiomeric excess (?:\(e\.?e\.?\) )?of {_subject()} (?:is|was) (?:>|≥"
+        rf"{_LEAD}[Tt]he enantiomeric excess (?:\(e\.?e\.?\) )?of {_SMALL} (?:is|was) (?:>|≥"
         rf"|not less than |at least )?"
         r"(?P<excess>\d+(?:\.\d+)?) ?%(?P<tail>.*)",
         r"(?P<label>(?!))?(?P<part>(?!))?(?:[Ee]nantiomeric excess|e\.?e\.?)[:=]? ?(?:>|≥"
@@ -181,43 +194,6 @@ _WHICH = re.compile(
 )
 _APPOSED = re.compile(
     rf"(?P<label>{LABEL.pattern}|{INVENTED})(?:, | \(){NAME}++\)?, (?P<said>(?:an?|the) .+)"
-)
-
-_VERB = (
-    r"\b(?:(?:may|might|could|can|must|should|will|appears to|seems to|is (?:believed|thought"
-    r"|assumed|expected"
-    r"|presumed|considered|supposed) to) (?:also )?(?:be|have|contain|exist as)|is|are|was|were"
-    r"|exists? as|consists? of"
-    r"|has|have|contains|possesses|bears)\b"
-)
-_FILLER = (
-    r"(?: (?:an?|the|one|only|single|pure|not|no|never|also|therefore|thus|hence|both|its|their"
-    r"|either|neither"
-    r"|probably|presumably|likely|possibly|mostly|mainly|predominantly|essentially|believed"
-    r"|assumed|expected"
-    r"|considered|thought|to|be|as|mixture|pair|of|two|three|four|five|six|seven|eight|\d+"
-    r"|\(?\d?[RSEZ]\)?-?))*"
-)
-_STRONG = (
-    r" ?(?:(?:\(\d*[RSEZ](?:,\d*[RSEZ])*\)-)?(?:enantiomers?\b(?! (?:impurity|content|excess"
-    r"|separation))|stereoisomers?\b"
-    r"|antipodes?\b|diastereo(?:iso)?mers?\b|epimers?\b|constitutional isomers?\b)|racem(?:ate"
-    r"|ic)\b|scalemic\b"
-    r"|meso\b|achiral\b(?! (?:column|phase|method|HPLC))|optically (?:active|inactive|pure)\b"
-    r"|enantiopure\b|homochiral\b"
-    r"|enantiomerically (?:pure|enriched)\b|epimeric\b"
-    r"|chiral\b(?! (?:column|phase|method|HPLC|stationary|selector|auxiliary|chromatograph|GC"
-    r"|purity|separation|reagent|ligand"
-    r"|switch|pool|catalyst|acid|base|resolution|impurit|liquid|assay|test|amine|SFC|additive"
-    r"|shift))"
-    r"|stereo(?:genic |chemical )?cent(?:re|er)s?\b|asymmetric (?:carbon|centre|center)"
-    r"|stereogenic\b|(?:R|S|E|Z|\(\d*[RSEZ](?:, ?\d*[RSEZ])*\))-configured\b|(?:cis|trans|threo"
-    r"|erythro)[- ](?:isomer|configured))"
-)
-CLAIMED = re.compile(
-    rf"(?<!column )(?<!phase )(?<!method )(?<!HPLC ){_VERB}{_FILLER}{_STRONG}"
-    rf"|\b[Cc]onfiguration\b[^.;]{{0,80}}\b(?:is|was|as|be)\b[^.;]{{0,30}}?(?<![\w-])\(?\d?[RS]"
-    rf"(?![\w-])"
 )
 
 
@@ -237,6 +213,9 @@ def _who(found: re.Match[str], tag: str = "") -> str | None:
     label = found[f"label{tag}"] if f"label{tag}" in groups else None
     if label:
         return label if is_name_of_one(label) else None
+    low = found[f"low{tag}"] if f"low{tag}" in groups else None
+    if low:
+        return low
     part = found[f"part{tag}"] if f"part{tag}" in groups else None
     return re.sub(r"^[Tt]he ", "", part) if part else ""
 
@@ -329,6 +308,14 @@ def _step(clause: str) -> Framed | None:
     return None
 
 
+def _relationship(clause: str) -> Framed | None:
+    found = _RELATIONSHIP.fullmatch(clause)
+    if found is None or not tail_is_plain(found["tail"]) or not is_certain(clause):
+        return None
+    label = _who(found)
+    return Framed(0, 0, label, Statement(words=(found["word"],))) if label is not None else None
+
+
 def _excess(clause: str) -> Framed | None:
     for pattern in _EXCESS:
         found = pattern.fullmatch(clause)
@@ -355,6 +342,7 @@ _FRAMES: tuple[Callable[[str], Framed | None], ...] = (
     _configuration,
     _possible,
     _step,
+    _relationship,
     _excess,
     _there,
     _plain,

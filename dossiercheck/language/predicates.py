@@ -57,7 +57,15 @@ PART = (
     r"(?:[Tt]he )?(?:[Dd]rug substance|[Aa]ctive (?:pharmaceutical ingredient|substance|ingredient)"
     r"|API)"
 )
-LABELLED = rf"(?:{LABEL.pattern}|{PART}|{INVENTED})"
+# An invented name inside a sentence, where only the name of a substance can stand.
+LOWER = (
+    r"(?!(?:water|methanol|ethanol|acetone|toluene|lactose|several|either|neither|another|unknown"
+    r"|different|opposite|defined|natural|racemic|chiral|achiral|inversion|retention|rotation"
+    r"|(?:di)?chloromethane|chloroform|hexane|course|which|these|those|known|single|double)\b)"
+    rf"[a-z]{{6,24}}(?: {SALTS}){{0,2}}"
+)
+SHORT_CODE = r"(?<![\w-])[A-Z]{2,4}-(?:\d|[A-Z])(?![\w-])"
+LABELLED = rf"(?:{LABEL.pattern}|{SHORT_CODE}|{PART}|{INVENTED})"
 # Capitalised words that begin sentences about stereochemistry and are no substance.
 _OPENERS = """
     crystals samples batches racemate enantiomer isomers isomer chirality product products
@@ -109,7 +117,7 @@ _BONDS = (
 _ISOMERS = (
     r"(?:possible |theoretical )?stereoisomers(?: (?:are|is) possible)?(?: in all| in total)?"
 )
-_OTHER = rf"(?:the )?(?P<other>{LABELLED})(?!\w){ASIDE}?"
+_OTHER = rf"(?:(?:the )?(?P<other>{LABELLED})|(?P<lower>{LOWER}))(?![\w-]){ASIDE}?"
 _FORM = r"(?: (?:compound|substance|form|material|solid|molecule|mixture|modification))?"
 
 
@@ -134,7 +142,8 @@ def number(word: str) -> int:
 
 
 def letters_of(printed: str, locants: tuple[str, ...] = ()) -> tuple[tuple[str, str], ...]:
-    """The pairs of "(2S,3R)": ("2", "S"), ("3", "R"). One bare letter is put at the locants given."""
+    """The pairs of "(2S,3R)": ("2", "S"), ("3", "R"). One bare letter is
+    put at the locants given."""
     found = re.findall(rf"({_LOCANT})?({_LETTER})", printed)
     if len(found) == 1 and not found[0][0] and locants:
         return tuple((locant, found[0][1]) for locant in locants)
@@ -177,7 +186,9 @@ def _related(found: re.Match[str]) -> Statement:
     at = [found[name] for name in ("at", "at2", "at3") if name in found.re.groupindex]
     locants = tuple(locant for one in at for locant in locants_of(one))
     kind = "racemic" if relation == "racemate" else ""
-    other = found["other"] if "other" in found.re.groupindex else ""
+    other = ""
+    if "other" in found.re.groupindex:
+        other = found["other"] or found["lower"]
     return Statement(kind, relation=relation, other=other, at=locants)
 
 
@@ -242,6 +253,9 @@ _PHRASES: tuple[tuple[re.Pattern[str], Callable[[re.Match[str]], Statement]], ..
         (rf"{_COUNT} {_CENTRES}\b", _counted("centres")),
         (rf"{_COUNT} (?:{_BONDS})\b", _counted("bonds")),
         (rf"{_COUNT} {_ISOMERS}\b", _counted("isomers")),
+        (rf"(?:one )?of (?:the )?{_COUNT} (?:possible )?stereoisomers", _counted("isomers")),
+        (r"no (?:stereogenic|chiral) elements?", lambda found: Statement(centres=0)),
+        (r"(?P<letters>\([RSEZ]\))(?P<at>(?!))?", _lettered),
         (
             rf"(?P<letters>{LETTERS})[-‐‑ ](?P<noun>enantiomer|isomer|stereoisomer|epimer|antipode"
             rf"|form|diastereo(?:iso)?mer|configured|configuration)(?:(?<=configured) (?:compound"
@@ -281,8 +295,10 @@ _JOINT = re.compile(
     r"| that (?:is|has|contains) | of (?:the )?(?=[\dRSEZ(])"
 )
 _TAIL = re.compile(
-    r"(?:,? ?(?:\([^()]*\)|(?:as (?:shown|confirmed|drawn|established|determined|described|depicted"
-    r"|proved|proven|demonstrated|given)|(?:shown|confirmed|established|determined|demonstrated) "
+    rf"(?:,? ?(?:\([^()]*\)|:? ?{NAME}++"
+    r"|(?:as (?:shown|confirmed|drawn|established|determined|described|depicted"
+    r"|proved|proven|demonstrated|given|received)"
+    r"|(?:shown|confirmed|established|determined|demonstrated) "
     r"(?:by|in)"
     r"|see|according to the (?:drawing|structure)|by (?:design|X-ray|chiral|single-crystal"
     r"|synthesis)"
@@ -292,8 +308,21 @@ _TAIL = re.compile(
 )
 
 
+# What goes on about something else, without another word on stereochemistry.
+_GOES_ON = re.compile(
+    r"(?:,? and (?:is|was|were|has been) (?:selected|limited|used|isolated|developed|characterised"
+    r"|controlled|marketed|made|obtained|prepared|formed|specified|removed|stored)\b"
+    r"|: (?:a |an |the )?(?:mirror|plane|both|its|one))[^;]*"
+)
+_MORE = re.compile(
+    r"enantio|racem|isomer|epimer|chiral|configur|stereo|optical|meso|(?<![\w-])\(?\d?[RSEZ][),]?(?!\w)"
+)
+
+
 def tail_is_plain(rest: str) -> bool:
     """Whether what follows a claim takes nothing from it."""
+    if _GOES_ON.fullmatch(rest):
+        return is_certain(rest) and not _MORE.search(rest)
     return _TAIL.fullmatch(rest) is not None and is_certain(rest)
 
 

@@ -160,6 +160,8 @@ _UNIT = re.compile(
     r"|,?\s+(?:in\s+)?g/mol\s*$",
     re.IGNORECASE,
 )
+# With the conditions in brackets: "Specific rotation (methanol, 589 nm)".
+_ROTATION = re.compile(r"(?:specific )?(?:optical )?rotation\s*[(\[][^()]*[)\]]\s*$", re.IGNORECASE)
 _KEY = re.compile(r"[A-Z]{14}-[A-Z]{10}-[A-Z]")
 _NOTHING = {
     "",
@@ -223,7 +225,8 @@ def meaning_of(heading: str, columns: Mapping[str, str] = NO_COLUMNS) -> Meaning
                 return KEYS[key]
     if len(heading) > 80:
         return None
-    return _INDEX.get(plain(heading)) or _INDEX.get(plain(_UNIT.sub("", heading)))
+    found = _INDEX.get(plain(heading)) or _INDEX.get(plain(_UNIT.sub("", heading)))
+    return found or (Role.ROTATION if _ROTATION.match(heading) else None)
 
 
 _OTHERS = {plain(one) for one in re.split(r"[|\n]", _OTHER_LABELS) if one.strip()}

@@ -16,7 +16,7 @@ NAME = "\ue000"  # stands for each character of a systematic name, so that spans
 
 _ABBREVIATED = re.compile(
     r"(?:\b(?:e\.g|i\.e|ca|cf|approx|resp|vs|No|Nos|Fig|Figs|Ref|Refs|Sect|Eq|al|etc|Imp|Int|Dr|abs"
-    r"|config|spec|conc|wt|vol|max|min|temp|[A-Z]))\.$"
+    r"|config|spec|conc|wt|vol|max|min|temp))\.$"
 )
 _END = re.compile(r"[.!?](?:[\"”’)\]]*)(?=\s|$)|;(?=\s)")
 
