@@ -40,6 +40,8 @@ def test_fed_back_it_gives_the_same_substances(tmp_path: Path) -> None:
     written.write_text(proposed(first), encoding="utf-8")
     again = reviewed(dossier, settings.load(written))
     assert sorted_out(again) == sorted_out(first)
+    # Who is who does not depend on the number of workers.
+    assert reviewed(dossier, settings.Settings(jobs=2)).substances == first.substances
     drug = next(one for one in first.substances if one.role == "drug substance")
     entry = next(e for e in tomllib.loads(written.read_text())["substance"] if "role" in e)
     assert entry["id"] == drug.label == "Dorvaquelan tartrate"

@@ -312,3 +312,44 @@ def test_words_beside_a_name_are_a_label_where_the_dossier_uses_them_as_one() ->
     assert substance.attribution["e2"] == "firm: set beside “TA-L”, which is a label elsewhere"
     assert substance.attribution["e3"].endswith("says exactly what this substance is")
     assert unread == []
+
+
+def test_a_longer_label_beside_a_name_is_meant_where_the_dossier_uses_it() -> None:
+    said = [
+        say(1, THREONINE, group="a", label="Impurity A"),
+        say(2, ALLO, group="b", label="DS Impurity A"),
+        replace(say(3, ALLO, label="Impurity A"), hints=("by DS Impurity A", "DS Impurity A")),
+        replace(say(4, THREONINE, label="Impurity A"), hints=("SM Impurity A", "Impurity A")),
+    ]
+    substances, _ = attribute(said, (), nobody)
+    assert held(substances) == {"Impurity A": ["e1", "e4"], "DS Impurity A": ["e2", "e3"]}
+    assert substances[1].attribution["e3"] == "firm: called “DS Impurity A”"
+
+
+@pytest.mark.parametrize(
+    ("title", "holder"),
+    [
+        ("3.2.S.3.1 Optical rotation of dorvaline", "Dorvaline"),
+        ("Table 3: Solubility of TA-L in water", "TA-L"),
+        ("Dorvaline and TA-L", "Rotation"),
+        ("Enantiomer of dorvaline", "Rotation"),
+        ("Impurities of dorvaline", "Rotation"),
+    ],
+)
+def test_a_title_with_one_known_label_says_of_whom_a_table_speaks(title: str, holder: str) -> None:
+    rotation = Evidence("e3", Role.ROTATION, "−21°", Place("a.md", row=2), "row", under=title)
+    said = [
+        say(1, THREONINE, group="a", label="Dorvaline"),
+        say(2, ALLO, group="b", label="TA-L"),
+        rotation,
+    ]
+
+    def surveyed(substances: Sequence[Substance]) -> list[frozenset[Identity]]:
+        return [
+            survey([one])[0] if one.evidence[0] is not rotation else frozenset()
+            for one in substances
+        ]
+
+    substances, _ = attribute(said, (), surveyed)
+    found = next(one for one in substances if any(e.id == "e3" for e in one.evidence))
+    assert (found.label if len(found.evidence) > 1 else "Rotation") == holder

@@ -206,3 +206,10 @@ def test_a_systematic_name_under_name_is_a_name() -> None:
 def test_words_beside_a_name_that_may_be_a_label(text: str, hints: tuple[str, ...]) -> None:
     said = [one for one in evidence(lines(text)) if one.role.name == "NAME"]
     assert [one.hints for one in said] == [hints]
+
+
+def test_an_unknown_field_among_the_others_does_not_end_their_block() -> None:
+    text = f"Substance: Dorvaline\nChemical name: {NAME}\nSalt form: none\nMW: 74"
+    assert len({one.group for one in evidence(lines(text))}) == 1
+    apart = f"Substance: Dorvaline\nChemical name: {NAME}\n\nSalt form: none\nMW: 74"
+    assert len({one.group for one in evidence(lines(apart))}) == 2
