@@ -15,6 +15,7 @@ from typing import Any, Self, TypeVar
 from pebble import ProcessExpired, ProcessFuture, ProcessPool
 
 from dossiercheck import certainty
+from dossiercheck.checks.uncompared import uncompared
 from dossiercheck.concordance import build_case, reference_of, table
 from dossiercheck.derivations import with_derivations
 from dossiercheck.interpretation import Reading, interpret
@@ -258,6 +259,7 @@ def _judge_one(
         case.structure.smiles if case.structure and not case.structure.groups else "",
     )
     unread = [entry for reading in readings for entry in _not_understood(reading)]
+    unread += uncompared(case)
     findings = with_derivations(case, graded)
     firm = [one for one in readings if one.evidence.id not in substance.weak]
     return Judged(

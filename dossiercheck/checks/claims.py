@@ -44,7 +44,7 @@ def statement_configuration_differs(case: Case, params: Params) -> Iterator[Obse
         return
     for reading, statement in stated(case):
         for locant, letter in statement.letters:
-            units = _meant(case, structure, locant, letter)
+            units = meant(case, structure, locant, letter)
             if not units or any(unit.descriptor.upper() == letter.upper() for unit in units):
                 continue
             if any(doubt_at(structure, unit.atoms) for unit in units):
@@ -72,7 +72,7 @@ def _units_of(units: list[Unit]) -> str:
     return kind if len(units) == 1 else f"{kind}s"
 
 
-def _meant(case: Case, structure: Structure, locant: str, letter: str) -> list[Unit]:
+def meant(case: Case, structure: Structure, locant: str, letter: str) -> list[Unit]:
     """The units of which the letter must be one's; none where that cannot be told.
 
     Of several letters without locants, or where units are left open, nothing is certain.

@@ -158,3 +158,20 @@ def test_relations_are_the_same_with_two_workers() -> None:
     one, two = (review(substances, *said, jobs=jobs) for jobs in (1, 2))
     assert one.findings == two.findings
     assert statement_rules(one) == ["relation-differs"]
+
+
+@pytest.mark.parametrize(
+    ("text", "open_"),
+    [
+        ("Impurity A is the enantiomer of DX-999.", True),
+        ("Impurity Q is a single enantiomer.", True),
+        ("The configuration at C-7 of DX-101 is S.", True),
+        ("DX-101 is the trans isomer.", True),
+        ("Impurity A is the enantiomer of DX-101.", False),
+        ("DX-101 is a single enantiomer.", False),
+        ("DX-101 has two stereocentres.", False),
+    ],
+)
+def test_a_statement_held_against_nothing_is_listed(text: str, open_: bool) -> None:
+    reasons = [one.reason for one in review(PAIR, text).unread]
+    assert reasons == ["statement-not-compared"] * open_
