@@ -83,7 +83,7 @@ def meant(case: Case, structure: Structure, locant: str, letter: str) -> list[Un
         bare = any(unit.kind == kind for unit in structure.undefined)
         return [] if bare or (kind == "centre" and structure.axis_atoms) else units
     found: set[tuple[int, ...]] = set()
-    for numbers in _numberings(case, structure):
+    for numbers in numberings(case, structure):
         here = {unit for unit in units if locant in numbers.get(frozenset(unit.atoms), ())}
         if len(here) != 1 or _elsewhere(numbers, locant, here):
             return []
@@ -99,7 +99,7 @@ def _elsewhere(
     return any(locant in locants and unit not in own for unit, locants in numbers.items())
 
 
-def _numberings(
+def numberings(
     case: Case, structure: Structure
 ) -> Iterator[Mapping[frozenset[int], tuple[str, ...]]]:
     """For each name of the substance, the locants of the reference's units."""

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from dossiercheck.calling import key_of
-from dossiercheck.checks.claims import quoted, stated
+from dossiercheck.checks.claims import numberings, quoted, stated
 from dossiercheck.checks.exhibits import exhibit
 from dossiercheck.checks.registry import Observation, Params, check
 from dossiercheck.concordance import Case
@@ -59,7 +59,7 @@ def relation_differs(case: Case, params: Params) -> Iterator[Observation]:
         if statement.relation == "racemate" and not case.structure.groups:
             continue  # drawn as one enantiomer, or flat: for the rules on racemates
         found = rel.relation(case.structure, other.structure)
-        words = _contradiction(statement, found)
+        words = _contradiction(statement, found) or _elsewhere(case, statement, found)
         if words:
             yield Observation(
                 {
@@ -87,6 +87,23 @@ def _contradiction(statement: Statement, found: rel.Relation) -> str:
     if statement.relation == "epimer" and not found.epimer and len(found.units) > 1:
         return f"they differ at {len(found.units)} stereogenic units"
     return ""
+
+
+def _elsewhere(case: Case, statement: Statement, found: rel.Relation) -> str:
+    """Where an epimer differs, if that is not at the locant stated by any of its names, all of
+    which give that locant to another unit."""
+    if statement.relation != "epimer" or not found.epimer or len(statement.at) != 1:
+        return ""
+    assert case.structure is not None
+    unit = frozenset(found.units[0])
+    places = set()
+    for numbers in numberings(case, case.structure):
+        here = numbers.get(unit, ())
+        others = {locant for one, own in numbers.items() if one != unit for locant in own}
+        if not here or statement.at[0] in here or statement.at[0] not in others:
+            return ""
+        places.add(here[0])
+    return f"they differ at {places.pop()}" if len(places) == 1 else ""
 
 
 @check(needs=("statement",), fields=("stated", "claimed", "other", "found"))

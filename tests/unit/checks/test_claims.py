@@ -175,3 +175,18 @@ def test_relations_are_the_same_with_two_workers() -> None:
 def test_a_statement_held_against_nothing_is_listed(text: str, open_: bool) -> None:
     reasons = [one.reason for one in review(PAIR, text).unread]
     assert reasons == ["statement-not-compared"] * open_
+
+
+@pytest.mark.parametrize(
+    ("text", "rules"),
+    [
+        ("DX-101 is the epimer at C-3 of Impurity A.", []),
+        ("DX-101 is the epimer at C-2 of Impurity A.", ["relation-differs"]),
+        # No name gives a unit this locant: it may be of another numbering.
+        ("DX-101 is the epimer at C-6 of Impurity A.", []),
+    ],
+)
+def test_an_epimer_differs_at_the_locant_stated(text: str, rules: list[str]) -> None:
+    substances = {"DX-101": THREONINE, "Impurity A": ALLO}
+    found = review(substances, text, name="(2S,3R)-2-amino-3-hydroxybutanoic acid")
+    assert statement_rules(found) == rules
