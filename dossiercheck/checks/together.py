@@ -14,6 +14,8 @@ from dossiercheck.model import Evidence, Exhibit, Role
 from dossiercheck.stereo.perception import from_smiles
 from dossiercheck.stereo.structure import Unreadable
 
+# Two numbers may mean one compound (two batches, two standards): nothing follows from it.
+_LOOSE = ("compound", "referencestandard")
 _STRUCTURAL = (Role.MOLFILE, Role.SMILES, Role.INCHI, Role.NAME)
 
 
@@ -25,7 +27,7 @@ def name_for_two_labels(case: Dossier, params: Params) -> Iterator[Observation]:
     """
     met: dict[tuple[str, str], tuple[Portrait, Evidence]] = {}
     for portrait in case.portraits:
-        kind = kind_of(portrait.substance.label)
+        kind = _kind(portrait)
         names = [said for said in _firm(portrait) if said.role is Role.NAME]
         for said in names if kind else ():
             earlier, first = met.setdefault((kind, _plain(said.text)), (portrait, said))
@@ -41,7 +43,7 @@ def structure_for_two_labels(case: Dossier, params: Params) -> Iterator[Observat
     """One stereoisomer under two labels of a kind, called by two names or by none."""
     met: dict[tuple[str, object], Portrait] = {}
     for portrait in case.portraits:
-        kind = kind_of(portrait.substance.label)
+        kind = _kind(portrait)
         if not kind or len(portrait.identities) != 1 or not _is_settled(portrait):
             continue
         earlier = met.setdefault((kind, next(iter(portrait.identities))), portrait)
@@ -74,6 +76,11 @@ def printed_differs(case: Case, params: Params) -> Iterator[Observation]:
                 },
                 (exhibit(reading), exhibit(first)),
             )
+
+
+def _kind(portrait: Portrait) -> str:
+    kind = kind_of(portrait.substance.label)
+    return "" if kind in _LOOSE else kind
 
 
 def _apart(one: Reading, two: Reading) -> bool:

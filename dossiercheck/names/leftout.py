@@ -24,7 +24,11 @@ def faults(reading: NameReading, unplaced: Collection[int], parser: NameParser) 
         printed = descriptor.locant + descriptor.text
         atoms = _nearest(reading, index, candidates(reading, index, base), parser)
         hetero = atoms and speaks_of_hetero(reading.cleaned.text, descriptor)
-        if is_unjudged(descriptor) or hetero or index in unplaced:
+        # Of a retained name the parser may know no numbers: the descriptor may speak of any atom.
+        unnumbered = bool(descriptor.locant) and not any(one[:1].isdigit() for one in base.labels)
+        if unnumbered:
+            atoms = tuple(range(len(base.labels)))
+        if is_unjudged(descriptor) or hetero or index in unplaced or unnumbered:
             detail = f"the name parser cannot place {printed}; the rest was read without it"
             found.append(Fault("descriptor-stripped", index, None, detail, atoms))
         elif descriptor.locant and not base.labelled(descriptor.locant):

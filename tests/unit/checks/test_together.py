@@ -49,6 +49,7 @@ def rules(*records: Mapping[str, str]) -> list[str]:
         ({"label": "Impurity A", "name": NAME}, {"label": "Imp. A", "name": NAME}, []),
         ({"label": "Impurity A", "name": NAME}, {"label": "Intermediate 2", "name": NAME}, []),
         ({"label": "Dorvaline", "name": NAME}, {"label": "DX-101", "name": NAME}, []),
+        ({"label": "Compound 1", "name": NAME}, {"label": "Compound 2", "name": NAME}, []),
         ({"label": "Impurity A", "name": NAME}, {"label": "Impurity B", "smiles": "CC[C@H](N)C(=O)O"}, ["structure-for-two-labels"]),
         ({"label": "Impurity A", "name": NAME}, {"label": "Impurity B", "smiles": "CC[C@@H](N)C(=O)O"}, []),
         # Where a centre is open they may be two stereoisomers; so they may with an axis.

@@ -216,3 +216,11 @@ def test_a_sound_name_costs_one_question(
     monkeypatch.setattr(parser, "parse", lambda names: (asked.extend(names), parse(names))[1])
     read_names(["(2R)-butan-2-ol", "L-alanine", "ethyl (2S)-2-hydroxypropanoate"], parser)
     assert len(asked) == 3
+
+
+def test_a_retained_name_without_numbers_does_not_make_a_locant_wrong(parser: NameParser) -> None:
+    # The parser numbers no atom of tartaric acid; in butan-2-ol it does, and 7 is none of them.
+    reading = read("(2R,3R)-tartaric acid", parser)
+    assert faults(reading) == [("descriptor-stripped", "2R"), ("descriptor-stripped", "3R")]
+    assert all(len(fault.atoms) == 10 for fault in reading.faults)
+    assert faults(read("(7R)-butan-2-ol", parser)) == [("no-such-locant", "7R")]
