@@ -661,6 +661,46 @@ CASES = [
         stereo="three stereocentres",
     ),
     Case(
+        "an α,β-unsaturated ester has one stereogenic double bond",
+        ({"smiles": "COC(=O)/C=C/C", "stereo": "two stereogenic double bonds"},),
+        ("statement/double-bond-count-differs",),
+    ),
+    Case(
+        "tartaric acid has three stereoisomers",
+        (
+            {
+                "smiles": "O[C@H](C(=O)O)[C@@H](O)C(=O)O",
+                "stereo": "four possible stereoisomers",
+            },
+        ),
+        ("statement/isomer-count-differs",),
+    ),
+    Case(
+        "a cis ring called trans",
+        ({"smiles": "C[C@@H]1CCCC[C@@H]1O", "stereo": "the trans isomer"},),
+        ("statement/arrangement-differs",),
+    ),
+    Case(
+        "a rotation of a meso form",
+        ({"smiles": "O[C@@H](C(=O)O)[C@@H](C(=O)O)O", "rotation": "+12.0° (c 1, water)"},),
+        ("statement/rotation-impossible",),
+    ),
+    Case(
+        "two signs in one solvent",
+        (
+            {"smiles": "C[C@@H](O)C(=O)O", "rotation": "[α]D −12.5° (c 1, methanol)"},
+            {"rotation": "[α]D +12.5° (c 1, methanol)"},
+        ),
+        ("statement/rotation-signs-differ",),
+    ),
+    Case(
+        "two signs in two solvents",
+        (
+            {"smiles": "C[C@@H](O)C(=O)O", "rotation": "[α]D −12.5° (c 1, methanol)"},
+            {"rotation": "[α]D +12.5° (c 1, water)"},
+        ),
+    ),
+    Case(
         "not a racemate",
         ({"molfile": v2000(THREONINE), "stereo": "This is not a racemate."},),
         unread=("statement-not-understood",),
