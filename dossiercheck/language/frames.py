@@ -100,7 +100,8 @@ _BETWEEN = re.compile(
 )
 _REVERSED = re.compile(
     rf"{_LEAD}[Tt]he {RELATION} of (?:the )?(?P<other>{_NAMED}|{PART}|{LOWER})"
-    rf"(?![\w-]){ASIDE}? is {_SMALL}(?P<tail>.*)"
+    # A small-letter word after "is" is a participle ("is controlled") sooner than a name.
+    rf"(?![\w-]){ASIDE}? is {_subject()}(?P<tail>.*)"
 )
 _PLAIN = re.compile(
     rf"{_LEAD}(?:[Tt]he (?:molecule|structure) of )?{_subject()} (?:{_IS}|{_HAS}) (?P<said>.+)"

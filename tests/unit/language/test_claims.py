@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-import time
-
 import pytest
 
 from dossiercheck.language.claims import claims, only_statement
@@ -228,11 +226,8 @@ def test_cells_claim_of_the_substance_of_their_row() -> None:
 
 
 def test_a_long_sentence_costs_no_more_than_its_length() -> None:
-    # The patterns must not go back over what they have read: an hour before, a second after.
+    # Ends at all: patterns that went back over what they had read took an hour.
     name = "(2S)-2-" + "methyl" * 400 + "butane"
     many = "DX-101 (" * 300 + "is a racemate and " * 300
-    started = time.process_time()
     for text in (f"DX-101, {name}, {name}, is what.", many, "is a " * 3000 + "racemate"):
-        list(claims(text, "X"))
-    # Not a limit of speed: exponential cost would not end at all.
-    assert time.process_time() - started < 120
+        assert all(one.why for one in claims(text, "X"))
