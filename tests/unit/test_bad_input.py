@@ -112,10 +112,7 @@ def crowd(tmp_path_factory: pytest.TempPathFactory) -> Path:
 
 @pytest.fixture(scope="module")
 def review(crowd: Path) -> Review:
-    started = time.monotonic()
-    review = reviewed(crowd)
-    assert time.monotonic() - started < 60
-    return review
+    return reviewed(crowd)
 
 
 def test_the_good_file_is_checked_in_any_company(review: Review, crowd: Path) -> None:
