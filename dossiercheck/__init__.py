@@ -1,3 +1,3 @@
 """Check a drug dossier: every drawing, name and stated chirality of a substance agrees."""
 
-__version__ = "0.1.0"
+__version__ = "0.2.0"
