@@ -193,12 +193,13 @@ def run(size: int, seed: int) -> dict[str, Any]:
 
 def main() -> None:
     """Measure and print."""
+    # Only here: in the tests the program listens to what the library says.
+    RDLogger.DisableLog("rdApp.*")
     parser = argparse.ArgumentParser(description=__doc__)
     parser.add_argument("--size", type=int, default=600)
     parser.add_argument("--seed", type=int, default=1)
     parser.add_argument("--show", action="store_true", help="list every refusal too")
     given = parser.parse_args()
-    RDLogger.DisableLog("rdApp.*")
     result = run(given.size, given.seed)
     if not given.show:
         del result["refused"]

@@ -359,7 +359,6 @@ def rings(records: Sequence[SoundRecord]) -> dict[str, int]:
 
 def measure(size: int, skip: int = 0) -> dict[str, Any]:
     """Every pair judged, from the records after the first `skip`."""
-    RDLogger.DisableLog("rdApp.*")
     left_out: Counter[str] = Counter()
     ways: dict[str, Counter[str]] = {}
     wrong = []
@@ -408,6 +407,8 @@ def table(figures: dict[str, Any]) -> str:
 
 def main() -> None:
     """Measure and print."""
+    # Only here: in the tests the program listens to what the library says.
+    RDLogger.DisableLog("rdApp.*")
     parser = argparse.ArgumentParser(description=__doc__)
     parser.add_argument("--size", type=int, default=1000, help="pairs, at least")
     parser.add_argument("--skip", type=int, default=0, help="sound records passed over")
