@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from dossiercheck.interpretation import Reading
 from dossiercheck.model import State
 from dossiercheck.stereo.alignment import Alignment
+from dossiercheck.stereo.constitution import SAME
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,6 +39,20 @@ class Pair:
     reading: Reading
     alignment: Alignment
     views: tuple[UnitView, ...]
+
+    @property
+    def agrees(self) -> bool:
+        """Whether it says of the constitution and of every unit what the reference says, and both
+        speak of one stereoisomer."""
+        found = self.alignment
+        other = self.reading.structure
+        return (
+            found.constitution.verdict == SAME
+            and not found.doubt
+            and other is not None
+            and not other.groups
+            and all(view.state is State.AGREES for view in self.views)
+        )
 
     def having(self, state: State, silent_side: str = "") -> list[UnitView]:
         """The units in a state, in the reference's order."""

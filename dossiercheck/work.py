@@ -261,13 +261,19 @@ def _judge_one(
     unread = [entry for reading in readings for entry in _not_understood(reading)]
     unread += uncompared(case)
     findings = with_derivations(case, graded)
-    firm = [one for one in readings if one.evidence.id not in substance.weak]
+    # What agrees with the reference in everything is what the reference is: asked once.
+    sure = case.reference is not None and case.reference.evidence.id not in substance.weak
+    told = sure and case.structure is not None and not case.structure.groups
+    same = {id(pair.reading) for pair in case.pairs if told and pair.agrees}
+    firm = [
+        one for one in readings if one.evidence.id not in substance.weak and id(one) not in same
+    ]
     return Judged(
         entry,
         findings,
         (*unread, *outcome.unread),
         identities(firm, parents=False),
-        _is_single(case.structure),
+        bool(substance.role) and _is_single(case.structure),
         case.reference.evidence if case.reference else None,
     )
 
