@@ -8,9 +8,9 @@ or one centre, can be meant and each of its ends has a hydrogen; else "" is retu
 
 from __future__ import annotations
 
-from itertools import combinations
-
-from dossiercheck.stereo.graph import HYDROGEN, Centre, Graph, graph_of
+from dossiercheck.stereo.cip.molecule import HYDROGEN
+from dossiercheck.stereo.cip.units import parity
+from dossiercheck.stereo.graph import Centre, Graph, graph_of
 from dossiercheck.stereo.structure import Structure
 
 PAIRS = (frozenset(("cis", "trans")), frozenset(("threo", "erythro")), frozenset("DL"))
@@ -36,9 +36,7 @@ def arrangement(structure: Structure, word: str) -> tuple[str, tuple[int, ...]]:
 def sense(centre: Centre, order: tuple[int, ...]) -> int:
     """+1 where seen from the first of `order` the others follow counter-clockwise, -1 where
     clockwise. `order` holds the centre's own neighbours."""
-    places = [centre.order.index(ligand) for ligand in order]
-    odd = sum(a > b for a, b in combinations(places, 2)) % 2
-    return -centre.sign if odd else centre.sign
+    return centre.sign * parity(order, centre.order)
 
 
 def _cis_or_trans(

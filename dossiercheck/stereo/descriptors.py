@@ -11,7 +11,6 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 
 from dossiercheck.stereo.cip.derivation import Derivation, derive
-from dossiercheck.stereo.cip.drawn import Drawn
 from dossiercheck.stereo.cip.engine import Ranked, rank_all
 from dossiercheck.stereo.cip.molecule import around
 from dossiercheck.stereo.cip.readoff import read_off
@@ -52,11 +51,10 @@ def descriptors(structure: Structure) -> tuple[Descriptor, ...]:
     """Every unit to which either computation gives a letter or a doubt, by atom, with its
     derivation."""
     source = source_of(structure)
-    drawn = drawn_of(structure, source.molecule) if structure.dimension else None
     library = {_key(unit.atoms): unit for unit in (*structure.units, *structure.axes)}
     name = namer_for(structure)
     found = [
-        _joined(source, ranked, library, drawn, structure.doubt, name)
+        _joined(source, ranked, library, structure.doubt, name)
         for ranked in rank_all(source)
         if ranked.descriptor or ranked.doubt or _key(ranked.unit.ends) in library
     ]
@@ -102,7 +100,7 @@ def ambiguous_wedges(structure: Structure, centres: Iterable[int]) -> dict[int, 
 def axis_of(structure: Structure) -> tuple[Descriptor | None, str]:
     """The one chiral axis that a structure configures, and why nothing may rest on it; "" where
     both computations agree."""
-    axes = [one for one in descriptors(structure) if one.kind == "axis"]
+    axes = [one for one in described(structure).values() if one.kind == "axis"]
     if not axes:
         return None, "the structure shows no configuration of one"
     if len(axes) > 1:
@@ -126,20 +124,20 @@ def doubt_at(structure: Structure, atoms: Iterable[int]) -> str:
 
 def all_certain(structure: Structure) -> bool:
     """Whether both computations give the same letter to the same units of the structure."""
-    described = structure.described
-    if described is None:
-        confirmed(structure, ())
-        described = structure.described or {}
-    return all(one.certain for one in described.values())
+    return all(one.certain for one in described(structure).values())
 
 
 def confirmed(structure: Structure, atoms: Iterable[int]) -> Descriptor | None:
     """The unit at these atoms (0-based) as both computations have it, None where neither sees
-    one; the derivations are worked out once a structure."""
-    kept = structure.described
-    if kept is None:
-        kept = structure.described = {_key(one.atoms): one for one in descriptors(structure)}
-    return kept.get(_key(atoms))
+    one."""
+    return described(structure).get(_key(atoms))
+
+
+def described(structure: Structure) -> dict[tuple[int, ...], Descriptor]:
+    """`descriptors` by their atoms in ascending order; worked out once a structure."""
+    if structure.described is None:
+        structure.described = {_key(one.atoms): one for one in descriptors(structure)}
+    return structure.described
 
 
 def _key(atoms: Iterable[int]) -> tuple[int, ...]:
@@ -150,7 +148,6 @@ def _joined(
     source: Source,
     ranked: Ranked,
     library: dict[tuple[int, ...], Unit],
-    drawn: Drawn | None,
     given_up: str,
     name: Namer,
 ) -> Descriptor:
@@ -163,7 +160,7 @@ def _joined(
             derivation = derive(source.molecule, ranked)
         except (TooLarge, RecursionError):
             note = "its derivation takes more steps than the budget allows"
-    reading = read_off(ranked, derivation, drawn, name) if derivation is not None else ()
+    reading = read_off(ranked, derivation, source.drawn, name) if derivation is not None else ()
     if not note and ranked.descriptor != letter:
         if letter:
             note = "the two computations differ"

@@ -6,10 +6,9 @@ from dataclasses import dataclass
 
 from rdkit import Chem
 
+from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR
+from dossiercheck.stereo.cip.units import parity
 from dossiercheck.stereo.structure import Structure, geometry
-
-HYDROGEN = -1  # a folded or implicit hydrogen among the neighbours of a centre
-LONE_PAIR = -2
 
 
 @dataclass(frozen=True, slots=True)
@@ -114,9 +113,7 @@ def same_centre(one: Centre, two: Centre, mapping: dict[int, int]) -> bool | Non
     carried = [mapping.get(atom, atom) if atom >= 0 else atom for atom in one.order]
     if set(carried) != set(two.order):
         return None
-    places = [two.order.index(atom) for atom in carried]
-    odd = sum(places[i] > places[j] for i in range(len(places)) for j in range(i + 1, len(places)))
-    return (one.sign == two.sign) == (odd % 2 == 0)
+    return one.sign * parity(carried, two.order) == two.sign
 
 
 def same_geometry(one: Geometry, two: Geometry, mapping: dict[int, int]) -> bool:

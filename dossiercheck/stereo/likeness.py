@@ -5,7 +5,8 @@ from __future__ import annotations
 from rdkit import Chem
 from rdkit.Chem import rdqueries
 
-from dossiercheck.stereo.graph import HYDROGEN, LONE_PAIR, Centre, Geometry
+from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR
+from dossiercheck.stereo.graph import Centre, Geometry
 from dossiercheck.stereo.graph import same_centre as _same_centre
 from dossiercheck.stereo.graph import same_geometry as _same_geometry
 from dossiercheck.stereo.structure import Structure, geometry, marked_atoms, stereo_bonds

@@ -7,9 +7,8 @@ from collections.abc import Mapping
 from rdkit import Chem
 
 from dossiercheck.stereo.cages import cages
+from dossiercheck.stereo.cip.molecule import HYDROGEN, LONE_PAIR
 from dossiercheck.stereo.graph import (
-    HYDROGEN,
-    LONE_PAIR,
     Centre,
     Geometry,
     Graph,

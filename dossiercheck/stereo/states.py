@@ -6,7 +6,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
-from dossiercheck.stereo.descriptors import confirmed
+from dossiercheck.stereo.descriptors import described
 from dossiercheck.stereo.graph import Centre, Graph
 from dossiercheck.stereo.space import Space, alike
 from dossiercheck.stereo.structure import Structure
@@ -44,7 +44,7 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
     """What `structure` says of the units of `space`, laid on it by `mapping` (from the space's
     atoms); `graph` is the structure's own. A unit that two computations describe differently is
     open."""
-    confirmed(structure, ())  # from here on `described` is there
+    twice = described(structure)
     bits = unknown = 0
     doubts = []
     images = [tuple(mapping[atom] for atom in atoms) for atoms in space.atoms]
@@ -55,10 +55,10 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
             else graph.bonds.get(frozenset(image))
         )
         same = None if found is None else alike(unit, found, mapping)
-        described = confirmed(structure, image)
-        if described is not None and not described.certain:
+        one = twice.get(tuple(sorted(image)))
+        if one is not None and not one.certain:
             same = None
-            doubts.append(described.note)
+            doubts.append(one.note)
         if same is None:
             unknown |= 1 << number
         elif not same:
@@ -81,9 +81,7 @@ def state_of(structure: Structure, graph: Graph, space: Space, mapping: Mapping[
     outside = [*space.left_out, *(imine.ends for imine in space.imines)]
     left_out = {frozenset(mapping[atom] for atom in atoms) for atoms in outside}
     covered = set(mapping.values())
-    described_units = [
-        one for one in (structure.described or {}).values() if set(one.atoms) <= covered
-    ]
+    described_units = [one for one in twice.values() if set(one.atoms) <= covered]
     marked = {frozenset(one.atoms) for one in described_units if one.ours or one.library}
     axes = {
         frozenset(one.atoms)

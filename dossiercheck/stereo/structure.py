@@ -80,7 +80,7 @@ class Structure:
     `dimension` is 0 (no coordinates), 2 or 3; `locants` is a label for each atom where a name
     gave them; `positions` are the source's own numbers of the atoms, 1-based, where they run in
     another order (an InChI); `doubt` says why descriptors cannot be trusted, "" where they can;
-    `described` is what `descriptors.confirmed` keeps.
+    `described` is what `descriptors.described` keeps.
     """
 
     mol: Chem.Mol

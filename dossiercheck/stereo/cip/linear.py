@@ -121,15 +121,13 @@ def _around(found: Written, molecule: Molecule, atom: int) -> list[int]:
     ligands = list(found.near[atom])
     if len(ligands) == 3:
         missing = HYDROGEN if molecule.hydrogens[atom] and HYDROGEN not in ligands else LONE_PAIR
-        first = bool(ligands) and 0 <= ligands[0] < atom
-        ligands.insert(1 if first and _precedes(found, atom) else 0, missing)
+        _insert(ligands, atom, missing)
     return ligands
 
 
-def _precedes(found: Written, atom: int) -> bool:
-    """Whether the atom follows another one, so that its first neighbour is the atom before."""
-    first = found.near[atom][0]
-    return 0 <= first < atom
+def _insert(ligands: list[int], atom: int, missing: int) -> None:
+    """Put what is not written right after the atom before, or first where there is none."""
+    ligands.insert(1 if 0 <= ligands[0] < atom else 0, missing)
 
 
 def cumulated(molecule: Molecule, atom: int) -> tuple[int, ...]:
@@ -176,10 +174,7 @@ def end_ligands(written: list[int], molecule: Molecule, atom: int, inward: int) 
     written follows the atom before."""
     ligands = list(written)
     if len(ligands) == 2:
-        ligands.insert(
-            1 if 0 <= ligands[0] < atom else 0,
-            HYDROGEN if molecule.hydrogens[atom] else LONE_PAIR,
-        )
+        _insert(ligands, atom, HYDROGEN if molecule.hydrogens[atom] else LONE_PAIR)
     if inward in ligands:
         ligands.remove(inward)
     return ligands

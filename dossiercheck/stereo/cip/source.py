@@ -21,6 +21,7 @@ class Source:
     molecule: Molecule
     marked: tuple[Marked, ...]
     unclear: Mapping[tuple[int, ...], str]
+    drawn: Drawn | None = None
 
 
 def source_of(structure: Structure) -> Source:
@@ -30,7 +31,7 @@ def source_of(structure: Structure) -> Source:
     if not structure.dimension:
         return Source(molecule, tuple(marked_in_text(structure.text, molecule)), {})
     drawn = drawn_of(structure, molecule)
-    return Source(molecule, tuple(drawn.marked()), drawn.unclear)
+    return Source(molecule, tuple(drawn.marked()), drawn.unclear, drawn)
 
 
 def drawn_of(structure: Structure, molecule: Molecule) -> Drawn:
